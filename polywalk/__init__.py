@@ -1,0 +1,47 @@
+"""polywalk: see small linear models exactly."""
+
+from importlib import import_module
+from importlib.metadata import version
+from typing import Any
+
+from polywalk.errors import PolywalkError
+from polywalk.exact import exact
+from polywalk.model import Constraint, Model, Objective
+from polywalk.table import Table
+
+__version__ = version("polywalk")
+
+_ROOMS = {
+    "Region": "polywalk.region",
+    "region": "polywalk.region",
+    "project": "polywalk.region",
+    "Budget": "polywalk.budget",
+    "from_algebra": "polywalk.reading",
+    "from_arrays": "polywalk.reading",
+    "from_scipy": "polywalk.reading",
+    "optimum": "polywalk.linear",
+    "Walk": "polywalk.walks",
+    "walk": "polywalk.walks",
+    "scenarios": "polywalk",
+    "View": "polywalk.drawing",
+    "draw": "polywalk.drawing",
+    "picture": "polywalk.drawing",
+    "explore": "polywalk.explorer",
+}
+"""Names that are loaded on first use, and the room each lives in."""
+
+__all__ = ["Constraint", "Model", "Objective", "PolywalkError", "Table", "exact", *sorted(_ROOMS)]  # noqa: PLE0604
+
+
+def __getattr__(name: str) -> Any:
+    if name not in _ROOMS:
+        raise AttributeError(f"module 'polywalk' has no attribute {name!r}")
+    if name == "scenarios":
+        return import_module("polywalk.scenarios")
+    value = getattr(import_module(_ROOMS[name]), name)
+    globals()[name] = value
+    return value
+
+
+def __dir__() -> list[str]:
+    return [*__all__, "__version__"]
