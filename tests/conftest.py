@@ -28,9 +28,7 @@ def pytest_sessionfinish(session: pytest.Session) -> None:
 def pytest_terminal_summary(terminalreporter: Any, config: pytest.Config) -> None:
     if os.environ.get("CI"):
         for report in forbidden_skips(config):
-            terminalreporter.write_line(
-                f"FAILED: skipped in CI, where only needs_shared_data may skip: {report.nodeid}"
-            )
+            terminalreporter.write_line(f"FAILED: skipped in CI without the marker needs_shared_data: {report.nodeid}")
 
 
 def forbidden_skips(config: pytest.Config) -> list[Any]:
