@@ -7,14 +7,12 @@ from typing import Any
 from polywalk.errors import PolywalkError
 from polywalk.exact import exact
 from polywalk.model import Constraint, Model, Objective
+from polywalk.region import Region, project, region  # at once: the module's own name would hide the function
 from polywalk.table import Table
 
 __version__ = version("polywalk")
 
 _ROOMS = {
-    "Region": "polywalk.region",
-    "region": "polywalk.region",
-    "project": "polywalk.region",
     "Budget": "polywalk.budget",
     "from_algebra": "polywalk.reading",
     "from_arrays": "polywalk.reading",
@@ -30,7 +28,8 @@ _ROOMS = {
 }
 """Names that are loaded on first use, and the room each lives in."""
 
-__all__ = ["Constraint", "Model", "Objective", "PolywalkError", "Table", "exact", *sorted(_ROOMS)]  # noqa: PLE0604
+__all__ = ["Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "exact", "project", "region"]
+__all__ += sorted(_ROOMS)
 
 
 def __getattr__(name: str) -> Any:

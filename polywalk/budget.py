@@ -54,7 +54,7 @@ def in_child(function: Callable[..., Any], *arguments: Any, budget: Budget, task
         Time or memory ran out, or the child died.
     """
     request = pickle.dumps((budget.megabytes, function.__module__, function.__qualname__, arguments))
-    command = [sys.executable, "-m", "polywalk.budget"]
+    command = [sys.executable, "-c", "from polywalk.budget import serve; serve()"]
     with subprocess.Popen(command, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.PIPE) as child:
         try:
             answer, trouble = child.communicate(request, timeout=budget.seconds)
@@ -78,7 +78,7 @@ def _out_of_memory(last: list[str], code: int) -> bool:
     return any("MemoryError" in line or "alloc" in line.lower() for line in last) or code == -6
 
 
-def _serve() -> None:
+def serve() -> None:
     """The child: read one request, do the work, write the result."""
     import importlib
 
@@ -91,7 +91,3 @@ def _serve() -> None:
         pass  # no such limit on this system: the time budget still holds
     result = getattr(importlib.import_module(module), name)(*arguments)
     sys.stdout.buffer.write(pickle.dumps(result))
-
-
-if __name__ == "__main__":
-    _serve()

@@ -1,0 +1,66 @@
+"""Faces as bit patterns over the generators: facets, the order round a polygon, the region's own dimension.
+
+A face of a region is the set of its generators, and a constraint's face is where the constraint is active; so
+questions about faces are questions about sets. Bit k stands for generator k: points first, then rays.
+
+References
+----------
+Ziegler, Lectures on Polytopes, 1995, section 2.2: every face is the intersection of the facets that contain it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+
+Pairs = Sequence[tuple[int, int]]
+
+
+def masks(active: Sequence[tuple[int, ...]]) -> dict[int, int]:
+    """For each constraint (by its place) that is active somewhere, the pattern of the generators it is active at."""
+    found: dict[int, int] = {}
+    for generator, places in enumerate(active):
+        for place in places:
+            found[place] = found.get(place, 0) | 1 << generator
+    return dict(sorted(found.items()))
+
+
+def facets(patterns: dict[int, int], points: int, generators: int) -> dict[int, list[int]]:
+    """The facets: each pattern with the places of the constraints that define it.
+
+    Facets are the largest faces that are not the whole region. A pattern without a point is a face at infinity.
+    """
+    whole, finite = (1 << generators) - 1, (1 << points) - 1
+    by_pattern: dict[int, list[int]] = {}
+    for place, pattern in patterns.items():
+        if pattern != whole and pattern & finite:
+            by_pattern.setdefault(pattern, []).append(place)
+    return {face: places for face, places in by_pattern.items() if is_largest(face, by_pattern)}
+
+
+def is_largest(face: int, faces: Iterable[int]) -> bool:
+    """Whether no other of the faces contains this one."""
+    return not any(face & other == face and face != other for other in faces)
+
+
+def members(pattern: int) -> tuple[int, ...]:
+    """The numbers of the bits that are set."""
+    return tuple(k for k in range(pattern.bit_length()) if pattern >> k & 1)
+
+
+def around(pattern: int, pairs: Pairs, points: int) -> tuple[int, ...]:
+    """The points of a two-dimensional face in the order one meets them walking round it.
+
+    A bounded polygon starts at its lowest number and goes to the lower neighbour; an unbounded one runs from the
+    point of one ray to the point of the other.
+    """
+    inside = [k for k in members(pattern) if k < points]
+    beside: dict[int, list[int]] = {k: [] for k in inside}
+    for start, end in pairs:
+        if start in beside and end in beside:
+            beside[start].append(end)
+            beside[end].append(start)
+    ends = [k for k in inside if len(beside[k]) < 2]
+    path = [ends[0] if ends else inside[0]]
+    while len(path) < len(inside):
+        path.append(next(k for k in sorted(beside[path[-1]]) if k not in path))
+    return tuple(path)
