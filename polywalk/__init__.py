@@ -28,8 +28,18 @@ _ROOMS = {
 }
 """Names that are loaded on first use, and the room each lives in."""
 
-__all__ = ["Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "exact", "project", "region"]
-__all__ += sorted(_ROOMS)
+__all__ = [  # noqa: PLE0604
+    "Constraint",
+    "Model",
+    "Objective",
+    "PolywalkError",
+    "Region",
+    "Table",
+    "exact",
+    "project",
+    "region",
+    *sorted(_ROOMS),
+]
 
 
 def __getattr__(name: str) -> Any:

@@ -62,5 +62,5 @@ def around(pattern: int, pairs: Pairs, points: int) -> tuple[int, ...]:
     ends = [k for k in inside if len(beside[k]) < 2]
     path = [ends[0] if ends else inside[0]]
     while len(path) < len(inside):
-        path.append(next(k for k in sorted(beside[path[-1]]) if k not in path))
+        path.append(next(k for k in sorted(beside[path[-1]]) if k not in path[-2:]))
     return tuple(path)
