@@ -1,0 +1,258 @@
+"""One exact dictionary over the slacks of all constraints, and one pivot. Frozen: a pivot returns a new one.
+
+A dictionary writes every basic slack, and the objective, as a linear function of the nonbasic ones, which are at 0.
+All entries are integers over one common denominator, and a pivot keeps them so without any greatest common divisor:
+each entry is a minor of the first dictionary, so that the division by the old denominator leaves no remainder.
+
+References
+----------
+Chvátal, Linear Programming, 1983, chapters 2 and 3 (dictionaries; the auxiliary variable).
+Edmonds, Systems of distinct representatives and linear algebra, J. Res. NBS 71B, 1967;
+Bareiss, Sylvester's identity and multistep integer-preserving Gaussian elimination, Math. Comp. 22, 1968.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass, replace
+from fractions import Fraction
+from functools import cached_property
+
+from polywalk.exact import Row, integer_row, linear
+from polywalk.linear.slacks import Integers, Slacks, slacks_of
+from polywalk.model import Model
+
+
+@dataclass(frozen=True, repr=False)
+class Dictionary:
+    """Basic slacks and objective in terms of the nonbasic slacks.
+
+    Slacks are given by index (see Slacks). What counts for a rule is the slack as the constraint was typed: a row
+    multiplied by 6 has a slack six times as large. ``values``, ``rate`` and ``reduced_cost`` speak of that slack.
+
+    Parameters
+    ----------
+    slacks : Slacks
+    basic : (m,) tuple of int
+        The slack each row stands for; the entering slack takes the row of the leaving one.
+    nonbasic : (k,) tuple of int
+        The slack each column stands for; k = n, and n + 1 in Phase I.
+    rows : (m,) tuple of (k + 1,) tuple of int
+        Scaled basic slack times ``denominator``: constant first, then one coefficient a column.
+    cost : (k + 1,) tuple of int
+        The same for the objective, in its own sense.
+    denominator : int
+        Positive.
+    relaxed_slacks : tuple of int, optional
+        In Phase I: the slacks the auxiliary variable is added to.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> from polywalk.linear import dictionary_of
+    >>> model = pw.from_algebra(maximize="3*x + 2*y", constraints={"labour": "2*x + y <= 4"},
+    ...                         bounds={"x": (0, None), "y": (0, None)})
+    >>> first = dictionary_of(model)
+    >>> print(first.pivot(row=0, column=0))
+    x = -0.5 labour - 0.5 y + 2
+    objective = -1.5 labour + 0.5 y + 6
+    """
+
+    slacks: Slacks
+    basic: Integers
+    nonbasic: Integers
+    rows: tuple[Integers, ...]
+    cost: Integers
+    denominator: int
+    relaxed_slacks: Integers = ()
+
+    def pivot(self, row: int, column: int) -> Dictionary:
+        """The dictionary in which the slack of the column is basic and the slack of the row is not.
+
+        Raises ZeroDivisionError where the row does not depend on the column.
+        """
+        old, leaving, place = self.denominator, self.rows[row], column + 1
+        pivot = leaving[place]
+        new = abs(pivot)
+        if pivot == 0:
+            raise ZeroDivisionError("the row does not depend on the column")
+        turned = [-value for value in leaving] if pivot > 0 else list(leaving)
+        turned[place] = old if pivot > 0 else -old
+
+        def substituted(line: Integers) -> Integers:
+            rate = line[place]
+            if rate == 0 and new == old:
+                return line
+            entries = [(value * new + rate * other) // old for value, other in zip(line, turned, strict=True)]
+            entries[place] = rate if pivot > 0 else -rate
+            return tuple(entries)
+
+        rows = [tuple(turned) if i == row else substituted(line) for i, line in enumerate(self.rows)]
+        basic, nonbasic = list(self.basic), list(self.nonbasic)
+        basic[row], nonbasic[column] = nonbasic[column], basic[row]
+        return Dictionary(
+            self.slacks, tuple(basic), tuple(nonbasic), tuple(rows), substituted(self.cost), new, self.relaxed_slacks
+        )
+
+    # Phase I: the auxiliary variable is added to every basic slack, then driven to zero
+
+    @cached_property
+    def phase(self) -> int:
+        """1 while the auxiliary variable is there, else 2."""
+        auxiliary = self.slacks.auxiliary
+        return 1 if auxiliary in self.nonbasic or auxiliary in self.basic else 2
+
+    @property
+    def feasible(self) -> bool:
+        """Whether no slack is negative."""
+        return all(line[0] >= 0 for _, line in self.blocking_rows())
+
+    def relaxed(self) -> Dictionary:
+        """With the auxiliary variable as one more column: each basic slack may be short by as much as it."""
+        items, whole = self.slacks, self.denominator
+        rows = tuple(
+            (*line, items.scales[k] * whole if items.pivots[k] else 0)
+            for k, line in zip(self.basic, self.rows, strict=True)
+        )
+        eased = tuple(k for k in self.basic if items.pivots[k])
+        nonbasic, cost = (*self.nonbasic, items.auxiliary), (*self.cost, 0)
+        return replace(self, nonbasic=nonbasic, rows=rows, cost=cost, relaxed_slacks=eased)
+
+    def without_auxiliary(self) -> Dictionary:
+        """Without the auxiliary's column, once it is nonbasic."""
+        place = self.nonbasic.index(self.slacks.auxiliary)
+
+        def cut(line: Integers) -> Integers:
+            return line[: place + 1] + line[place + 2 :]
+
+        nonbasic = self.nonbasic[:place] + self.nonbasic[place + 1 :]
+        rows = tuple(cut(line) for line in self.rows)
+        return replace(self, nonbasic=nonbasic, rows=rows, cost=cut(self.cost), relaxed_slacks=())
+
+    def most_violated(self) -> list[int]:
+        """The rows whose slack is the most negative (several when tied): one of them makes room for the auxiliary."""
+        scales = self.slacks.scales
+        values = {i: Fraction(line[0], scales[self.basic[i]]) for i, line in self.blocking_rows()}
+        worst = min(values.values())
+        return [i for i, value in values.items() if value == worst]
+
+    # what a rule asks
+
+    @cached_property
+    def aim(self) -> Integers:
+        """What is being increased: the objective (negated for a minimum), in Phase I the auxiliary negated."""
+        if self.slacks.auxiliary in self.basic:
+            return tuple(-value for value in self.rows[self.basic.index(self.slacks.auxiliary)])
+        return self.cost if self.slacks.maximizes else tuple(-value for value in self.cost)
+
+    def improving(self) -> list[int]:
+        """The columns that may enter: their slack improves the objective as it grows."""
+        may = self.slacks.pivots
+        return [j for j, (k, gain) in enumerate(zip(self.nonbasic, self.aim[1:], strict=True)) if gain > 0 and may[k]]
+
+    def gain(self, column: int) -> int:
+        """How fast the objective improves per unit of the column's slack, times a positive number common to all."""
+        return self.aim[column + 1] * self.slacks.scales[self.nonbasic[column]]
+
+    def blocking_rows(self) -> Iterator[tuple[int, Integers]]:
+        """The rows whose slack may not fall below zero, each with its place."""
+        blocks = self.slacks.blocks
+        return ((i, line) for i, line in enumerate(self.rows) if blocks[self.basic[i]])
+
+    def first_to_run_out(self, column: int) -> list[int]:
+        """The ratio test: the rows whose slack reaches 0 first as the column's slack grows; none on a ray.
+
+        Where the auxiliary is among them it is the only one returned: it leaves on ties, and Phase I is over.
+        """
+        place, tied = column + 1, list[int]()
+        value, fall = 0, 0
+        for i, line in self.blocking_rows():
+            if line[place] < 0:
+                order = line[0] * fall + value * line[place]  # the sign of this ratio minus the smallest so far
+                if not tied or order < 0:
+                    tied, value, fall = [i], line[0], -line[place]
+                elif order == 0:
+                    tied.append(i)
+        ends = [i for i in tied if self.basic[i] == self.slacks.auxiliary]
+        return ends or tied
+
+    # what a reader asks, exact
+
+    @cached_property
+    def values(self) -> dict[str, Fraction]:
+        """Every slack by name, at this dictionary's point; in Phase I with the auxiliary added to the relaxed ones."""
+        items = self.slacks
+        found = dict.fromkeys((items.names[k] for k in self.nonbasic), Fraction(0))
+        for k, line in zip(self.basic, self.rows, strict=True):
+            found[items.names[k]] = Fraction(line[0], self.denominator * items.scales[k])
+        return found
+
+    @cached_property
+    def point(self) -> Row:
+        """The decisions, in the model's order."""
+        placed = zip(self.slacks.rests, self.slacks.sides, self._own(0), strict=True)
+        return tuple(rest + side * value for rest, side, value in placed)
+
+    def direction(self, column: int) -> Row:
+        """How the decisions move per unit of the column's slack."""
+        own = self._own(column + 1, self.nonbasic[column])
+        unit = self.slacks.scales[self.nonbasic[column]]
+        return tuple(side * value * unit for side, value in zip(self.slacks.sides, own, strict=True))
+
+    def _own(self, place: int, entering: int = -1) -> Row:
+        """The decisions' own slacks in one column (0: the constants), the auxiliary taken out of the relaxed ones."""
+        scales, n = self.slacks.scales, self.slacks.model.n
+        own = {
+            k: Fraction(line[place], self.denominator * scales[k])
+            for k, line in zip(self.basic, self.rows, strict=True)
+            if k < n or k == self.slacks.auxiliary
+        }
+        if entering >= 0:
+            own[entering] = Fraction(1, scales[entering])
+        short = own.get(self.slacks.auxiliary, Fraction(0))
+        return tuple(own.get(k, Fraction(0)) - (short if k in self.relaxed_slacks else 0) for k in range(n))
+
+    @property
+    def objective(self) -> Fraction:
+        """The objective at this dictionary's point, constant included; 0 where the model has none."""
+        return Fraction(self.cost[0], self.denominator * self.slacks.cost[1])
+
+    def reduced_cost(self, column: int) -> Fraction:
+        """The change of the objective, in its own sense, per unit of the column's slack."""
+        scale = self.slacks.scales[self.nonbasic[column]]
+        return Fraction(self.cost[column + 1] * scale, self.denominator * self.slacks.cost[1])
+
+    def rate(self, row: int, column: int) -> Fraction:
+        """The change of the row's slack per unit of the column's slack."""
+        scales = self.slacks.scales
+        entry = self.rows[row][column + 1] * scales[self.nonbasic[column]]
+        return Fraction(entry, self.denominator * scales[self.basic[row]])
+
+    def __str__(self) -> str:
+        names = [self.slacks.names[k] for k in self.nonbasic]
+        columns = range(len(names))
+        lines = [
+            f"{name} = {linear([self.rate(i, j) for j in columns], names, self.values[name])}"
+            for i, name in enumerate(self.slacks.names[k] for k in self.basic)
+        ]
+        goal = linear([self.reduced_cost(j) for j in columns], names, self.objective)
+        return "\n".join([*lines, f"objective = {goal}"])
+
+    __repr__ = __str__
+
+
+def dictionary_of(model: Model) -> Dictionary:
+    """The first dictionary of a model: every other constraint's slack in terms of the decisions' own slacks.
+
+    Free decisions and equalities are still in the way; see ``crash``.
+    """
+    items = slacks_of(model)
+    places = range(model.n, items.auxiliary)
+    rows = tuple(_first_row(items, k) for k in places)
+    return Dictionary(items, tuple(places), tuple(range(model.n)), rows, items.cost[0], 1)
+
+
+def _first_row(items: Slacks, index: int) -> Integers:
+    place = items.items[index].constraint
+    assert place is not None
+    return integer_row(items.in_slacks(*items.model.constraints[place].inward))[0]
