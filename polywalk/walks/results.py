@@ -1,0 +1,124 @@
+"""A whole walk: its pivots, how it ended, and its telling."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from fractions import Fraction
+from functools import cached_property
+from typing import Literal
+
+from polywalk.errors import WalkError
+from polywalk.exact import Row, primitive
+from polywalk.linear import Dictionary, Swap
+from polywalk.model import Model
+from polywalk.table import Shown, Table, cell
+from polywalk.walks.pivots import Pivot
+
+End = Literal["optimal", "unbounded", "infeasible", "cycling", "stopped"]
+
+
+@dataclass(frozen=True, repr=False)
+class Walk(Shown):
+    """The pivots of one rule from one start.
+
+    Parameters
+    ----------
+    model : Model
+    rule, leaving : str
+        The names of the entering and the leaving rule.
+    order : tuple of str
+        The index order, lowest first.
+    crash : tuple of Swap
+        The pivots that took free decisions and equalities out of the way and led to the start; not counted.
+    first : Dictionary
+        Where the walk starts.
+    pivots : tuple of Pivot
+    end : {"optimal", "unbounded", "infeasible", "cycling", "stopped"}
+    cycle : tuple of Pivot
+        The pivots of one round, where the walk came back to a dictionary it had met; else empty.
+    """
+
+    model: Model
+    rule: str
+    leaving: str
+    order: tuple[str, ...]
+    crash: tuple[Swap, ...]
+    first: Dictionary
+    pivots: tuple[Pivot, ...]
+    end: End
+    cycle: tuple[Pivot, ...] = ()
+
+    @property
+    def last(self) -> Dictionary:
+        """The dictionary the walk ended in."""
+        return self.pivots[-1].after if self.pivots else self.first
+
+    @property
+    def start(self) -> Row:
+        """The point it starts from; in Phase I one outside the region."""
+        return self.first.point
+
+    @property
+    def point(self) -> Row | None:
+        """The point it ended at; None where the model is infeasible."""
+        return None if self.end == "infeasible" else self.last.point
+
+    @property
+    def value(self) -> Fraction | None:
+        """The objective at that point, constant included; None where the model is infeasible."""
+        return None if self.end == "infeasible" else self.last.objective
+
+    @cached_property
+    def points(self) -> tuple[Row, ...]:
+        """The start and the point after each pivot; a degenerate pivot repeats its point."""
+        return (self.start, *(pivot.point_after for pivot in self.pivots))
+
+    @property
+    def ray(self) -> Row | None:
+        """The direction, in the smallest integers, along which an unbounded model improves for ever."""
+        return primitive(self.pivots[-1].direction) if self.end == "unbounded" else None
+
+    @property
+    def stays(self) -> int:
+        """The number of degenerate pivots: those that change the basis and not the point."""
+        return sum(pivot.kind == "degenerate" for pivot in self.pivots)
+
+    def explain(self, number: int) -> str:
+        """A pivot, counted from 1, in a few plain sentences; raises WalkError where there is no such pivot."""
+        if not 1 <= number <= len(self.pivots):
+            raise WalkError(f"expected the number of a pivot, 1 to {len(self.pivots)}, got {number}.", culprit=number)
+        return self.pivots[number - 1].story()
+
+    def table(self) -> Table:
+        """The pivots, one row each."""
+        columns = ("pivot", "phase", "entering", "leaving", "step", "kind", "objective", "point")
+        rows = tuple(
+            (p.number, p.phase, p.entering, p.leaving, p.step, p.kind, p.objective_after, p.point_after)
+            for p in self.pivots
+        )
+        return Table(self._title(), columns, rows, self._notes())
+
+    def _title(self) -> str:
+        counted = [pivot for pivot in self.pivots if pivot.kind != "ray"]
+        plural = "" if len(counted) == 1 else "s"
+        end = "infeasible" if self.end == "infeasible" else f"{self.end} at {cell(self.point)}"
+        return (
+            f"{self.rule} from {cell(self.start)}: {end} after {len(counted)} pivot{plural} "
+            f"({self.stays} of them degenerate)"
+        )
+
+    def _notes(self) -> tuple[str, ...]:
+        notes = []
+        if self.crash:
+            swaps = ", ".join(f"{swap.entering} for {swap.leaving}" for swap in self.crash)
+            notes.append(f"pivoted before the walk, not counted: {swaps}")
+        if self.ray is not None:
+            notes.append(f"unbounded along {cell(self.ray)}")
+        if self.cycle:
+            first, last = self.cycle[0].number, self.cycle[-1].number
+            notes.append(f"cycling: pivots {first} to {last} lead back to where pivot {first} started, for ever")
+        if self.end == "stopped":
+            notes.append("stopped at the limit; ask for more with limit=...")
+        if self.model.integers:
+            notes.append(f"walked as the relaxation: {', '.join(self.model.integers)} marked integer")
+        return tuple(notes)
