@@ -1,0 +1,9 @@
+"""Figures: a Scene of plain data from a region and a View, and two painters of it."""
+
+from polywalk.drawing.compose import scene
+from polywalk.drawing.interactive import draw, figure
+from polywalk.drawing.scene import Scene
+from polywalk.drawing.static import picture
+from polywalk.drawing.view import View
+
+__all__ = ["Scene", "View", "draw", "figure", "picture", "scene"]

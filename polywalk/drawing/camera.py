@@ -1,0 +1,104 @@
+"""Seeing a solid on paper: the direction to the eye, and the parallel projection along it."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from itertools import combinations
+from math import cos, hypot, radians, sin
+
+from polywalk.drawing.scene import Point
+from polywalk.drawing.shape import Shape
+from polywalk.drawing.space import cross, inner
+
+Eye = tuple[float, float, float]
+
+TURNS = (-25, -35, -45, -55, -65, 25, 35, 45, 55, 65, 115, 125, 145, 155, -115, -125, -145, -155)
+"""Angles about the vertical axis, in degrees, among which a picture chooses."""
+
+TILTS = (16, 24, 32)
+"""Angles above the horizontal, in degrees."""
+
+MOST_CORNERS = 24
+"""Past this many corners the choice would cost more than the picture; the usual view is taken."""
+
+
+def eye(turn: float, tilt: float) -> Eye:
+    """The direction to the eye from its two angles in degrees."""
+    flat = cos(radians(tilt))
+    return (flat * cos(radians(turn)), flat * sin(radians(turn)), sin(radians(tilt)))
+
+
+USUAL = eye(-55, 24)
+"""The view where nothing speaks for another one."""
+
+STEEP = 1e-9
+"""Below this horizontal share the eye is straight above: rounding would choose which way is right."""
+
+
+@dataclass(frozen=True)
+class Camera:
+    """A parallel projection: scaled coordinates to right, up and towards the eye."""
+
+    toward: Eye
+    scale: Point
+
+    @property
+    def frame(self) -> tuple[Point, Point, Point]:
+        """The unit vectors to the right, up, and towards the eye."""
+        size = hypot(*self.toward)
+        toward = tuple(value / size for value in self.toward)
+        flat = hypot(toward[0], toward[1])
+        right = (-toward[1] / flat, toward[0] / flat, 0.0) if flat > STEEP else (1.0, 0.0, 0.0)
+        return right, cross(toward, right), toward
+
+    def scaled(self, point: Sequence[float]) -> Point:
+        """A point in drawn lengths."""
+        return tuple(value * unit for value, unit in zip(point, self.scale, strict=True))
+
+    def see(self, point: Sequence[float]) -> Point:
+        """Right, up and depth (towards the eye) of a point."""
+        return tuple(inner(self.scaled(point), way) for way in self.frame)
+
+
+def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
+    """The direction from which no corner hides another or lies on a foreign edge, open sides turned away.
+
+    Parameters
+    ----------
+    shape : Shape
+        What is drawn.
+    away : sequence of (3,) tuple of float
+        Directions in which the region has no end; seen from there it would look closed.
+    scale : (3,) tuple of float
+        Drawn length of a unit along each axis.
+    """
+    edges = shape.edges + shape.open_edges
+    if len(scale) < 3 or len(shape.corners) > MOST_CORNERS or not edges:
+        return USUAL
+
+    def quality(way: tuple[int, int]) -> float:
+        camera = Camera(eye(*way), scale)
+        lit = all(inner(camera.scaled(ray), camera.toward) <= 0 for ray in away)
+        return round(_gap(shape, camera) * (1.0 if lit else 0.4), 6)
+
+    return eye(*max(((turn, tilt) for turn in TURNS for tilt in TILTS), key=quality))
+
+
+def _gap(shape: Shape, camera: Camera) -> float:
+    """The least distance on paper between a corner and another corner or an edge it does not belong to."""
+    flat = {corner: camera.see(corner)[:2] for corner in shape.corners}
+    edges = [(flat[a], flat[b], a, b) for a, b in shape.edges + shape.open_edges]
+    gaps = [hypot(p[0] - q[0], p[1] - q[1]) for p, q in combinations(flat.values(), 2)]
+    for corner, seen in flat.items():
+        gaps += [2 * _distance(seen, p, q) for p, q, a, b in edges if corner not in (a, b)]
+    return min(gaps)
+
+
+def _distance(point: Point, start: Point, end: Point) -> float:
+    """From a point to a segment, in the plane."""
+    along = (end[0] - start[0], end[1] - start[1])
+    arm = (point[0] - start[0], point[1] - start[1])
+    share = (arm[0] * along[0] + arm[1] * along[1]) / (along[0] ** 2 + along[1] ** 2 or 1.0)
+    share = min(max(share, 0.0), 1.0)
+    return hypot(arm[0] - share * along[0], arm[1] - share * along[1])

@@ -1,0 +1,220 @@
+"""One scene from a region and a view: windows, layers, words. Pure data in, pure data out."""
+
+from __future__ import annotations
+
+from itertools import count
+from string import ascii_lowercase
+
+from polywalk.drawing import conflict as conflicts
+from polywalk.drawing import goal, paths, plane
+from polywalk.drawing.camera import USUAL, best_eye
+from polywalk.drawing.key import key
+from polywalk.drawing.placing import Sheet
+from polywalk.drawing.scene import Axis, Label, Layer, Line, Point, Polygon, Scene
+from polywalk.drawing.shape import Shape, Side, shape
+from polywalk.drawing.subject import Subject, coordinates, floats, planar, subject
+from polywalk.drawing.view import View
+from polywalk.drawing.window import Window, around, square
+from polywalk.exact import short
+from polywalk.model import Model
+from polywalk.region import Region
+
+
+def scene(source: Model | Region, view: View | None = None) -> Scene:
+    """The picture of a model or a region as plain data.
+
+    Parameters
+    ----------
+    source : Model or Region
+        A Region saves enumerating again.
+    view : View, optional
+
+    Returns
+    -------
+    Scene
+
+    Raises
+    ------
+    DrawingError
+        The axes do not fit the model.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> from polywalk.drawing import scene
+    >>> model = pw.from_algebra(maximize="x + y", constraints={"both": "x + y <= 3"}, bounds={"x": (0, 2), "y": (0, 2)})
+    >>> [mark.text for mark in scene(model).marks if mark.role == "optimum"]
+    ['V4', 'V5']
+    """
+    looked = subject(source, view or View())
+    if looked.seen.status == "empty":
+        return _empty(looked)
+    frame, drawn = _framed(looked)
+    return _solid(looked, frame, drawn) if len(frame.low) == 3 else _flat(looked, frame, drawn)
+
+
+def _framed(looked: Subject) -> tuple[Window, Shape]:
+    """The window of a region and its pieces inside; a single decision gets a second, hidden axis."""
+    seen = looked.seen
+    points = [floats(point) for point in seen.base]
+    for walk in looked.view.walks:
+        points += [looked.along(point) for point in walk.points]
+    frame = around(points, [floats(ray.direction) for ray in seen.rays], [floats(line) for line in seen.lines])
+    drawn = shape(seen, frame if len(frame.low) != 2 else square(frame))
+    if len(frame.low) == 1:
+        return _lifted_window(frame), _lifted_shape(drawn)
+    return (square(frame) if len(frame.low) == 2 else frame), drawn
+
+
+def _lifted_window(frame: Window) -> Window:
+    return Window((frame.low[0], -1.0), (frame.high[0], 1.0))
+
+
+def _lifted_shape(drawn: Shape) -> Shape:
+    def lift(points: tuple[Point, ...]) -> tuple[Point, ...]:
+        return tuple(planar(point) for point in points)
+
+    return Shape(
+        drawn.dimension,
+        lift(drawn.corners),
+        (),
+        tuple(Side(side.constraints, lift(side.corners)) for side in drawn.sides),
+        tuple((a, b) for a, b in (lift(edge) for edge in drawn.edges)),
+        tuple((a, b) for a, b in (lift(edge) for edge in drawn.open_edges)),
+    )
+
+
+def _flat(looked: Subject, frame: Window, drawn: Shape) -> Scene:
+    sheet = Sheet(frame)
+    body = plane.region(drawn)
+    conflicts.keep_names_clear(body, sheet)
+    walks = paths.layer(looked, frame, sheet, frame.middle)
+    points = plane.vertices(looked, sheet)
+    aim = goal.layer(looked, frame, sheet)
+    borders, absent = plane.constraints(looked, sheet)
+    layers = (body, borders, aim, _optimal_face(looked), walks, points)
+    return _assembled(looked, frame, layers, key(looked, {}, absent, None), _status(looked))
+
+
+def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
+    middle = tuple(sum(values) / len(drawn.corners) for values in zip(*drawn.corners, strict=True))
+    tags, tagged = _tags(looked, drawn)
+    layers = (
+        _faces(looked, drawn),
+        goal.layer(looked, frame, None),
+        _optimal_face(looked),
+        paths.layer(looked, frame, None, middle),
+        plane.vertices(looked, None),
+        tagged,
+    )
+    return _assembled(looked, frame, layers, key(looked, tags, (), None), _status(looked), drawn)
+
+
+def _faces(looked: Subject, drawn: Shape) -> Layer:
+    """Facets that know their constraints, and the edges."""
+    rows = [row.name for row in looked.seen.model.constraints]
+    polygons = []
+    for face in drawn.faces:
+        words = [f"{name}\n{looked.seen.model.constraint(name).text(looked.axes)}" for name in face.constraints]
+        index = rows.index(face.constraints[0]) if face.constraints else 0
+        polygons.append(Polygon(face.corners, "facet", index, " & ".join(face.constraints), "\n".join(words)))
+    return Layer(tuple(polygons), plane.region(drawn).lines)
+
+
+def _tags(looked: Subject, drawn: Shape) -> tuple[dict[str, str], Layer]:
+    """A letter for each constraint that makes a side, at the middle of that side."""
+    letters = (name for size in count(1) for name in (letter * size for letter in ascii_lowercase))
+    order = [row.name for row in looked.seen.model.constraints]
+    tags: dict[str, str] = {}
+    labels = []
+    for side in sorted(drawn.sides, key=lambda side: order.index(side.constraints[0])):
+        letter = next(letters)
+        tags.update(dict.fromkeys(side.constraints, letter))
+        labels.append(Label(letter, side.centre, "tag", order.index(side.constraints[0])))
+    return tags, Layer(labels=tuple(labels))
+
+
+def _optimal_face(looked: Subject) -> Layer:
+    """A thick line along edges all of whose points are optimal."""
+    best = set(looked.best)
+    points = [planar(floats(vertex.point)) for vertex in looked.seen.vertices]
+    parts = tuple(
+        (points[edge.start], points[edge.end])
+        for edge in looked.seen.edges
+        if edge.end is not None and {edge.start, edge.end} <= best
+    )
+    return Layer(lines=(Line(parts, "optimal face", name="tied optimum"),)) if parts else Layer()
+
+
+def _empty(looked: Subject) -> Scene:
+    model = looked.seen.model
+    found = conflicts.conflict(looked.model)
+    words = conflicts.sentence(found)
+    if looked.projected:
+        nothing = Window((0.0,) * max(len(looked.axes), 2), (1.0,) * max(len(looked.axes), 2))
+        return _assembled(looked, nothing, (), key(looked, {}, (), found), words)
+    frame = conflicts.window(model, found)
+    rest = shape(found.rest, frame) if found.rest is not None else None
+    if len(frame.low) == 3:
+        tags, tagged = _tags(looked, rest) if rest else ({}, Layer())
+        body = plane.region(rest, "rest") if rest else Layer()
+        layers = (body, conflicts.borders(model, found, frame), tagged)
+        return _assembled(looked, frame, layers, key(looked, tags, (), found), words, rest)
+    frame = square(frame) if len(frame.low) == 2 else _lifted_window(frame)
+    if found.rest is not None:
+        rest = (
+            shape(found.rest, frame)
+            if model.n == 2
+            else _lifted_shape(shape(found.rest, conflicts.window(model, found)))
+        )
+    sheet = Sheet(frame)
+    body = plane.region(rest, "rest") if rest else Layer()
+    conflicts.keep_names_clear(body, sheet)
+    lines, absent = plane.constraints(looked, sheet, found.names)
+    return _assembled(looked, frame, (body, lines), key(looked, {}, absent, found), words)
+
+
+def _status(looked: Subject) -> str:
+    """The region and its optimum in one line."""
+    seen, whole = looked.seen, looked.region
+    kind = "single point" if seen.dimension == 0 else f"{seen.status} region"
+    flat = f", flat (dimension {seen.dimension})" if 0 < seen.dimension < len(looked.axes) else ""
+    corners = f"{len(seen.vertices)} {'vertex' if len(seen.vertices) == 1 else 'vertices'}"
+    text = f"{kind}{flat}, {corners if not seen.lines else 'no vertex (it contains a line)'}"
+    if whole.outcome == "unbounded":
+        return f"{text}; the objective has no optimum: it improves without end"
+    if whole.value is None:
+        return text
+    places = [coordinates(whole.vertices[k].point) for k in (whole.optimal.vertices if whole.optimal else ())]
+    where = f" at {places[0]}" if len(places) == 1 else f", tied between {len(places)} vertices" if places else ""
+    return f"{text}; optimum {short(whole.value)}{where}"
+
+
+def _assembled(
+    looked: Subject,
+    frame: Window,
+    layers: tuple[Layer, ...],
+    rows: tuple[object, ...],
+    status: str,
+    drawn: Shape | None = None,
+) -> Scene:
+    model = looked.model
+    away = [floats(ray.direction) for ray in looked.seen.rays]
+    named = model.name or "Feasible region"
+    if looked.projected:
+        named = f"{named}: projection of {model.n} variables onto {', '.join(looked.axes)}"
+    aim = model.objective.text(model.variables) if model.objective else "no objective"
+    titles = [f"{name} [{model.unit(name)}]" if model.unit(name) else name for name in looked.axes]
+    titles += [""] * (2 - len(titles))
+    return Scene(
+        axes=tuple(Axis(*parts) for parts in zip(titles, frame.low, frame.high, strict=True)),
+        scale=frame.scale,
+        title=named,
+        subtitle=f"{aim}\n{status}",
+        polygons=tuple(item for layer in layers for item in layer.polygons),
+        lines=tuple(item for layer in layers for item in layer.lines),
+        marks=tuple(item for layer in layers for item in layer.marks),
+        labels=tuple(item for layer in layers for item in layer.labels),
+        key=rows,  # type: ignore[arg-type]
+        camera=looked.view.camera or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
+    )

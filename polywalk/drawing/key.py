@@ -1,0 +1,122 @@
+"""The key of a picture: what every mark means, in words and numbers, so that it stands on its own."""
+
+from __future__ import annotations
+
+from polywalk.drawing.conflict import Conflict
+from polywalk.drawing.goal import TREND
+from polywalk.drawing.scene import KeyPart, KeyRow
+from polywalk.drawing.subject import Subject, coordinates
+from polywalk.exact import short
+from polywalk.model import GOAL
+from polywalk.walks import Walk
+
+MOST_VERTICES = 16
+"""Past this many vertices the key lists only optimal and degenerate ones, and says so."""
+
+
+def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None) -> tuple[KeyPart, ...]:
+    """All parts of the key that have rows."""
+    parts = (
+        KeyPart("What the marks say", _marks(subject, found)),
+        KeyPart("Walks", tuple(_walk(index, walk) for index, walk in enumerate(subject.view.walks))),
+        KeyPart("Vertices, with the constraints active there", _vertices(subject)),
+        KeyPart("Constraints", _constraints(subject, tags, absent, found)),
+    )
+    return tuple(part for part in parts if part.rows)
+
+
+def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
+    seen, rows = subject.seen, []
+    if found is not None:
+        if found.rest is not None and found.lifted is not None:
+            rows.append(KeyRow("rest", f"what would be allowed without {found.lifted.name}"))
+        return tuple(rows)
+    rows += [KeyRow("optimum", _optimum(subject))] if subject.best else []
+    goal = seen.model.objective
+    if goal is not None and any(goal.coefficients):
+        verb = "falls" if goal.goal == "min" else "rises"
+        rows.append(KeyRow("objective", f"direction in which the objective {verb} (goal: {GOAL[goal.goal]})"))
+        if subject.region.value is not None:
+            rows.append(KeyRow("level line", f"where the objective is {short(subject.region.value)}"))
+    for ray in seen.rays:
+        rows.append(KeyRow("open edge", f"no limit along {coordinates(ray.direction)}"))
+    for line in seen.lines:
+        rows.append(KeyRow("open edge", f"no limit along ±{coordinates(line)}"))
+    for k, vertex in enumerate(seen.vertices):
+        if vertex.degenerate:
+            most = f"V{k + 1} is degenerate: {len(vertex.active)} constraints meet, {seen.model.n} would do"
+            rows.append(KeyRow("degenerate", most))
+    if not subject.axes[2:]:
+        rows.append(KeyRow("hatch", "strokes: the side a constraint forbids"))
+    return tuple(rows)
+
+
+def _optimum(subject: Subject) -> str:
+    places = [f"V{k + 1} {coordinates(subject.seen.vertices[k].point)}" for k in subject.best]
+    value = f"objective {short(subject.region.value)}" if subject.region.value is not None else ""
+    face = subject.region.optimal
+    if face is not None and (face.rays or face.lines):
+        return f"optimum: {value} at {', '.join(places)} and on without end"
+    if len(places) > 1:
+        return f"tied optimum: {value} at {', '.join(places)} and everywhere between"
+    return f"optimum: {value} at {places[0]}"
+
+
+def _walk(index: int, walk: Walk) -> KeyRow:
+    return KeyRow("walk", walk_text(walk), index)
+
+
+def walk_text(walk: Walk) -> str:
+    """A walk in one line: rule, pivots, stays, end."""
+    still = sum(pivot.kind == "degenerate" for pivot in walk.pivots)
+    first = sum(pivot.phase == 1 for pivot in walk.pivots)
+    text = f"{walk.rule}: {_count(len(walk.pivots), 'pivot')}"
+    text += f", {first} of them Phase I (dotted)" if first else ""
+    text += f", {_count(still, 'stay')}" if still else ", no stay"
+    return f"{text}, {walk.end}"
+
+
+def _count(number: int, word: str) -> str:
+    return f"{number} {word}" if number == 1 else f"{number} {word}s"
+
+
+def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
+    seen = subject.seen
+    listed = list(range(len(seen.vertices)))
+    if len(listed) > MOST_VERTICES:
+        listed = [k for k in listed if seen.vertices[k].degenerate or k in subject.best][:MOST_VERTICES]
+    rows = []
+    for k in listed:
+        vertex = seen.vertices[k]
+        value = f"  objective {short(vertex.objective)}" if vertex.objective is not None else ""
+        rows.append(KeyRow("point", f"{coordinates(vertex.point)}{value}: {', '.join(vertex.active)}", tag=f"V{k + 1}"))
+    left = len(seen.vertices) - len(listed)
+    if left:
+        rows.append(KeyRow("point", f"and {left} more vertices", tag=""))
+    return tuple(rows)
+
+
+def _constraints(
+    subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None
+) -> tuple[KeyRow, ...]:
+    rows, model = [], subject.seen.model
+    flat = set(subject.seen.equalities)
+    for index, row in enumerate(model.constraints):
+        note = ""
+        if found is not None:
+            note = "   (in the conflict)" if row.name in found.names else ""
+        elif row.name in flat:
+            note = "   (active everywhere)"
+        elif row.name in absent:
+            note = "   (outside this picture)"
+        elif row.name not in tags and len(model.variables) == 3:
+            note = "   (makes no face)"
+        text = f"{row.name}: {row.text(model.variables)}{note}"
+        rows.append(KeyRow("constraint", text, index, tags.get(row.name, "")))
+    return tuple(rows)
+
+
+def goal_words(subject: Subject) -> str:
+    """The trend of the objective, for painters that name the arrow in a legend."""
+    goal = subject.seen.model.objective
+    return TREND[goal.goal] if goal else ""

@@ -1,0 +1,168 @@
+"""Walks in a picture: numbered steps with arrow heads, stays counted at their vertex, Phase I dotted.
+
+In the plane several walks along one edge run side by side; in space each further walk is moved a little away from
+the middle of the region, so that none hides another.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from math import hypot
+
+from polywalk.drawing.placing import Sheet, about
+from polywalk.drawing.scene import Label, Layer, Line, Mark, Point
+from polywalk.drawing.space import exit_point
+from polywalk.drawing.subject import Subject, planar
+from polywalk.drawing.window import Window
+from polywalk.walks import Pivot, Walk
+
+APART = 7.0
+"""Pixels between walks that share an edge."""
+
+OUTWARD = 0.035
+"""In space, how far each further walk is moved from the middle, as a share of its distance from there."""
+
+MOST_NUMBERS = 60
+"""Past this many pivots step numbers would cover the picture; every tenth is written."""
+
+
+@dataclass(frozen=True)
+class Leg:
+    """One pivot as it is drawn: from, to, and whether anything moves along the axes."""
+
+    pivot: Pivot
+    start: Point
+    end: Point
+
+    @property
+    def moves(self) -> bool:
+        """Whether it is seen to move."""
+        return self.start != self.end
+
+
+@dataclass(frozen=True)
+class Frame:
+    """What all walks of a picture share: where it is drawn, how many there are, the middle they avoid."""
+
+    subject: Subject
+    window: Window
+    sheet: Sheet | None
+    middle: Point
+    count: int
+
+
+def layer(subject: Subject, window: Window, sheet: Sheet | None, middle: Point) -> Layer:
+    """All walks of the view."""
+    frame = Frame(subject, window, sheet, middle, len(subject.view.walks))
+    lines: list[Line] = []
+    marks: list[Mark] = []
+    labels: list[Label] = []
+    for index, walk in enumerate(subject.view.walks):
+        legs = _legs(frame, walk)
+        lines += _lines(frame, index, legs)
+        labels += _numbers(frame, index, legs) + _stays(frame, index, legs)
+        if index == 0:
+            marks += _marks(frame, walk, legs)
+    return Layer(lines=tuple(lines), marks=tuple(marks), labels=tuple(labels))
+
+
+def _legs(frame: Frame, walk: Walk) -> list[Leg]:
+    legs = []
+    for pivot in walk.pivots:
+        start, end = (planar(frame.subject.along(point)) for point in (pivot.point_before, pivot.point_after))
+        if pivot.kind == "ray":
+            end = exit_point(start, planar(frame.subject.along(pivot.direction)), frame.window)
+        legs.append(Leg(pivot, start, end))
+    return legs
+
+
+def _shifted(frame: Frame, index: int, leg: Leg) -> tuple[Point, Point]:
+    """Start and end of a leg, moved aside so that walks on one edge do not hide one another."""
+    if frame.sheet is None:
+        grow = 1 + OUTWARD * index
+        start, end = (
+            tuple(m + grow * (x - m) for x, m in zip(point, frame.middle, strict=True))
+            for point in (leg.start, leg.end)
+        )
+        return start, end
+    a, b = frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)
+    first, last = sorted((a, b))
+    length = hypot(b[0] - a[0], b[1] - a[1])
+    aside = APART * (index - (frame.count - 1) / 2) / length
+    move = (-(last[1] - first[1]) * aside, (last[0] - first[0]) * aside)
+    return frame.sheet.unpixel((a[0] + move[0], a[1] + move[1])), frame.sheet.unpixel((b[0] + move[0], b[1] + move[1]))
+
+
+def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
+    limit = frame.subject.view.step
+    parts: dict[str, list[tuple[Point, Point]]] = {}
+    for leg in legs:
+        if not leg.moves:
+            continue
+        role = "phase 1" if leg.pivot.phase == 1 else "walk"
+        if index == 0 and limit is not None and leg.pivot.number > limit:
+            role = "walk rest"
+        parts.setdefault(role, []).append(_shifted(frame, index, leg))
+        if frame.sheet is not None:
+            frame.sheet.lines.append((frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)))
+    name = frame.subject.view.walks[index].rule
+    return [Line(tuple(found), role, index, name, arrow="end") for role, found in parts.items()]
+
+
+def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
+    share = (index + 1) / (frame.count + 1)
+    labels = []
+    for leg in legs:
+        if not leg.moves or (len(legs) > MOST_NUMBERS and leg.pivot.number % 10):
+            continue
+        start, end = _shifted(frame, index, leg)
+        spot = tuple(a + share * (b - a) for a, b in zip(start, end, strict=True))
+        if frame.sheet is not None:
+            frame.sheet.keep_clear(spot, 9.0)
+        labels.append(Label(str(leg.pivot.number), spot, "step", index))
+    return labels
+
+
+def stays(legs: list[Leg]) -> dict[Point, list[int]]:
+    """The numbers of the pivots that move nothing, by the point where they stay."""
+    found: dict[Point, list[int]] = {}
+    for leg in legs:
+        if not leg.moves:
+            found.setdefault(leg.start, []).append(leg.pivot.number)
+    return found
+
+
+def _stays(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
+    labels = []
+    for point, numbers in stays(legs).items():
+        text = f"{_spans(numbers)} stay{'s' if len(numbers) == 1 else ''} here"
+        if frame.count > 1:
+            text = f"{frame.subject.view.walks[index].rule}: {text}"
+        if frame.sheet is None:
+            labels.append(Label(text, point, "stay", index, shift=(0, -18 - 15 * index)))
+        else:
+            at = frame.sheet.pixel(point)
+            labels.append(frame.sheet.place(text, about(at, 36.0, frame.sheet.pixel(frame.middle)), "stay", index))
+    return labels
+
+
+def _spans(numbers: list[int]) -> str:
+    """Runs of numbers, short: 2, 4-6."""
+    runs: list[list[int]] = []
+    for number in numbers:
+        if runs and number == runs[-1][1] + 1:
+            runs[-1][1] = number
+        else:
+            runs.append([number, number])
+    return ", ".join(str(a) if a == b else f"{a}–{b}" for a, b in runs)
+
+
+def _marks(frame: Frame, walk: Walk, legs: list[Leg]) -> list[Mark]:
+    if not legs:
+        return []
+    marks = [Mark(legs[0].start, "start", text="start")]
+    step = frame.subject.view.step
+    if step is not None:
+        here = legs[0].start if step <= 0 else legs[min(step, len(legs)) - 1].end
+        marks.append(Mark(here, "selected", text=f"after pivot {step}"))
+    return marks

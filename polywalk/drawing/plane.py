@@ -1,0 +1,108 @@
+"""The layers of a picture in the plane: constraints with their forbidden side, the region, its vertices."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from math import hypot
+
+from polywalk.drawing.placing import Sheet, about, beside, upright
+from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon
+from polywalk.drawing.shape import Shape
+from polywalk.drawing.subject import Subject, floats, planar
+from polywalk.drawing.window import Window
+from polywalk.model import SIGN, Constraint
+
+HATCH_GAP, HATCH = 15.0, 7.0
+"""Pixels between the short strokes on a constraint's forbidden side, and their length."""
+
+
+def chord(row: Constraint, window: Window) -> tuple[Point, Point] | None:
+    """The part of a constraint's border inside the window, or None where it does not pass."""
+    a, b = planar(floats(row.coefficients)), float(row.rhs)
+    (low_x, low_y), (high_x, high_y) = window.low, window.high
+    found: list[Point] = []
+    if a[1]:
+        found += [(x, (b - a[0] * x) / a[1]) for x in (low_x, high_x)]
+    if a[0]:
+        found += [((b - a[1] * y) / a[0], y) for y in (low_y, high_y)]
+    ends = sorted({point for point in found if window.inside(point)})
+    return (ends[0], ends[-1]) if len(ends) > 1 else None
+
+
+def forbidden(row: Constraint, sheet: Sheet) -> Point:
+    """The unit direction on paper in which a constraint is violated."""
+    _, inward = row.inward
+    x, y = (-value / unit for value, unit in zip(planar(floats(inward)), sheet.window.scale, strict=True))
+    length = hypot(x, y)
+    return (x / length, y / length)
+
+
+def _hatch(start: Point, end: Point, out: Point) -> Iterator[tuple[Point, Point]]:
+    length = hypot(end[0] - start[0], end[1] - start[1])
+    along = ((end[0] - start[0]) / length, (end[1] - start[1]) / length)
+    stroke = tuple(HATCH * (0.8 * o + 0.6 * s) for o, s in zip(out, along, strict=True))
+    for k in range(1, int(length / HATCH_GAP)):
+        foot = (start[0] + k * HATCH_GAP * along[0], start[1] + k * HATCH_GAP * along[1])
+        yield foot, (foot[0] + stroke[0], foot[1] + stroke[1])
+
+
+def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) -> tuple[Layer, tuple[str, ...]]:
+    """Every border that passes through the window, with its name and hatching; and the names that do not pass."""
+    lines: list[Line] = []
+    wanted: list[tuple[int, Constraint, Point, Point]] = []
+    absent: list[str] = []
+    for index, row in enumerate(subject.seen.model.constraints):
+        ends = None if row.is_constant else chord(row, sheet.window)
+        if ends is None:
+            absent.append(row.name)
+            continue
+        start, end = (sheet.pixel(point) for point in ends)
+        sheet.lines.append((start, end))
+        wanted.append((index, row, start, end))
+        hover = f"{row.name}\n{row.text(subject.axes)}"
+        role = "conflict line" if row.name in conflict else "constraint"
+        lines.append(Line((ends,), role, index, row.name, hover))
+        if row.sense != "==":
+            strokes = tuple((sheet.unpixel(a), sheet.unpixel(b)) for a, b in _hatch(start, end, forbidden(row, sheet)))
+            lines.append(Line(strokes, "hatch", index, row.name))
+    wanted.sort(key=lambda item: hypot(item[2][0] - item[3][0], item[2][1] - item[3][1]))
+    labels = tuple(_name(sheet, *item) for item in wanted)
+    return Layer(lines=tuple(lines), labels=labels), tuple(absent)
+
+
+def _name(sheet: Sheet, index: int, row: Constraint, start: Point, end: Point) -> Label:
+    out = forbidden(row, sheet)
+    text = f"{row.name} ({SIGN['==']})" if row.sense == "==" else row.name
+    return sheet.place(text, beside(start, end, out), "name", index, upright(start, end))
+
+
+def region(shape: Shape, role: str = "region") -> Layer:
+    """Fill and edges of the drawn region; unbounded edges end in dashed arrows."""
+    polygons = tuple(Polygon(face.corners, role, name="region") for face in shape.faces)
+    lines = [Line(shape.edges, "edge", name="edges")] if shape.edges else []
+    if shape.open_edges:
+        lines.append(Line(shape.open_edges, "open edge", name="unbounded this way", arrow="end"))
+    return Layer(polygons, tuple(lines))
+
+
+def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
+    """One mark a vertex, a ring where it is degenerate, the optimum and the selection emphasised, numbers beside."""
+    marks: list[Mark] = []
+    labels: list[Label] = []
+    seen = subject.seen
+    points = [planar(floats(vertex.point)) for vertex in seen.vertices]
+    for k, (vertex, point) in enumerate(zip(seen.vertices, points, strict=True)):
+        if vertex.degenerate:
+            marks.append(Mark(point, "degenerate"))
+        marks.append(Mark(point, "vertex", text=f"V{k + 1}", hover=subject.hover(k), key=k))
+    marks += [Mark(points[k], "optimum", text=f"V{k + 1}", hover=subject.hover(k)) for k in subject.best]
+    if subject.view.vertex is not None:
+        marks.append(Mark(points[subject.view.vertex], "selected"))
+    if sheet is not None:
+        middle = sheet.pixel(sheet.window.middle)
+        for point in points:
+            sheet.keep_clear(point, 8.0)
+        labels = [
+            sheet.place(f"V{k + 1}", about(sheet.pixel(point), away=middle), "point") for k, point in enumerate(points)
+        ]
+    return Layer(marks=tuple(marks), labels=tuple(labels))

@@ -1,0 +1,121 @@
+"""A picture as plain data: polygons, lines, marks, labels and a key, in the coordinates of the axes.
+
+No plotting library is known here. A role (and an index among its kind) says what a thing is; theme.py says how
+that looks; the painters only translate.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+Point = tuple[float, ...]
+
+
+@dataclass(frozen=True)
+class Polygon:
+    """A filled convex polygon; ``index`` picks the style among its role's kind, ``hover`` is plain text."""
+
+    points: tuple[Point, ...]
+    role: str
+    index: int = 0
+    name: str = ""
+    hover: str = ""
+    shade: float = 0.0  # 0 in full light, 1 turned away from it
+
+
+@dataclass(frozen=True)
+class Line:
+    """Polylines of one style; ``arrow`` puts a head on each, at its end or at its middle."""
+
+    parts: tuple[tuple[Point, ...], ...]
+    role: str
+    index: int = 0
+    name: str = ""
+    hover: str = ""
+    arrow: str = ""  # "", "end" or "middle"
+
+
+@dataclass(frozen=True)
+class Mark:
+    """A point that means something; ``key`` is the vertex index where it stands for a vertex."""
+
+    point: Point
+    role: str
+    index: int = 0
+    text: str = ""
+    hover: str = ""
+    key: int | None = None
+
+
+@dataclass(frozen=True)
+class Label:
+    """Text centred on a point, moved by ``shift`` pixels (right, up), turned by ``angle`` degrees."""
+
+    text: str
+    point: Point
+    role: str
+    index: int = 0
+    shift: tuple[float, float] = (0.0, 0.0)
+    angle: float = 0.0
+
+
+@dataclass(frozen=True)
+class KeyRow:
+    """One line of the key: a sample of the role's look (or none), a short name and what it means."""
+
+    role: str
+    text: str
+    index: int = 0
+    tag: str = ""
+
+
+@dataclass(frozen=True)
+class KeyPart:
+    """A heading and its rows."""
+
+    heading: str
+    rows: tuple[KeyRow, ...]
+
+
+@dataclass(frozen=True)
+class Axis:
+    """One axis: title (with unit) and the drawn interval; an axis without title is not shown."""
+
+    title: str
+    low: float
+    high: float
+
+
+@dataclass(frozen=True)
+class Scene:
+    """A whole picture.
+
+    ``axes`` has two or three entries (a single decision is drawn in the plane with a hidden second axis);
+    ``scale`` holds the drawn length of a unit along each axis, so that both painters keep one aspect.
+    """
+
+    axes: tuple[Axis, ...]
+    scale: tuple[float, ...]
+    title: str
+    subtitle: str
+    polygons: tuple[Polygon, ...] = ()
+    lines: tuple[Line, ...] = ()
+    marks: tuple[Mark, ...] = ()
+    labels: tuple[Label, ...] = ()
+    key: tuple[KeyPart, ...] = ()
+    camera: tuple[float, float, float] = (1.0, 1.0, 1.0)
+
+    @property
+    def solid(self) -> bool:
+        """Whether it has three axes."""
+        return len(self.axes) == 3
+
+
+@dataclass(frozen=True)
+class Layer:
+    """What one part of the composition adds to a scene."""
+
+    polygons: tuple[Polygon, ...] = ()
+    lines: tuple[Line, ...] = ()
+    marks: tuple[Mark, ...] = ()
+    labels: tuple[Label, ...] = ()

@@ -1,0 +1,147 @@
+"""Every colour, dash, marker and size, once.
+
+Constraints follow the Okabe-Ito palette in order (Okabe & Ito, Color Universal Design, 2008); on white its light
+colours are darkened until a line reaches 3:1 against the ground, and names are always written in the text colour.
+Nothing is told by colour alone: constraints carry names or numbered tags, walks differ by dash and by step numbers,
+special vertices by shape.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+
+from polywalk.drawing.view import Mode
+
+CONSTRAINTS = {
+    "light": ("#0072B2", "#C65300", "#00795A", "#9C4F7C", "#9A6A00", "#2A7FB0", "#7A7000", "#444444"),
+    "dark": ("#56B4E9", "#F08A3C", "#2CC79B", "#E39BC3", "#E69F00", "#8FD0F5", "#F0E442", "#BBBBBB"),
+    "grey": ("#222222", "#555555", "#777777", "#333333", "#666666", "#444444", "#888888", "#111111"),
+}
+WALKS = {
+    "light": ("#16181D", "#A63A00", "#004E7C", "#6B2C63"),
+    "dark": ("#FFFFFF", "#FFB27A", "#8FD0F5", "#F1B7DA"),
+    "grey": ("#000000", "#000000", "#333333", "#333333"),
+}
+DASHES = ("solid", "dash", "dot", "dashdot")
+
+
+@dataclass(frozen=True)
+class Style:
+    """How a role looks; sizes and widths in pixels, symbols in words both painters know."""
+
+    colour: str
+    fill: str = ""
+    opacity: float = 1.0
+    width: float = 1.0
+    dash: str = "solid"
+    size: float = 0.0
+    symbol: str = "circle"
+
+
+@dataclass(frozen=True)
+class Theme:
+    """The grounds, greys and the style of every role in one mode."""
+
+    mode: Mode
+    paper: str
+    text: str
+    quiet: str
+    grid: str
+    face: str
+    edge: str
+
+    def constraint(self, index: int) -> Style:
+        """Constraint number ``index``; past eight the dash changes too."""
+        colours = CONSTRAINTS[self.mode]
+        return Style(colours[index % 8], width=1.8, dash=DASHES[(index // 8) % 4])
+
+    def walk(self, index: int) -> Style:
+        """Walk number ``index``: told apart by dash as well as colour."""
+        return Style(WALKS[self.mode][index % 4], width=2.6, dash=DASHES[index % 4])
+
+    def style(self, role: str, index: int = 0) -> Style:
+        """The style of a role, the only place a painter asks."""
+        if role in {"constraint", "hatch", "conflict", "conflict line", "tag"}:
+            base = self.constraint(index)
+            if role == "hatch":
+                return replace(base, width=0.9, dash="solid", opacity=0.75)
+            if role == "conflict":
+                return replace(base, width=0.0, fill=base.colour, opacity=0.22)
+            if role == "conflict line":
+                return replace(base, width=3.2, dash="solid")
+            return replace(base, fill=self.paper, size=11.0)
+        if role in {"walk", "phase 1", "walk rest", "step"}:
+            base = self.walk(index)
+            changes = {
+                "walk": replace(base),
+                "phase 1": replace(base, dash="dot", width=2.2),
+                "walk rest": replace(base, opacity=0.25, width=1.6),
+                "step": replace(base, fill=self.paper, size=15.0, width=1.2),
+            }
+            return changes[role]
+        return self._fixed()[role]
+
+    def _fixed(self) -> dict[str, Style]:
+        return {
+            "region": Style(self.edge, fill=self.face, opacity=1.0, width=0.0),
+            "facet": Style(self.edge, fill=self.face, opacity=0.62, width=0.0),
+            "rest": Style(self.quiet, fill=self.face, opacity=0.6, width=1.0, dash="dash"),
+            "edge": Style(self.edge, width=1.6),
+            "hidden edge": Style(self.quiet, width=1.0, dash="dash"),
+            "open edge": Style(self.edge, width=1.8, dash="dash"),
+            "level": Style(self.quiet, fill=self.quiet, opacity=0.1, width=0.0),
+            "level line": Style(self.quiet, width=1.3, dash="dashdot"),
+            "objective": Style(self.text, width=2.0),
+            "grid": Style(self.grid, width=0.8),
+            "axis": Style(self.quiet, width=1.0),
+            "vertex": Style(self.paper, fill=self.edge, width=1.0, size=8.0),
+            "degenerate": Style(self.edge, width=1.6, size=17.0, symbol="ring"),
+            "optimum": Style(self.paper, fill=self.text, width=1.0, size=15.0, symbol="diamond"),
+            "optimal face": Style(self.text, width=4.5),
+            "selected": Style(self.text, width=2.0, size=22.0, symbol="square ring"),
+            "start": Style(self.text, width=2.0, size=13.0, symbol="square ring"),
+            "stay": Style(self.text, fill=self.paper, width=1.0, size=11.0),
+            "back tag": Style(self.quiet, fill=self.paper, width=1.0, size=11.0),
+            "back": Style(self.quiet, fill=self.face, opacity=0.9, width=0.0),
+            "name": Style(self.text, size=11.0),
+            "note": Style(self.quiet, size=10.0),
+            "point": Style(self.text, size=11.0),
+        }
+
+
+DEPTH = {
+    role: depth
+    for depth, roles in enumerate(
+        (
+            ("grid", "axis"),
+            ("region", "back", "conflict"),
+            ("hidden edge",),
+            ("level", "level line"),
+            ("facet", "rest"),
+            ("hatch", "constraint"),
+            ("edge", "open edge", "conflict line"),
+            ("optimal face", "objective"),
+            ("walk rest",),
+            ("phase 1", "walk"),
+            ("vertex",),
+            ("degenerate", "optimum", "start", "selected"),
+            ("back tag",),
+            ("note", "name", "tag", "point"),
+            ("stay", "step"),
+        )
+    )
+    for role in roles
+}
+"""What is painted over what: later lines lie on top."""
+
+THEMES = {
+    "light": Theme("light", "#FFFFFF", "#16181D", "#6A6F7A", "#E3E4E8", "#E9E7E1", "#2F333B"),
+    "dark": Theme("dark", "#16181D", "#F2F2F0", "#A2A7B3", "#33363E", "#343841", "#D9DAD6"),
+    "grey": Theme("grey", "#FFFFFF", "#000000", "#666666", "#DDDDDD", "#EAEAEA", "#222222"),
+}
+
+
+def mixed(colour: str, other: str, share: float) -> str:
+    """A colour moved towards another by a share from 0 to 1."""
+    pairs = ((int(colour[k : k + 2], 16), int(other[k : k + 2], 16)) for k in (1, 3, 5))
+    return "#" + "".join(f"{round(a + share * (b - a)):02X}" for a, b in pairs)

@@ -1,0 +1,70 @@
+"""What is looked at: axes, selection, walks, step, camera. Frozen, so that two pictures of one View are the same."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, fields, replace
+from typing import Any, Literal
+
+from polywalk.errors import DrawingError
+from polywalk.walks import Walk
+
+Mode = Literal["light", "dark", "grey"]
+
+
+@dataclass(frozen=True)
+class View:
+    """What a picture shows of a model.
+
+    Parameters
+    ----------
+    axes : tuple of str or None, optional
+        One to three variables; None takes all variables of a model that has at most three.
+    vertex : int or None, optional
+        Index of the selected vertex in ``region(model).vertices``; the axes must then be all variables.
+    walks : tuple of Walk, optional
+        Paths to draw, in the order of the legend.
+    step : int or None, optional
+        Draw the first walk up to this pivot and the rest of it faintly; None draws it whole.
+    camera : (3,) tuple of float or None, optional
+        Direction from the solid to the eye, z upward; None chooses the direction that keeps vertices apart.
+    mode : {"light", "dark", "grey"}, optional
+
+    Examples
+    --------
+    >>> from polywalk.drawing import View
+    >>> View(axes=("pump", "tank")).walks
+    ()
+    """
+
+    axes: tuple[str, ...] | None = None
+    vertex: int | None = None
+    walks: tuple[Walk, ...] = ()
+    step: int | None = None
+    camera: tuple[float, float, float] | None = None
+    mode: Mode = "light"
+
+
+def viewed(view: View | None, changes: Mapping[str, Any]) -> View:
+    """A view with some fields changed; one walk may stand for a tuple of them.
+
+    Raises
+    ------
+    DrawingError
+        A field that View does not have, an unknown mode.
+    """
+    known = [field.name for field in fields(View)]
+    for name in changes:
+        if name not in known:
+            raise DrawingError(f"expected one of {', '.join(known)}, got {name!r}.", culprit=name)
+    changed = dict(changes)
+    walks = changed.get("walks", ())
+    changed["walks"] = (walks,) if isinstance(walks, Walk) else tuple(walks)
+    if "walks" not in changes:
+        del changed["walks"]
+    if changed.get("axes") is not None:
+        changed["axes"] = tuple(changed["axes"])
+    found = replace(view or View(), **changed)
+    if found.mode not in ("light", "dark", "grey"):
+        raise DrawingError(f"expected the mode light, dark or grey, got {found.mode!r}.", culprit=found.mode)
+    return found
