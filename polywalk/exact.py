@@ -106,8 +106,10 @@ def bound(value: object, sign: int) -> Fraction | None:
 
 def integer_row(values: Sequence[Fraction]) -> tuple[tuple[int, ...], int]:
     """The row times its least common denominator, and that denominator."""
-    scale = lcm(*(value.denominator for value in values))
-    return tuple(value.numerator * (scale // value.denominator) for value in values), scale
+    scale = lcm(*[value.denominator for value in values])
+    if scale == 1:
+        return tuple([value.numerator for value in values]), 1
+    return tuple([value.numerator * (scale // value.denominator) for value in values]), scale
 
 
 def primitive(values: Sequence[Fraction]) -> Row:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from polywalk.budget import Budget
 from polywalk.model import Model
 from polywalk.region.generators import Generators, generators
-from polywalk.region.parts import Edge, Ray, Vertex
+from polywalk.region.parts import Ray, Vertex
 from polywalk.region.results import Region, Status
 
 
@@ -51,7 +51,6 @@ def region(model: Model, budget: Budget | None = None) -> Region:
         vertices=tuple([Vertex(point, active[k], model) for k, point in enumerate(corners)]),
         rays=tuple([Ray(way, active[count + k], model) for k, way in enumerate(found.rays)]),
         lines=found.lines,
-        edges=_edges(found, names),
         base=found.points,
         _active=found.active,
     )
@@ -61,14 +60,3 @@ def _status(found: Generators) -> Status:
     if not found.points:
         return "empty"
     return "unbounded" if found.rays or found.lines else "bounded"
-
-
-def _edges(found: Generators, names: list[str]) -> tuple[Edge, ...]:
-    count, sets = len(found.points), [set(places) for places in found.active]
-    edges: list[Edge] = []
-    for start, other in found.pairs:
-        common = sets[other]
-        active = tuple([names[place] for place in found.active[start] if place in common])
-        end, ray = (other, None) if other < count else (None, other - count)
-        edges.append(Edge(start, end, ray, active))
-    return tuple(edges)

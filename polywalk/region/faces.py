@@ -5,12 +5,15 @@ questions about faces are questions about sets. Bit k stands for generator k: po
 
 References
 ----------
+Fukuda & Prodon, Double description method revisited, LNCS 1120, 1996.
 Ziegler, Lectures on Polytopes, 1995, section 2.2: every face is the intersection of the facets that contain it.
 """
 
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
+from functools import reduce
+from operator import and_
 
 Pairs = Sequence[tuple[int, int]]
 
@@ -22,6 +25,26 @@ def masks(active: Sequence[tuple[int, ...]]) -> dict[int, int]:
         for place in places:
             found[place] = found.get(place, 0) | 1 << generator
     return dict(sorted(found.items()))
+
+
+def pairs(active: Sequence[tuple[int, ...]], patterns: dict[int, int], points: int, n: int) -> list[tuple[int, int]]:
+    """The edges of a region without lines, each as two generators, the first of them a point.
+
+    Two generators are joined by an edge where no third is active at all the constraints they share (Fukuda & Prodon
+    1996, proposition 7); they then share at least n - 1. Two rays would only meet at infinity.
+    """
+    sets = [sum([1 << place for place in places]) for places in active]
+    everything = (1 << len(active)) - 1
+    found: list[tuple[int, int]] = []
+    for start in range(points):
+        mine = sets[start]
+        for other in range(start + 1, len(active)):
+            common = mine & sets[other]
+            if common.bit_count() >= n - 1:
+                shared = [patterns[place] for place in active[start] if common >> place & 1]
+                if reduce(and_, shared, everything).bit_count() == 2:
+                    found.append((start, other))
+    return found
 
 
 def facets(patterns: dict[int, int], points: int, generators: int) -> dict[int, list[int]]:

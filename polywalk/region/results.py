@@ -33,8 +33,6 @@ class Region(Shown):
         Sorted by direction.
     lines : tuple of (n,) tuple of Fraction
         Directions that are free both ways, linearly independent, in the smallest integers.
-    edges : tuple of Edge
-        Sorted; none where the region has a line.
     base : tuple of (n,) tuple of Fraction
         One point of each smallest face: the vertices' points, unless the region has a line.
 
@@ -59,7 +57,6 @@ class Region(Shown):
     vertices: tuple[Vertex, ...]
     rays: tuple[Ray, ...]
     lines: tuple[Row, ...]
-    edges: tuple[Edge, ...]
     base: tuple[Row, ...]
     _active: tuple[tuple[int, ...], ...] = field(repr=False)
 
@@ -69,7 +66,20 @@ class Region(Shown):
 
     @cached_property
     def _pairs(self) -> list[tuple[int, int]]:
-        return [(edge.start, edge.end) for edge in self.edges if edge.end is not None]
+        if self.lines:
+            return []
+        return faces.pairs(self._active, self._patterns, len(self.base), self.model.n)
+
+    @cached_property
+    def edges(self) -> tuple[Edge, ...]:
+        """The edges, sorted; none where the region has a line."""
+        count, names = len(self.base), [row.name for row in self.model.constraints]
+        return tuple([self._edge(start, other, count, names) for start, other in self._pairs])
+
+    def _edge(self, start: int, other: int, count: int, names: list[str]) -> Edge:
+        there = self._active[other]
+        active = tuple([names[place] for place in self._active[start] if place in there])
+        return Edge(start, other, None, active) if other < count else Edge(start, None, other - count, active)
 
     @cached_property
     def equalities(self) -> tuple[str, ...]:

@@ -34,12 +34,12 @@ def rank(rows: Sequence[Row]) -> int:
     return len(echelon(rows)[1])
 
 
-def reduced(row: Row, basis: Basis) -> Row:
-    """The row minus its part in the span of the basis: zero in every pivot column."""
+def reduced(row: Sequence[Fraction], basis: Basis, skip: int = 0) -> list[Fraction]:
+    """The row minus its part in the span of the basis, zero in every pivot column; the first ``skip`` entries stay."""
     rest = list(row)
     for lead, pivot in zip(*basis, strict=True):
-        rest = _minus(rest, lead, rest[pivot])
-    return tuple(rest)
+        rest[skip:] = _minus(rest[skip:], lead, rest[skip + pivot])
+    return rest
 
 
 def combination(rows: Sequence[Row], target: Row) -> tuple[Fraction, ...] | None:
