@@ -1,0 +1,86 @@
+"""The figure as a widget: one trait of plain dicts, drawn in the page by plotly.js; what happens there comes back.
+
+plotly.js is not part of the widget. The first view on a page asks for it, and this side answers with the file of the
+installed plotly package, gzipped; every later view on that page finds it there.
+"""
+
+from __future__ import annotations
+
+import gzip
+from collections.abc import Callable
+from functools import cache
+from importlib.resources import files
+from pathlib import Path
+from typing import Any
+
+import anywidget
+import traitlets
+
+HERE = Path(__file__).parent
+Handler = Callable[[dict[str, Any]], None]
+
+
+@cache
+def library() -> bytes:
+    """plotly.js of the installed plotly package, gzipped (about 1.5 MB)."""
+    return gzip.compress(files("plotly").joinpath("package_data", "plotly.min.js").read_bytes(), mtime=0)
+
+
+class FigureView(anywidget.AnyWidget):
+    """A plotly figure that keeps its camera and reports what the user does.
+
+    Parameters
+    ----------
+    figure : dict
+        ``{"data": [...], "layout": {...}}``, plain. Vertices that can be picked are the points of a trace named
+        "vertices" whose ``customdata`` holds their indices.
+    label : str
+        What a screen reader calls it.
+    handlers : dict of str to callable
+        Called with the message: "pick" (``vertex``), "key" (``key``), "camera" (``camera``), "theme" (``dark``).
+
+    Examples
+    --------
+    >>> from polywalk.explorer.view import FigureView
+    >>> heard = []
+    >>> view = FigureView(label="a region", handlers={"pick": heard.append})
+    >>> view.receive({"kind": "pick", "vertex": 2})
+    >>> heard
+    [{'kind': 'pick', 'vertex': 2}]
+    """
+
+    _esm = HERE / "view.js"
+    _css = HERE / "view.css"
+    figure = traitlets.Dict().tag(sync=True)
+    label = traitlets.Unicode("").tag(sync=True)
+
+    def __init__(self, handlers: dict[str, Handler] | None = None, **traits: Any) -> None:
+        super().__init__(**traits)
+        self.handlers = handlers or {}
+        self.libraries_sent = 0
+        self.on_msg(lambda _, content, __: self.receive(content))
+
+    def receive(self, message: dict[str, Any]) -> None:
+        """Act on a message of the page; unknown kinds are left alone."""
+        kind = message.get("kind")
+        if kind == "library":
+            self.libraries_sent += 1
+            self.send({"kind": "library"}, buffers=[library()])
+        elif kind in self.handlers:
+            self.handlers[kind](message)
+
+    def show(self, figure: dict[str, Any], revision: str, camera: dict[str, Any] | None = None) -> None:
+        """Draw another figure; the user's camera and zoom stay as long as the revision does.
+
+        ``camera`` is where a page that opens later starts.
+        """
+        layout = {key: value for key, value in figure["layout"].items() if key not in ("width", "height")}
+        bar = {**layout.get("modebar", {}), "remove": ["sendChartToCloud"]}
+        layout |= {"autosize": True, "uirevision": revision, "modebar": bar}
+        if camera and "scene" in layout:
+            layout["scene"] = {**layout["scene"], "camera": camera}
+        self.figure = {"data": figure["data"], "layout": layout}
+
+    def aim(self, camera: dict[str, Any]) -> None:
+        """Turn the scene on every page that shows it; ``camera`` as in plotly's ``layout.scene.camera``."""
+        self.send({"kind": "aim", "camera": camera})
