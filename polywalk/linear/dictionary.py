@@ -73,21 +73,22 @@ class Dictionary:
         """
         old, leaving, place = self.denominator, self.rows[row], column + 1
         pivot = leaving[place]
-        new = abs(pivot)
         if pivot == 0:
             raise ZeroDivisionError("the row does not depend on the column")
+        new = abs(pivot)
         turned = [-value for value in leaving] if pivot > 0 else list(leaving)
         turned[place] = old if pivot > 0 else -old
+        added = turned.copy()
+        added[place] -= new  # so that below the column's own entry becomes plus or minus the rate
 
         def substituted(line: Integers) -> Integers:
             rate = line[place]
-            if rate == 0 and new == old:
-                return line
-            entries = [(value * new + rate * other) // old for value, other in zip(line, turned, strict=True)]
-            entries[place] = rate if pivot > 0 else -rate
-            return tuple(entries)
+            if rate == 0:
+                return line if new == old else tuple([value * new // old for value in line])
+            return tuple([(value * new + rate * other) // old for value, other in zip(line, added, strict=True)])
 
-        rows = [tuple(turned) if i == row else substituted(line) for i, line in enumerate(self.rows)]
+        rows = [substituted(line) for line in self.rows]
+        rows[row] = tuple(turned)
         basic, nonbasic = list(self.basic), list(self.nonbasic)
         basic[row], nonbasic[column] = nonbasic[column], basic[row]
         return Dictionary(
@@ -164,17 +165,18 @@ class Dictionary:
 
         Where the auxiliary is among them it is the only one returned: it leaves on ties, and Phase I is over.
         """
-        place, tied = column + 1, list[int]()
+        blocks, place, tied = self.slacks.blocks, column + 1, list[int]()
         value, fall = 0, 0
-        for i, line in self.blocking_rows():
-            if line[place] < 0:
-                order = line[0] * fall + value * line[place]  # the sign of this ratio minus the smallest so far
-                if not tied or order < 0:
-                    tied, value, fall = [i], line[0], -line[place]
+        for i, line in enumerate(self.rows):
+            rate = line[place]
+            if rate < 0 and blocks[self.basic[i]]:
+                order = line[0] * fall + value * rate  # the sign of this ratio minus the smallest so far
+                if order < 0 or not tied:
+                    tied, value, fall = [i], line[0], -rate
                 elif order == 0:
                     tied.append(i)
-        ends = [i for i in tied if self.basic[i] == self.slacks.auxiliary]
-        return ends or tied
+        auxiliary = self.slacks.auxiliary
+        return [i for i in tied if self.basic[i] == auxiliary] or tied
 
     # what a reader asks, exact
 

@@ -118,7 +118,7 @@ class Slacks:
 
     def in_slacks(self, constant: Fraction, coefficients: tuple[Fraction, ...]) -> tuple[Fraction, ...]:
         """A linear function of the decisions as one of their own slacks, constant first."""
-        moved = tuple(value * side for value, side in zip(coefficients, self.sides, strict=True))
+        moved = tuple(value if side > 0 else -value for value, side in zip(coefficients, self.sides, strict=True))
         return (constant + dot(coefficients, self.rests), *moved)
 
 

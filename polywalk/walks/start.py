@@ -8,16 +8,17 @@ from typing import cast
 
 from polywalk.errors import WalkError, unknown
 from polywalk.exact import Row, full
-from polywalk.linear import Crash, Dictionary, crash, dictionary_of, optimum
+from polywalk.linear import Crash, Dictionary, crash, optimum
 from polywalk.model import Constraint, Model
 
 
-def first_dictionary(model: Model, start: object, rank: Sequence[int]) -> Crash:
+def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int]) -> Crash:
     """The dictionary a walk starts from, with the pivots that led there.
 
     Parameters
     ----------
-    model : Model
+    opened : Dictionary
+        The model's first one, before the crash phase.
     start : None, int, vertex, point or sequence of str
         See ``walk``.
     rank : sequence of int
@@ -28,7 +29,7 @@ def first_dictionary(model: Model, start: object, rank: Sequence[int]) -> Crash:
     WalkError
         A region with a line, a start that is no vertex or no feasible basis.
     """
-    first = crash(dictionary_of(model))
+    model, first = opened.slacks.model, crash(opened)
     if first.lines and optimum(model).outcome != "infeasible":
         column = first.lines[0]
         name = first.dictionary.slacks.names[first.dictionary.nonbasic[column]]

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from typing import NamedTuple
 
 from polywalk.errors import WalkError
-from polywalk.linear import Dictionary, slacks_of
+from polywalk.linear import Dictionary, dictionary_of
 from polywalk.linear.solve import step
 from polywalk.model import Model
 from polywalk.walks.order import ranks
@@ -71,10 +71,11 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     1      2      x         labour   2     step  6          (2, 0)
     2      2      y         y upper  3     step  7.5        (0.5, 3)
     """
-    rules = _Rules(entering_rule(rule).choose, leaving_rule(leaving).choose, ranks(slacks_of(model), order))
+    opened = dictionary_of(model)
+    rules = _Rules(entering_rule(rule).choose, leaving_rule(leaving).choose, ranks(opened.slacks, order))
     if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
         raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
-    begun = first_dictionary(model, start, rules.rank)
+    begun = first_dictionary(opened, start, rules.rank)
     first = begun.dictionary
     pivots, end, cycle = ([], "infeasible", ()) if begun.contradiction is not None else _follow(first, rules, limit)
     indices = sorted(range(first.slacks.auxiliary), key=rules.rank.__getitem__)
