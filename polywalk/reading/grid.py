@@ -5,7 +5,7 @@ pandas is recognised by what it offers (``iloc``), scipy sparse by ``tocsr``: ne
 
 from __future__ import annotations
 
-from collections.abc import Hashable, Sequence
+from collections.abc import Hashable
 from dataclasses import dataclass
 from typing import Any
 
@@ -97,11 +97,13 @@ def _array(data: Any, where: str) -> np.ndarray[Any, Any]:
         array = np.asarray(data, dtype=None if hasattr(data, "dtype") else object)
     except ValueError:
         raise ModelError(f"{where}: expected rows of equal length, got {_brief(data)}.", where) from None
-    if array.dtype == object and any(
-        isinstance(value, Sequence) and not isinstance(value, str) for value in array.flat
-    ):
+    if array.dtype == object and any(_is_nested(value) for value in array.flat):
         raise ModelError(f"{where}: expected rows of equal length, got {_brief(data)}.", where)
     return array
+
+
+def _is_nested(value: Any) -> bool:
+    return hasattr(value, "__len__") and not isinstance(value, str) and getattr(value, "ndim", 1) > 0
 
 
 def _brief(data: Any) -> str:
