@@ -235,7 +235,8 @@ class Model(Shown):
     @cached_property
     def free(self) -> tuple[str, ...]:
         """Variables that no single constraint bounds."""
-        bounded = {row.bounds()[0] for row in self.constraints if row.bounds()}  # type: ignore[index]
+        alone = [[j for j, value in enumerate(row.coefficients) if value] for row in self.constraints]
+        bounded = {places[0] for places in alone if len(places) == 1}
         return tuple(name for j, name in enumerate(self.variables) if j not in bounded)
 
     def point(self, values: Mapping[str, object] | Iterable[object]) -> Row:

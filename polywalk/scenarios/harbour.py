@@ -42,8 +42,8 @@ def harbour_row(variant: str = "base") -> Model:
         "tied"
             The pump's price of 27 was copied into the chips' place: every plan from (4, 4, 4) to (0, 8, 4) is best.
         "degenerate"
-            Today's chip delivery ends the boiler at 4 MW, exactly where the best plan stood: four constraints meet
-            there, so its shadow prices are not unique.
+            Boiler and tank got a circulation pump of 8 MW, which just reaches the best plan: four constraints meet
+            at (4, 4, 4), so its shadow prices are not unique.
         "two decisions"
             The tank is set to 2 MW, which leaves pump and chips: a flat picture.
 
@@ -113,7 +113,7 @@ def _tied(model: Model) -> Model:
 
 
 def _degenerate(model: Model) -> Model:
-    return model.with_constraint("chip delivery", {"chips": 1}, "<=", 4)
+    return model.with_constraint("circulation pump", {"chips": 1, "tank": 1}, "<=", 8)
 
 
 def _two_decisions(_: Model) -> Model:

@@ -113,7 +113,7 @@ def test_bounds_objects_and_equal_bounds():
     model = pw.from_arrays([1, 1, 1], bounds=Bounds([0, -np.inf, 2], [1, np.inf, 2]))
     assert [row.name for row in model.constraints] == ["x1 lower", "x1 upper", "x3 fixed"]
     assert model.constraint("x3 fixed").sense == "=="
-    assert model.free == ("x2", "x3")  # an equality is no bound of its own, see Constraint.bounds
+    assert model.free == ("x2",)
     spread = pw.from_arrays([1, 1, 1], bounds=Bounds(0, 2))
     assert len(spread.constraints) == 6
     with pytest.raises(ModelError, match="expected 3 entries of lb, one a variable, got 2"):
