@@ -10,7 +10,7 @@ from polywalk.drawing import goal, paths, plane
 from polywalk.drawing.camera import USUAL, best_eye
 from polywalk.drawing.key import key
 from polywalk.drawing.placing import Sheet
-from polywalk.drawing.scene import Axis, Label, Layer, Line, Point, Polygon, Scene
+from polywalk.drawing.scene import Axis, KeyPart, Label, Layer, Line, Point, Polygon, Scene
 from polywalk.drawing.shape import Shape, Side, shape
 from polywalk.drawing.subject import Subject, coordinates, floats, planar, subject
 from polywalk.drawing.view import View
@@ -93,7 +93,7 @@ def _flat(looked: Subject, frame: Window, drawn: Shape) -> Scene:
     aim = goal.layer(looked, frame, sheet)
     borders, absent = plane.constraints(looked, sheet)
     layers = (body, borders, aim, _optimal_face(looked), walks, points)
-    return _assembled(looked, frame, layers, key(looked, {}, absent, None), _status(looked))
+    return _assembled(looked, frame, layers, rows=key(looked, {}, absent, None), status=_status(looked))
 
 
 def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
@@ -107,7 +107,7 @@ def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
         plane.vertices(looked, None),
         tagged,
     )
-    return _assembled(looked, frame, layers, key(looked, tags, (), None), _status(looked), drawn)
+    return _assembled(looked, frame, layers, rows=key(looked, tags, (), None), status=_status(looked), drawn=drawn)
 
 
 def _faces(looked: Subject, drawn: Shape) -> Layer:
@@ -130,7 +130,9 @@ def _tags(looked: Subject, drawn: Shape) -> tuple[dict[str, str], Layer]:
     for side in sorted(drawn.sides, key=lambda side: order.index(side.constraints[0])):
         letter = next(letters)
         tags.update(dict.fromkeys(side.constraints, letter))
-        labels.append(Label(letter, side.centre, "tag", order.index(side.constraints[0])))
+        words = [looked.seen.model.constraint(name) for name in side.constraints]
+        hover = "\n".join(f"{row.name}: {row.text(looked.axes)}" for row in words)
+        labels.append(Label(letter, side.centre, "tag", order.index(side.constraints[0]), hover=hover))
     return tags, Layer(labels=tuple(labels))
 
 
@@ -152,14 +154,14 @@ def _empty(looked: Subject) -> Scene:
     words = conflicts.sentence(found)
     if looked.projected:
         nothing = Window((0.0,) * max(len(looked.axes), 2), (1.0,) * max(len(looked.axes), 2))
-        return _assembled(looked, nothing, (), key(looked, {}, (), found), words)
+        return _assembled(looked, nothing, (), rows=key(looked, {}, (), found), status=words)
     frame = conflicts.window(model, found)
     rest = shape(found.rest, frame) if found.rest is not None else None
     if len(frame.low) == 3:
         tags, tagged = _tags(looked, rest) if rest else ({}, Layer())
         body = plane.region(rest, "rest") if rest else Layer()
         layers = (body, conflicts.borders(model, found, frame), tagged)
-        return _assembled(looked, frame, layers, key(looked, tags, (), found), words, rest)
+        return _assembled(looked, frame, layers, rows=key(looked, tags, (), found), status=words, drawn=rest)
     frame = square(frame) if len(frame.low) == 2 else _lifted_window(frame)
     if found.rest is not None:
         rest = (
@@ -171,7 +173,7 @@ def _empty(looked: Subject) -> Scene:
     body = plane.region(rest, "rest") if rest else Layer()
     conflicts.keep_names_clear(body, sheet)
     lines, absent = plane.constraints(looked, sheet, found.names)
-    return _assembled(looked, frame, (body, lines), key(looked, {}, absent, found), words)
+    return _assembled(looked, frame, (body, lines), rows=key(looked, {}, absent, found), status=words)
 
 
 def _status(looked: Subject) -> str:
@@ -194,7 +196,8 @@ def _assembled(
     looked: Subject,
     frame: Window,
     layers: tuple[Layer, ...],
-    rows: tuple[object, ...],
+    *,
+    rows: tuple[KeyPart, ...],
     status: str,
     drawn: Shape | None = None,
 ) -> Scene:
@@ -215,6 +218,6 @@ def _assembled(
         lines=tuple(item for layer in layers for item in layer.lines),
         marks=tuple(item for layer in layers for item in layer.marks),
         labels=tuple(item for layer in layers for item in layer.labels),
-        key=rows,  # type: ignore[arg-type]
+        key=rows,
         camera=looked.view.camera or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
     )

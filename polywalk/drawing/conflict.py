@@ -31,17 +31,15 @@ class Conflict:
 
 
 def conflict(model: Model) -> Conflict:
-    """The conflict of an empty model; a row is lifted before a bound."""
+    """The conflict of an empty model; a row is lifted before a bound, and what stays bounded first."""
     proof = farkas(model)
     if proof is None:
         return Conflict((), None, None)
     names = tuple(row.name for row in model.constraints if proof.multipliers.get(row.name))
     rows = sorted((model.constraint(name) for name in names), key=lambda row: row.bounds() is not None)
-    for row in rows:
-        rest = region(model.without(row.name))
-        if rest.status != "empty":
-            return Conflict(names, row, rest)
-    return Conflict(names, None, None)
+    rests = [(row, region(model.without(row.name))) for row in rows]
+    left = sorted((pair for pair in rests if pair[1].status != "empty"), key=lambda pair: pair[1].status != "bounded")
+    return Conflict(names, *left[0]) if left else Conflict(names, None, None)
 
 
 def window(model: Model, found: Conflict) -> Window:

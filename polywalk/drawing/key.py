@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from fractions import Fraction
+
 from polywalk.drawing.conflict import Conflict
 from polywalk.drawing.goal import TREND
 from polywalk.drawing.scene import KeyPart, KeyRow
-from polywalk.drawing.subject import Subject, coordinates
+from polywalk.drawing.subject import Subject, coordinates, floats
 from polywalk.exact import short
 from polywalk.model import GOAL
 from polywalk.walks import Walk
@@ -13,12 +15,15 @@ from polywalk.walks import Walk
 MOST_VERTICES = 16
 """Past this many vertices the key lists only optimal and degenerate ones, and says so."""
 
+MOST_STOPS = 24
+"""Past this many stops the key shortens a path."""
+
 
 def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None) -> tuple[KeyPart, ...]:
     """All parts of the key that have rows."""
     parts = (
         KeyPart("What the marks say", _marks(subject, found)),
-        KeyPart("Walks", tuple(_walk(index, walk) for index, walk in enumerate(subject.view.walks))),
+        KeyPart("Walks", tuple(_walk(subject, index, walk) for index, walk in enumerate(subject.view.walks))),
         KeyPart("Vertices, with the constraints active there", _vertices(subject)),
         KeyPart("Constraints", _constraints(subject, tags, absent, found)),
     )
@@ -38,17 +43,29 @@ def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
         rows.append(KeyRow("objective", f"direction in which the objective {verb} (goal: {GOAL[goal.goal]})"))
         if subject.region.value is not None:
             rows.append(KeyRow("level line", f"where the objective is {short(subject.region.value)}"))
+    names = coordinates(subject.axes)
     for ray in seen.rays:
-        rows.append(KeyRow("open edge", f"no limit along {coordinates(ray.direction)}"))
+        better = goal is not None and ray.change is not None and goal.better(ray.change, Fraction(0))
+        gain = ", and the objective improves without end" if better else ""
+        rows.append(KeyRow("open edge", f"no limit along {names} = {coordinates(ray.direction)}{gain}"))
     for line in seen.lines:
-        rows.append(KeyRow("open edge", f"no limit along ±{coordinates(line)}"))
-    for k, vertex in enumerate(seen.vertices):
-        if vertex.degenerate:
-            most = f"V{k + 1} is degenerate: {len(vertex.active)} constraints meet, {seen.model.n} would do"
-            rows.append(KeyRow("degenerate", most))
+        rows.append(KeyRow("open edge", f"no limit along {names} = {coordinates(line)}, nor against it"))
+    rows += _degenerate(subject)
     if not subject.axes[2:]:
         rows.append(KeyRow("hatch", "strokes: the side a constraint forbids"))
     return tuple(rows)
+
+
+def _degenerate(subject: Subject) -> list[KeyRow]:
+    """One row for all degenerate vertices that lie on equally many constraints."""
+    found: dict[int, list[str]] = {}
+    for k, vertex in enumerate(subject.seen.vertices):
+        if vertex.degenerate:
+            found.setdefault(len(vertex.active), []).append(f"V{k + 1}")
+    return [
+        KeyRow("degenerate", f"degenerate: at {', '.join(names)} {most} constraints meet, {len(subject.axes)} would do")
+        for most, names in found.items()
+    ]
 
 
 def _optimum(subject: Subject) -> str:
@@ -62,8 +79,13 @@ def _optimum(subject: Subject) -> str:
     return f"optimum: {value} at {places[0]}"
 
 
-def _walk(index: int, walk: Walk) -> KeyRow:
-    return KeyRow("walk", walk_text(walk), index)
+def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
+    """What a walk did, and the vertices it passed."""
+    names = {floats(vertex.point): f"V{k + 1}" for k, vertex in enumerate(subject.seen.vertices)}
+    stops = [names.get(subject.along(point), "outside") for point in walk.points]
+    path = [stop for stop, before in zip(stops, ["", *stops[:-1]], strict=True) if stop != before]
+    shown = path if len(path) <= MOST_STOPS else [*path[: MOST_STOPS - 2], "...", path[-1]]
+    return KeyRow("walk", f"{walk_text(walk)}: {' → '.join(shown)}", index)
 
 
 def walk_text(walk: Walk) -> str:

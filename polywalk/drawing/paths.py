@@ -6,7 +6,7 @@ the middle of the region, so that none hides another.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from math import hypot
 
 from polywalk.drawing.placing import Sheet, about
@@ -123,26 +123,33 @@ def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
     return labels
 
 
-def stays(legs: list[Leg]) -> dict[Point, list[int]]:
-    """The numbers of the pivots that move nothing, by the point where they stay."""
-    found: dict[Point, list[int]] = {}
+def stays(legs: list[Leg]) -> dict[Point, dict[str, list[int]]]:
+    """The numbers of the pivots that move nothing on the paper, by the point where that is and by the reason."""
+    found: dict[Point, dict[str, list[int]]] = {}
     for leg in legs:
         if not leg.moves:
-            found.setdefault(leg.start, []).append(leg.pivot.number)
+            found.setdefault(leg.start, {}).setdefault(_reason(leg.pivot), []).append(leg.pivot.number)
     return found
+
+
+def _reason(pivot: Pivot) -> str:
+    if pivot.kind == "degenerate":
+        return "no move"
+    if pivot.point_before == pivot.point_after and pivot.kind == "step":
+        return "only the Phase I auxiliary"
+    return "unseen on these axes"
 
 
 def _stays(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
     labels = []
     for point, numbers in stays(legs).items():
-        text = f"{_spans(numbers)} stay{'s' if len(numbers) == 1 else ''} here"
-        if frame.count > 1:
-            text = f"{frame.subject.view.walks[index].rule}: {text}"
+        rule = f"{frame.subject.view.walks[index].rule} " if frame.count > 1 else ""
+        text = rule + "; ".join(f"{_spans(found)}: {words}" for words, found in numbers.items())
         if frame.sheet is None:
-            labels.append(Label(text, point, "stay", index, shift=(0, -18 - 15 * index)))
+            labels.append(Label(text, point, "stay", index, target=point))
         else:
-            at = frame.sheet.pixel(point)
-            labels.append(frame.sheet.place(text, about(at, 36.0, frame.sheet.pixel(frame.middle)), "stay", index))
+            places = about(frame.sheet.pixel(point), 44.0, frame.sheet.pixel(frame.middle))
+            labels.append(replace(frame.sheet.place(text, places, "stay", index), target=point))
     return labels
 
 

@@ -149,7 +149,9 @@ def _labels(scene: Scene, on: Paper, front: tuple[Polygon, ...], lines: list[Lin
             placed.append(replace(item, point=spot, role="back tag" if back else item.role))
             sheet.keep_clear(spot, 8.0)
         else:
-            placed.append(sheet.place(item.text, about(spot, 20.0 + 2.6 * len(item.text)), item.role, item.index))
+            reach = 46.0 if item.target else 20.0 + 2.6 * len(item.text)
+            found = sheet.place(item.text, about(spot, reach), item.role, item.index)
+            placed.append(replace(found, target=spot if item.target else None))
     middle = (PAPER[0] / 2, PAPER[1] / 2)
     vertices = [mark for mark in scene.marks if mark.key is not None]
     placed += [sheet.place(mark.text, about(on.at(mark.point), 16.0, middle), "point") for mark in vertices]
@@ -195,7 +197,7 @@ def _frame(scene: Scene, on: Paper) -> tuple[list[Line], list[Label]]:
                 other = tuple(low[j] + high[j] - x if j == 1 - k else x for j, x in enumerate(point))
                 lines.append(Line(((foot, on.at(other)),), "grid"))
         half = tuple((a + b) / 2 for a, b in zip(on.at(start), on.at(end), strict=True))
-        away = 30.0 + (3.4 * len(axis.title) if k < 2 else 20.0) * abs(out[0])
+        away = 28.0 + 3.5 * len(axis.title) * abs(out[0])
         labels.append(Label(axis.title, (half[0] + away * out[0], half[1] + 34 * out[1]), "name"))
     return lines, labels
 

@@ -49,7 +49,10 @@ class Mark:
 
 @dataclass(frozen=True)
 class Label:
-    """Text centred on a point, moved by ``shift`` pixels (right, up), turned by ``angle`` degrees."""
+    """Text centred on a point, moved by ``shift`` pixels (right, up), turned by ``angle`` degrees.
+
+    A label with a ``target`` is joined to that point by a thin line.
+    """
 
     text: str
     point: Point
@@ -57,6 +60,8 @@ class Label:
     index: int = 0
     shift: tuple[float, float] = (0.0, 0.0)
     angle: float = 0.0
+    target: Point | None = None
+    hover: str = ""
 
 
 @dataclass(frozen=True)

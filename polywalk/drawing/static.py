@@ -152,7 +152,7 @@ def _polygon(axes: Any, item: Polygon, theme: Theme) -> None:
     axes.fill(
         [point[0] for point in item.points],
         [point[1] for point in item.points],
-        facecolor=mixed(style.fill, theme.quiet, 0.32 * item.shade),
+        facecolor=mixed(style.fill, theme.quiet, 0.24 * item.shade),
         alpha=style.opacity,
         edgecolor=style.colour if style.width else "none",
         linewidth=_points(style.width),
@@ -200,6 +200,9 @@ def _mark(axes: Any, item: Mark, theme: Theme) -> None:
 
 def _label(axes: Any, item: Label, theme: Theme) -> None:
     style = theme.style(item.role, item.index)
+    if item.target:
+        x, y = zip(item.point, item.target, strict=True)
+        axes.plot(x, y, color=style.colour, linewidth=_points(0.9), zorder=DEPTH["note"])
     size = {"step": 10.0}.get(item.role, style.size)
     frame = None
     if item.role in {"step", "tag", "back tag", "stay"}:

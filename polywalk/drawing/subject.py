@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 
 from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
-from polywalk.exact import short
+from polywalk.exact import full, rounded, short
 from polywalk.model import Model
 from polywalk.region import Region, Vertex, project, region
 
@@ -106,9 +107,9 @@ def meeting(vertex: Vertex, n: int) -> str:
     return f"degenerate: {len(vertex.active)} constraints meet where {n} would do"
 
 
-def coordinates(point: tuple[Fraction, ...]) -> str:
-    """The point as people write it."""
-    return f"({', '.join(short(value) for value in point)})"
+def coordinates(point: Iterable[Fraction | str]) -> str:
+    """A point, or the names of its coordinates, as people write it."""
+    return f"({', '.join(value if isinstance(value, str) else short(value) for value in point)})"
 
 
 def _amount(model: Model, name: str, value: Fraction) -> str:
@@ -117,7 +118,5 @@ def _amount(model: Model, name: str, value: Fraction) -> str:
 
 def _both(value: Fraction) -> str:
     """Exact, with the rounded decimal beside a fraction."""
-    from polywalk.exact import full, rounded
-
     text = full(value)
     return f"{text} ≈ {rounded(value)}" if "/" in text else text

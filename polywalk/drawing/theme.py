@@ -22,6 +22,7 @@ WALKS = {
     "dark": ("#FFFFFF", "#FFB27A", "#8FD0F5", "#F1B7DA"),
     "grey": ("#000000", "#000000", "#333333", "#333333"),
 }
+FONT = "DejaVu Sans, Verdana, sans-serif"
 DASHES = ("solid", "dash", "dot", "dashdot")
 
 
