@@ -39,7 +39,7 @@ class Crash:
     contradiction : int or None
         The row of the equality that contradicts the others: it equals a constant other than 0.
     lines : tuple of int
-        The columns of free decisions that no constraint holds.
+        The free decisions that no constraint holds, by index; each stays nonbasic.
     """
 
     dictionary: Dictionary
@@ -106,7 +106,7 @@ def _settle_free(done: Crash, index: int) -> Crash:
     column = now.nonbasic.index(index)
     able = [i for i, line in now.blocking_rows() if line[column + 1]]
     if not able:
-        return replace(done, lines=(*done.lines, column))
+        return replace(done, lines=(*done.lines, index))
     return done.pivoted(min(able, key=lambda i: (_distance(now, i, column), now.basic[i])), column)
 
 

@@ -10,7 +10,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
-from polywalk.linear.crash import Crash, crash
+from polywalk.linear.crash import crash
 from polywalk.linear.dictionary import Dictionary, dictionary_of
 from polywalk.model import Model
 
@@ -45,7 +45,7 @@ def solve(model: Model) -> Solved:
         dictionary = _phase_one(dictionary)
         if dictionary.phase == 1:
             return Solved("infeasible", dictionary, dictionary.basic.index(dictionary.slacks.auxiliary))
-    slope = _sloping_line(start)
+    slope = _sloping_line(dictionary, start.lines)
     if slope is not None:
         return Solved("unbounded", dictionary, slope)
     dictionary, column = bland(dictionary)
@@ -86,6 +86,7 @@ def _phase_one(dictionary: Dictionary) -> Dictionary:
     return bland(relaxed.pivot(row, len(relaxed.nonbasic) - 1))[0]
 
 
-def _sloping_line(start: Crash) -> int | None:
+def _sloping_line(dictionary: Dictionary, lines: tuple[int, ...]) -> int | None:
     """The column of a line along which the objective changes."""
-    return next((column for column in start.lines if start.dictionary.cost[column + 1]), None)
+    columns = (dictionary.nonbasic.index(index) for index in lines)
+    return next((column for column in columns if dictionary.cost[column + 1]), None)

@@ -31,8 +31,7 @@ def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int]) -> 
     """
     model, first = opened.slacks.model, crash(opened)
     if first.lines and optimum(model).outcome != "infeasible":
-        column = first.lines[0]
-        name = first.dictionary.slacks.names[first.dictionary.nonbasic[column]]
+        name = model.variables[first.lines[0]]
         raise WalkError(
             f"no constraint stops {name!r}: the region contains a line, so it has no vertex to walk from; "
             f"give {name!r} a bound, or ask for the optimum instead.",
