@@ -40,7 +40,7 @@ def comparison(text: str, where: str) -> tuple[list[Linear], list[str]]:
     spelling = Spelling(text, where)
     tree = _parse(spelling)
     if isinstance(tree, ast.Tuple):
-        raise spelling.error(_refusal(tree), tree.elts[-1], before=True)
+        raise spelling.error(_refusal(tree), tree.elts[-1] if tree.elts else tree, before=bool(tree.elts))
     if not isinstance(tree, ast.Compare):
         raise spelling.error("expected a comparison with <=, >= or ==, got an expression alone", None)
     senses = []
