@@ -7,7 +7,7 @@ from typing import Any
 
 import nbformat
 
-SECONDS = 120_000
+PATIENCE = 60_000
 
 READY = """async () => {
   for (let k = 0; !window.jupyterapp?.shell?.currentWidget?.sessionContext; k++)
@@ -16,6 +16,11 @@ READY = """async () => {
   await panel.context.ready;
   await panel.sessionContext.ready;
   await panel.sessionContext.session.kernel.info;
+}"""
+
+LIGHT = """async () => {
+  await window.jupyterapp.commands.execute('apputils:change-theme', { theme: 'JupyterLab Light' });
+  if (window.innerWidth < 600) window.jupyterapp.shell.collapseLeft();
 }"""
 
 RUN = "() => window.jupyterapp.commands.execute('notebook:run-all-cells')"
@@ -75,8 +80,8 @@ class Lab:
     def __init__(self, page: Any, address: str, root: Path, shots: Path, name: str) -> None:
         self.page, self.address, self.root, self.shots, self.name = page, address, root, shots, name
         self.errors: list[str] = []
-        page.set_default_timeout(SECONDS)
-        page.on("pageerror", lambda error: self.errors.append(str(error)))
+        page.set_default_timeout(PATIENCE)
+        page.on("pageerror", lambda error: self.errors.append(f"{error}\n{error.stack}"))
 
     def open(self, *cells: str) -> None:
         """Write a notebook with these cells, open it and run it."""
@@ -85,6 +90,7 @@ class Lab:
         nbformat.write(book, self.root / f"{self.name}.ipynb")
         self.page.goto(f"{self.address}/lab/tree/{self.name}.ipynb?reset")
         self.page.evaluate(READY)
+        self.page.evaluate(LIGHT)
         self.page.evaluate(RUN)
 
     def drawn(self, which: int = 0) -> None:

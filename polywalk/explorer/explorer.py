@@ -57,10 +57,9 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
 
     def _arranged(self) -> list[widgets.Widget]:
         help_line = widgets.HTML(f"<p>{escape(HELP)}</p>")
-        left = widgets.VBox([self.picture, help_line, self.vertices.box], layout=_column(5, "min(100%, 460px)"))
-        right = widgets.VBox([self.walk.box], layout=_column(4, "min(100%, 340px)"))
-        columns = widgets.Box([left, right], layout=widgets.Layout(display="flex", flex_flow="row wrap", width="100%"))
-        return [self.verdict, self.message, columns]
+        seen = _side_by_side([self.picture, help_line], [self.walk.box])
+        chosen = _side_by_side([self.vertices.list], [self.vertices.card])
+        return [self.verdict, self.message, seen, chosen]
 
     def show(self) -> None:
         """Draw the state: the verdict and the picture."""
@@ -145,5 +144,10 @@ def explore(model: Model, **state: Any) -> Explorer:
     return Explorer(model, **state)
 
 
-def _column(grow: int, basis: str) -> widgets.Layout:
-    return widgets.Layout(flex=f"{grow} 1 {basis}", min_width="0", padding="0 6px", overflow="visible")
+def _side_by_side(left: list[widgets.Widget], right: list[widgets.Widget]) -> widgets.Box:
+    """Two columns, one below the other where the page is narrow."""
+    columns = [
+        widgets.VBox(items, layout=widgets.Layout(flex=f"{grow} 1 {basis}", min_width="0", padding="0 6px"))
+        for items, grow, basis in ((left, 5, "min(100%, 460px)"), (right, 4, "min(100%, 340px)"))
+    ]
+    return widgets.Box(columns, layout=widgets.Layout(display="flex", flex_flow="row wrap", width="100%"))

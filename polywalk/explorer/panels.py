@@ -16,7 +16,7 @@ from polywalk.explorer.rows import Rows
 from polywalk.explorer.state import RULES, State
 
 NONE = "none"
-WIDE = widgets.Layout(width="auto", max_width="100%")
+USUAL = "origin, else Phase I"
 
 
 class Message(widgets.HTML):  # type: ignore[misc]
@@ -62,7 +62,7 @@ class VertexPanel:
         self.state = state
         self.rows = Rows(label="vertices", on_select=message.guard(self._picked))
         self.card = widgets.HTML()
-        self.box = widgets.VBox([widgets.HTML("<h3>Vertices</h3>"), self.rows, self.card])
+        self.list = widgets.VBox([widgets.HTML("<h3>Vertices</h3>"), self.rows])
         state.observe(message.watch(lambda _: self.show()), ["region", "vertex"])
         self.show()
 
@@ -82,11 +82,11 @@ class WalkPanel:
         self.state = state
         self.message = message
         self._showing = False
-        names = {"style": {"description_width": "110px"}, "layout": WIDE}
+        names = {"style": {"description_width": "auto"}, "layout": widgets.Layout(width="auto", flex="1 1 150px")}
         self.rule = widgets.Dropdown(options=list(RULES), value=state.rules[0], description="Rule", **names)
         second = state.rules[1] if len(state.rules) > 1 else NONE
         self.other = widgets.Dropdown(options=[NONE, *RULES], value=second, description="Second rule", **names)
-        self.start = widgets.Dropdown(options=[("origin, else Phase I", None)], description="Start", **names)
+        self.start = widgets.Dropdown(options=[USUAL], description="Start", **names)
         self.back = self._button("Step back", -1)
         self.on = self._button("Step on", +1)
         self.whole = self._button("Whole walk", 0)
@@ -94,7 +94,8 @@ class WalkPanel:
         self.rows = Rows(label="pivots", on_select=message.guard(self._picked))
         buttons = widgets.HBox([self.back, self.on, self.whole], layout=widgets.Layout(flex_flow="row wrap"))
         head = widgets.HTML("<h3>Walk</h3>")
-        self.box = widgets.VBox([head, self.rule, self.other, self.start, self.summary, buttons, self.rows, self.story])
+        chosen = widgets.HBox([self.rule, self.other, self.start], layout=widgets.Layout(flex_flow="row wrap"))
+        self.box = widgets.VBox([head, chosen, self.summary, buttons, self.rows, self.story])
         self.show_starts()
         for chooser in (self.rule, self.other):
             chooser.observe(message.guard(lambda _: self._ruled()), "value")
@@ -125,13 +126,15 @@ class WalkPanel:
 
     def _started(self, start: Any) -> None:
         if not self._showing:
-            self.state.start = start
+            self.state.start = None if start is USUAL else start
 
     def show_starts(self) -> None:
         """Offer the region's vertices as starts."""
-        start = self.state.start
-        offered: list[tuple[str, Any]] = [("origin, else Phase I", None)]
-        offered += [(f"vertex {k}", vertex.point) for k, vertex in enumerate(self.state.region.vertices)]
+        start = USUAL if self.state.start is None else self.state.start
+        offered: list[tuple[str, Any]] = [(USUAL, USUAL)]
+        offered += [
+            (f"vertex {texts.vertex_name(k)}", vertex.point) for k, vertex in enumerate(self.state.region.vertices)
+        ]
         if start not in [value for _, value in offered]:
             offered.append(("as given", start))
         with self._quietly():

@@ -83,7 +83,7 @@ class State(HasTraits):
         index: int | None = proposal["value"]
         count = len(self.region.vertices)
         if index is not None and not 0 <= index < count:
-            raise UnknownName(f"expected a vertex from 0 to {count - 1}, got {index}.", index)
+            raise UnknownName(f"expected the index of a vertex, 0 to {count - 1}, got {index}.", index)
         return index
 
     @validate("rules")

@@ -25,6 +25,11 @@ def number(value: Fraction, unit: str = "") -> str:
     return f"{shown} {escape(unit)}".rstrip()
 
 
+def vertex_name(index: int) -> str:
+    """What the picture calls the vertex."""
+    return f"V{index + 1}"
+
+
 def count(number_of: int, word: str, plural: str = "") -> str:
     """ "1 ray", "2 rays"."""
     return f"{number_of} {word if number_of == 1 else plural or word + 's'}"
@@ -60,7 +65,7 @@ def vertices(region: Region) -> Table:
     for index, vertex in enumerate(region.vertices):
         marks = ["optimal"] * (index in best) + ["degenerate"] * vertex.degenerate
         value = () if vertex.objective is None else (vertex.objective,)
-        rows.append((index, *vertex.point, *value, ", ".join(marks)))
+        rows.append((vertex_name(index), *vertex.point, *value, ", ".join(marks)))
     objective = () if region.model.objective is None else ("objective",)
     return Table("vertices", ("vertex", *region.model.variables, *objective, "marks"), tuple(rows))
 
@@ -70,10 +75,10 @@ def card(region: Region, index: int | None) -> str:
     if not region.vertices:
         return "<p>The region has no vertex.</p>"
     if index is None:
-        return "<p>Click a vertex in the picture or pick a row above.</p>"
+        return "<h3>Selected vertex</h3><p>None yet: click one in the picture or pick a row of the list.</p>"
     vertex, model = region.vertices[index], region.model
     values = [f"{escape(name)} = {number(value, model.unit(name))}" for name, value in _pairs(model, vertex)]
-    parts = [f"<h3>Vertex {index}</h3><p>{', '.join(values)}</p>"]
+    parts = [f"<h3>Vertex {vertex_name(index)}</h3><p>{', '.join(values)}</p>"]
     if vertex.objective is not None:
         best = region.optimal is not None and index in region.optimal.vertices
         parts.append(f"<p>objective {number(vertex.objective)}{', the optimum' if best else ''}</p>")

@@ -162,7 +162,7 @@ function render({ model, el }) {
   const fit = new ResizeObserver(([entry]) => {
     const width = entry.contentRect.width;
     if (!width) return;
-    plot.style.height = `${Math.round(Math.min(600, Math.max(340, 0.78 * width)))}px`;
+    plot.style.height = `${Math.round(Math.min(640, Math.max(420, 0.84 * width)))}px`;
     requestAnimationFrame(() => {
       if (Plotly && plot._fullLayout && !ended.signal.aborted && plot.offsetParent) Plotly.Plots.resize(plot);
     });

@@ -17,6 +17,9 @@ import anywidget
 import traitlets
 
 HERE = Path(__file__).parent
+BELOW = {"orientation": "h", "x": 0, "xanchor": "left", "yref": "container", "y": 0, "yanchor": "bottom"}
+"""The legend below the figure: the page's width belongs to the region."""
+
 Handler = Callable[[dict[str, Any]], None]
 
 
@@ -74,9 +77,12 @@ class FigureView(anywidget.AnyWidget):
 
         ``camera`` is where a page that opens later starts.
         """
-        layout = {key: value for key, value in figure["layout"].items() if key not in ("width", "height")}
-        bar = {**layout.get("modebar", {}), "remove": ["sendChartToCloud"]}
-        layout |= {"autosize": True, "uirevision": revision, "modebar": bar}
+        layout = {**figure["layout"], "title": {"text": ""}, "autosize": True, "uirevision": revision}
+        layout["modebar"] = {**layout.get("modebar", {}), "remove": ["sendChartToCloud", "lasso2d", "select2d"]}
+        layout["legend"] = {**layout.get("legend", {}), **BELOW}
+        layout["margin"] = {**layout.get("margin", {}), "t": 30, "r": 10}
+        for fixed in ("width", "height"):
+            layout.pop(fixed, None)
         if camera and "scene" in layout:
             layout["scene"] = {**layout["scene"], "camera": camera}
         self.figure = {"data": figure["data"], "layout": layout}

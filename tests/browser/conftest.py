@@ -48,7 +48,11 @@ def server(tmp_path_factory: pytest.TempPathFactory) -> Iterator[tuple[str, Path
     home, port = tmp_path_factory.mktemp("jupyter"), free_port()
     root = home / "notebooks"
     root.mkdir()
+    quiet = home / "settings" / "@jupyterlab" / "apputils-extension"
+    quiet.mkdir(parents=True)
+    (quiet / "notification.jupyterlab-settings").write_text('{"fetchNews": "false"}')
     own = {f"JUPYTER_{part}_DIR": str(home / part.lower()) for part in ("CONFIG", "DATA", "RUNTIME")}
+    own["JUPYTERLAB_SETTINGS_DIR"] = str(home / "settings")
     command = [sys.executable, "-m", "jupyterlab", *OPTIONS.split(), f"--port={port}", f"--ServerApp.root_dir={root}"]
     with (home / "log").open("w") as log:
         process = subprocess.Popen(command, env={**os.environ, **own}, stdout=log, stderr=subprocess.STDOUT)
