@@ -8,7 +8,7 @@ from typing import Any
 from polywalk.drawing.scene import Point
 from polywalk.drawing.space import cross, inner
 
-LENGTH, WIDTH, STANDOFF = 0.045, 0.016, 0.02
+LENGTH, WIDTH, STANDOFF = 0.034, 0.011, 0.018
 """Length, radius and distance from the tip, as shares of the drawn box's longest side."""
 
 SIDES = 8

@@ -5,7 +5,7 @@ from __future__ import annotations
 from fractions import Fraction
 
 from polywalk.drawing.conflict import Conflict
-from polywalk.drawing.goal import TREND
+from polywalk.drawing.paths import walk_text
 from polywalk.drawing.scene import KeyPart, KeyRow
 from polywalk.drawing.subject import Subject, coordinates, floats
 from polywalk.exact import short
@@ -88,20 +88,6 @@ def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
     return KeyRow("walk", f"{walk_text(walk)}: {' → '.join(shown)}", index)
 
 
-def walk_text(walk: Walk) -> str:
-    """A walk in one line: rule, pivots, stays, end."""
-    still = sum(pivot.kind == "degenerate" for pivot in walk.pivots)
-    first = sum(pivot.phase == 1 for pivot in walk.pivots)
-    text = f"{walk.rule}: {_count(len(walk.pivots), 'pivot')}"
-    text += f", {first} of them Phase I (dotted)" if first else ""
-    text += f", {_count(still, 'stay')}" if still else ", no stay"
-    return f"{text}, {walk.end}"
-
-
-def _count(number: int, word: str) -> str:
-    return f"{number} {word}" if number == 1 else f"{number} {word}s"
-
-
 def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
     seen = subject.seen
     listed = list(range(len(seen.vertices)))
@@ -136,9 +122,3 @@ def _constraints(
         text = f"{row.name}: {row.text(model.variables)}{note}"
         rows.append(KeyRow("constraint", text, index, tags.get(row.name, "")))
     return tuple(rows)
-
-
-def goal_words(subject: Subject) -> str:
-    """The trend of the objective, for painters that name the arrow in a legend."""
-    goal = subject.seen.model.objective
-    return TREND[goal.goal] if goal else ""

@@ -26,7 +26,7 @@ def layout(drawn: Scene, theme: Theme) -> dict[str, Any]:
         "paper_bgcolor": theme.paper,
         "plot_bgcolor": theme.paper,
         "font": {"family": FONT, "color": theme.text, "size": 12},
-        "legend": {"font": {"size": 12}, "itemsizing": "constant", "bgcolor": theme.paper},
+        "legend": {"font": {"size": 12}, "itemsizing": "constant", "tracegroupgap": 0, "bgcolor": theme.paper},
         "uirevision": "polywalk",
         "hoverlabel": {"align": "left", "bgcolor": theme.paper, "font": {"color": theme.text, "family": FONT}},
         "modebar": {"remove": ["sendChartToCloud", "lasso2d", "select2d"]},

@@ -105,7 +105,8 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
         parts.setdefault(role, []).append(_shifted(frame, index, leg))
         if frame.sheet is not None:
             frame.sheet.lines.append((frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)))
-    name = frame.subject.view.walks[index].rule
+    name = walk_text(frame.subject.view.walks[index])
+    parts = parts or {"walk": []}  # a walk that never moves still has its place in the legend
     return [Line(tuple(found), role, index, name, arrow="end") for role, found in parts.items()]
 
 
@@ -173,3 +174,17 @@ def _marks(frame: Frame, walk: Walk, legs: list[Leg]) -> list[Mark]:
         here = legs[0].start if step <= 0 else legs[min(step, len(legs)) - 1].end
         marks.append(Mark(here, "selected", text=f"after pivot {step}"))
     return marks
+
+
+def walk_text(walk: Walk) -> str:
+    """A walk in one line: rule, pivots, stays, end."""
+    still = sum(pivot.kind == "degenerate" for pivot in walk.pivots)
+    first = sum(pivot.phase == 1 for pivot in walk.pivots)
+    text = f"{walk.rule}: {_count(len(walk.pivots), 'pivot')}"
+    text += f", {first} of them Phase I (dotted)" if first else ""
+    text += f", {_count(still, 'stay')}" if still else ", no stay"
+    return f"{text}, {walk.end}"
+
+
+def _count(number: int, word: str) -> str:
+    return f"{number} {word}" if number == 1 else f"{number} {word}s"

@@ -106,7 +106,7 @@ def _line(drawn: Scene, item: Line, theme: Theme) -> list[dict[str, Any]]:
     }
     hover = {"hoverinfo": "text", "text": html(item.hover)} if item.hover else {"hoverinfo": "skip"}
     traces = [_trace(drawn, points, **look, **hover)]
-    if item.arrow:
+    if item.arrow and item.parts:
         traces.append(_heads(drawn, item, style, look["legendgroup"]))
     return traces
 
@@ -156,13 +156,11 @@ def _labels(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
     """Text that belongs to a place: step numbers everywhere; in space all other labels too."""
     traces = []
     wanted = [label for label in drawn.labels if drawn.solid or label.role == "step"]
-    for (role, index), items in groupby(sorted(wanted, key=_by_look), key=_by_look):
+    for (role, index), items in groupby(sorted(_merged(wanted), key=_by_look), key=_by_look):
         group = list(items)
         style = theme.style(role, index)
         bold = role in {"step", "tag"}
         text = [f"<b>{html(label.text)}</b>" if bold else html(label.text) for label in group]
-        if role == "stay":
-            text = ["<br>" * label.index + words for label, words in zip(group, text, strict=True)]
         look: dict[str, Any] = {"mode": "text", "text": text, "hoverinfo": "skip", "showlegend": False}
         look["textfont"] = {"size": 12, "color": theme.text if role == "tag" else style.colour, "family": FONT}
         look["textposition"] = "bottom center" if role == "stay" else "middle center"
@@ -177,6 +175,16 @@ def _labels(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             look |= {"mode": "markers+text", "marker": disc, "legendgroup": f"walk {index}"}
         traces.append(_trace(drawn, [label.point for label in group], **look))
     return traces
+
+
+def _merged(labels: list[Label]) -> list[Label]:
+    """Labels that tell of stays at one point, as one label of several lines."""
+    found: dict[Point, list[str]] = {}
+    for label in labels:
+        if label.role == "stay":
+            found.setdefault(label.point, []).append(label.text)
+    stays = [Label("\n".join(texts), point, "stay") for point, texts in found.items()]
+    return [label for label in labels if label.role != "stay"] + stays
 
 
 def _by_look(label: Label) -> tuple[str, int]:
