@@ -10,7 +10,7 @@ import numpy as np
 import pytest
 from oracle import Truth, truth
 from scipy.spatial import HalfspaceIntersection
-from zoo import ZOO, build
+from zoo import ZOO, build, unit
 
 from polywalk.model import Model
 from polywalk.region import Region, region
@@ -60,10 +60,6 @@ def some(n: int, draw: random.Random) -> list[int]:
     """A random row that is not zero."""
     row = [draw.randint(-2, 2) for _ in range(n)]
     return row if any(row) else unit(n, 0)
-
-
-def unit(n: int, j: int) -> list[int]:
-    return [int(i == j) for i in range(n)]
 
 
 def agree(found: Region, expected: Truth) -> None:

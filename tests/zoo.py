@@ -29,10 +29,15 @@ def plain(a: Sequence[Sequence[object]], b: Sequence[object], equal: Sequence[in
     return build(" ".join(f"x{j + 1}" for j in range(len(a[0]))), rows)
 
 
+def unit(n: int, j: int) -> list[int]:
+    """The coefficients of variable j alone."""
+    return [int(i == j) for i in range(n)]
+
+
 def nonnegative(variables: str) -> list[Row]:
     """The lower bounds 0, named as "x lower"."""
     names = variables.split()
-    return [(f"{name} lower", [int(i == j) for j in range(len(names))], ">=", 0) for i, name in enumerate(names)]
+    return [(f"{name} lower", unit(len(names), j), ">=", 0) for j, name in enumerate(names)]
 
 
 def boxed(variables: str, size: object = 1) -> list[Row]:
