@@ -8,7 +8,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from decimal import Decimal
 from fractions import Fraction
-from math import gcd, isinf, isnan, lcm
+from math import gcd, isfinite, lcm
 from numbers import Integral, Rational
 
 import numpy as np
@@ -20,6 +20,8 @@ Row = tuple[Fraction, ...]
 
 LARGEST_EXPONENT = 400
 """Text such as 1e999999999 would fill the memory; floats end at 1e308, so 400 leaves room for text."""
+
+_INFINITIES = {sign + word for sign in ("", "+", "-") for word in ("inf", "infinity")}
 
 DIGITS = 6
 """Significant digits of a rounded number."""
@@ -60,7 +62,7 @@ def exact(value: object) -> Fraction:
     if isinstance(value, Integral | Rational):
         return Fraction(int(value)) if isinstance(value, Integral) else Fraction(value)
     if isinstance(value, float | np.floating | Decimal):
-        if isnan(value) or isinf(value):
+        if not _is_finite(value):
             raise NumberError(f"expected a finite number, got {value}; only a bound may be infinite.", culprit=value)
         return _from_text(str(value), value)
     if isinstance(value, str):
@@ -68,6 +70,11 @@ def exact(value: object) -> Fraction:
     if isinstance(value, np.ndarray) and value.ndim == 0:
         return exact(value[()])
     raise NumberError(f"expected a number, got {value!r} of type {type(value).__name__}.", culprit=value)
+
+
+def _is_finite(value: float | np.floating | Decimal) -> bool:
+    """Asked of a Decimal in its own terms: as a float 1e999 would be infinite, and a signalling NaN an error."""
+    return value.is_finite() if isinstance(value, Decimal) else isfinite(value)
 
 
 def _from_text(text: str, value: object) -> Fraction:
@@ -90,10 +97,10 @@ def bound(value: object, sign: int) -> Fraction | None:
     """
     if value is None:
         return None
-    text = value.strip().lower() if isinstance(value, str) else None
-    infinite = text in {"inf", "+inf", "-inf", "infinity", "-infinity"} or (
-        isinstance(value, float | np.floating | Decimal) and isinf(value)
-    )
+    if isinstance(value, str):
+        infinite = value.strip().lower() in _INFINITIES
+    else:
+        infinite = isinstance(value, float | np.floating | Decimal) and str(value).lower() in _INFINITIES
     if not infinite:
         return exact(value)
     if (str(value).strip().startswith("-")) != (sign < 0):
