@@ -37,7 +37,7 @@ def proves_empty(rows, weights):
 
 
 def proves_optimal(objective, rows, point, weights, value):
-    """Weak duality: a feasible point whose value no point can pass, since the weighted rows say so; objective: (goal, cost, constant)."""
+    """A feasible point whose value no point can pass, as the weighted rows say; objective: (goal, cost, constant)."""
     goal, cost, constant = objective
     if not holds(rows, point) or product(cost, point) + constant != value:
         return False

@@ -63,5 +63,11 @@ def random_model(draw: Random, largest: int = 3) -> Model:
     return typed(draw.choice(["min", "max"]), cost, rows, lower, upper, constant=draw.choice([0, 7]))
 
 
+def random_degenerate(draw: Random) -> Model:
+    """Several constraints through the origin, where the walk starts."""
+    rows = [([draw.randint(-4, 4) for _ in range(3)], "<=", draw.choice([0, 0, 0, 0, 1, 4])) for _ in range(5)]
+    return typed(draw.choice(["min", "max"]), [draw.randint(-3, 3) for _ in range(3)], rows, lower=0, constant=2)
+
+
 def _row(values) -> tuple[Fraction, ...]:
     return tuple(Fraction(value) for value in values)
