@@ -43,10 +43,8 @@ def verdict(region: Region) -> str:
         ["empty region"] if region.status == "empty" else [f"{region.status} region of dimension {region.dimension}"]
     )
     if region.outcome == "optimal" and region.value is not None and region.optimal is not None:
-        where = region.optimal.vertices
-        place = (
-            f" at {count(len(where), 'vertex', 'vertices')} ({', '.join(map(str, where))})" if region.vertices else ""
-        )
+        names = [vertex_name(index) for index in region.optimal.vertices if region.vertices]
+        place = f" at {', '.join(names)}" if names else ""
         parts.append(f"optimum {number(region.value)}{place}")
     else:
         parts.append(OUTCOME[region.outcome])

@@ -61,6 +61,7 @@ class FigureView(anywidget.AnyWidget):
         super().__init__(**traits)
         self.handlers = handlers or {}
         self.libraries_sent = 0
+        self._revision, self._room = "", 0
         self.on_msg(lambda _, content, __: self.receive(content))
 
     def receive(self, message: dict[str, Any]) -> None:
@@ -79,14 +80,25 @@ class FigureView(anywidget.AnyWidget):
         """
         layout = {**figure["layout"], "title": {"text": ""}, "autosize": True, "uirevision": revision}
         layout["modebar"] = {**layout.get("modebar", {}), "remove": ["sendChartToCloud", "lasso2d", "select2d"]}
-        layout["legend"] = {**layout.get("legend", {}), **BELOW}
-        layout["margin"] = {**layout.get("margin", {}), "t": 30, "r": 10}
+        solid = "scene" in layout
+        if revision != self._revision:
+            self._revision, self._room = revision, _legend_room(figure["data"])
+        room = self._room
+        layout["legend"] = {**layout.get("legend", {}), **BELOW, "maxheight": room}
+        sides = {"l": 8 if solid else 56, "r": 8, "t": 30, "b": room + (0 if solid else 44)}
+        layout["margin"] = {**sides, "autoexpand": False}
         for fixed in ("width", "height"):
             layout.pop(fixed, None)
-        if camera and "scene" in layout:
+        if camera and solid:
             layout["scene"] = {**layout["scene"], "camera": camera}
         self.figure = {"data": figure["data"], "layout": layout}
 
     def aim(self, camera: dict[str, Any]) -> None:
         """Turn the scene on every page that shows it; ``camera`` as in plotly's ``layout.scene.camera``."""
         self.send({"kind": "aim", "camera": camera})
+
+
+def _legend_room(data: list[dict[str, Any]]) -> int:
+    """Pixels kept for the legend and a row more, so that the picture stays where it is when entries come and go."""
+    letters = sum(len(trace.get("name", "")) + 9 for trace in data if trace.get("showlegend", True))
+    return 20 * min(6, 2 + letters // 80) + 12

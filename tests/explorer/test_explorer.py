@@ -67,6 +67,11 @@ def test_names_are_escaped_everywhere() -> None:
     assert "a &amp; b" in explorer.verdict.value
 
 
+def test_the_verdict_tells_status_optimum_and_vertices() -> None:
+    told = pw.explore(square()).verdict.value
+    assert "bounded region of dimension 2; optimum 3 at V4; 4 vertices; 1 of them degenerate." in told
+
+
 def test_buttons_and_keys_step_on_and_back() -> None:
     explorer = pw.explore(cube())
     explorer.walk.on.click()
