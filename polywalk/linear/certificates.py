@@ -32,7 +32,7 @@ class Farkas(Shown):
     ----------
     model : Model
     weights : (m,) tuple of Fraction
-        One a constraint, in the model's order.
+        One a constraint, in the model's order, in the smallest integers.
 
     Examples
     --------
@@ -127,7 +127,7 @@ def farkas_of(solved: Solved) -> Farkas | None:
         shares[now.basic[row]] = Fraction(-1)
         if now.rows[row][0] < 0:
             shares = {k: -value for k, value in shares.items()}
-    return Farkas(now.slacks.model, constraint_weights(now, shares))
+    return Farkas(now.slacks.model, primitive(constraint_weights(now, shares)))
 
 
 def ray_of(solved: Solved) -> ImprovingRay | None:

@@ -14,7 +14,7 @@ Bareiss, Sylvester's identity and multistep integer-preserving Gaussian eliminat
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 
@@ -95,8 +95,6 @@ class Dictionary:
             self.slacks, tuple(basic), tuple(nonbasic), tuple(rows), substituted(self.cost), new, self.relaxed_slacks
         )
 
-    # Phase I: the auxiliary variable is added to every basic slack, then driven to zero
-
     @cached_property
     def phase(self) -> int:
         """1 while the auxiliary variable is there, else 2."""
@@ -107,35 +105,6 @@ class Dictionary:
     def feasible(self) -> bool:
         """Whether no slack is negative."""
         return all(line[0] >= 0 for _, line in self.blocking_rows())
-
-    def relaxed(self) -> Dictionary:
-        """With the auxiliary variable as one more column: each basic slack may be short by as much as it."""
-        items, whole = self.slacks, self.denominator
-        rows = tuple(
-            (*line, items.scales[k] * whole if items.pivots[k] else 0)
-            for k, line in zip(self.basic, self.rows, strict=True)
-        )
-        eased = tuple(k for k in self.basic if items.pivots[k])
-        nonbasic, cost = (*self.nonbasic, items.auxiliary), (*self.cost, 0)
-        return replace(self, nonbasic=nonbasic, rows=rows, cost=cost, relaxed_slacks=eased)
-
-    def without_auxiliary(self) -> Dictionary:
-        """Without the auxiliary's column, once it is nonbasic."""
-        place = self.nonbasic.index(self.slacks.auxiliary)
-
-        def cut(line: Integers) -> Integers:
-            return line[: place + 1] + line[place + 2 :]
-
-        nonbasic = self.nonbasic[:place] + self.nonbasic[place + 1 :]
-        rows = tuple(cut(line) for line in self.rows)
-        return replace(self, nonbasic=nonbasic, rows=rows, cost=cut(self.cost), relaxed_slacks=())
-
-    def most_violated(self) -> list[int]:
-        """The rows whose slack is the most negative (several when tied): one of them makes room for the auxiliary."""
-        scales = self.slacks.scales
-        values = {i: Fraction(line[0], scales[self.basic[i]]) for i, line in self.blocking_rows()}
-        worst = min(values.values())
-        return [i for i, value in values.items() if value == worst]
 
     # what a rule asks
 

@@ -12,6 +12,7 @@ from typing import Literal
 
 from polywalk.linear.crash import crash
 from polywalk.linear.dictionary import Dictionary, dictionary_of
+from polywalk.linear.phase_one import most_violated, relaxed, step
 from polywalk.model import Model
 
 Outcome = Literal["optimal", "unbounded", "infeasible"]
@@ -72,18 +73,11 @@ def bland(dictionary: Dictionary) -> tuple[Dictionary, int | None]:
     return dictionary, None
 
 
-def step(dictionary: Dictionary, row: int, column: int) -> Dictionary:
-    """One pivot; the auxiliary's column is dropped when it leaves."""
-    ends = dictionary.basic[row] == dictionary.slacks.auxiliary
-    after = dictionary.pivot(row, column)
-    return after.without_auxiliary() if ends else after
-
-
 def _phase_one(dictionary: Dictionary) -> Dictionary:
     """Feasible and without the auxiliary, or with the auxiliary at its least value above 0."""
-    row = min(dictionary.most_violated(), key=dictionary.basic.__getitem__)
-    relaxed = dictionary.relaxed()
-    return bland(relaxed.pivot(row, len(relaxed.nonbasic) - 1))[0]
+    row = min(most_violated(dictionary), key=dictionary.basic.__getitem__)
+    eased = relaxed(dictionary)
+    return bland(eased.pivot(row, len(eased.nonbasic) - 1))[0]
 
 
 def _sloping_line(dictionary: Dictionary, lines: tuple[int, ...]) -> int | None:

@@ -74,6 +74,12 @@ class Walk(Shown):
         return (self.start, *(pivot.point_after for pivot in self.pivots))
 
     @property
+    def constraint_of(self) -> dict[str, str]:
+        """The constraint each slack belongs to, by the slack's name; free decisions and the auxiliary have none."""
+        slacks = self.first.slacks
+        return {slacks.names[index]: name for name, index in slacks.of_constraint.items()}
+
+    @property
     def ray(self) -> Row | None:
         """The direction, in the smallest integers, along which an unbounded model improves for ever."""
         return primitive(self.pivots[-1].direction) if self.end == "unbounded" else None

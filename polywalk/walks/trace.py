@@ -7,7 +7,7 @@ from typing import NamedTuple
 
 from polywalk.errors import WalkError
 from polywalk.linear import Dictionary, dictionary_of
-from polywalk.linear.solve import step
+from polywalk.linear.phase_one import most_violated, relaxed, step
 from polywalk.model import Model
 from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
@@ -130,7 +130,7 @@ def _next(now: Dictionary, number: int, rules: _Rules) -> Pivot | None:
 
 def _auxiliary_enters(now: Dictionary, rules: _Rules) -> Pivot:
     """Phase I begins: the auxiliary enters for the slack that is short by the most (ties: the lowest index)."""
-    row = min(now.most_violated(), key=lambda i: rules.rank[now.basic[i]])
-    relaxed = now.relaxed()
-    column = len(relaxed.nonbasic) - 1
-    return Pivot(1, relaxed, step(relaxed, row, column), column, row)
+    row = min(most_violated(now), key=lambda i: rules.rank[now.basic[i]])
+    eased = relaxed(now)
+    column = len(eased.nonbasic) - 1
+    return Pivot(1, eased, step(eased, row, column), column, row)

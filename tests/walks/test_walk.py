@@ -194,6 +194,7 @@ def test_unknown_rules_are_refused_with_near_names():
 
 def test_walk_shows_itself():
     walked = walk(klee_minty(3))
+    assert walked.constraint_of == {f"x{k}": f"x{k} lower" for k in (1, 2, 3)} | {f"r{k}": f"r{k}" for k in (1, 2, 3)}
     assert str(walked).splitlines()[0] == (
         "dantzig from (0, 0, 0): optimal at (0, 0, 125) after 7 pivots (0 of them degenerate)"
     )
