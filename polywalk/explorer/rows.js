@@ -13,6 +13,7 @@ function render({ model, el }) {
   scroll.className = "polywalk-scroll";
   table.className = "polywalk-rows";
   table.setAttribute("role", "grid");
+  scroll.dataset.lmSuppressShortcuts = "true"; // the arrow keys and letters belong to the table, not to JupyterLab
   scroll.append(table);
   el.append(scroll);
   const lines = () => [...table.tBodies[0].rows];

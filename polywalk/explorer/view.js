@@ -98,6 +98,7 @@ function render({ model, el }) {
   const note = document.createElement("p");
   plot.className = "polywalk-figure";
   plot.tabIndex = 0;
+  plot.dataset.lmSuppressShortcuts = "true"; // or JupyterLab takes a key pressed here for one of its own: x cuts the cell
   plot.setAttribute("role", "application");
   note.className = "polywalk-note";
   note.textContent = "Loading the picture…";

@@ -99,6 +99,9 @@ def buttons_rows_and_keys_step(lab: Lab) -> None:
     page.locator(".polywalk-figure").focus()
     page.keyboard.press("ArrowLeft")
     lab.until("print(explorer.state.step)", "2")
+    page.keyboard.press("x")  # cuts a cell where JupyterLab gets it
+    cells = "() => window.jupyterapp.shell.currentWidget.content.widgets.map((cell) => cell.model.sharedModel.source)"
+    assert "explore" in page.evaluate(cells)[0]
     story = lab.ask("print(explorer.state.walks[0].pivots[1].story())")
     page.wait_for_function("(text) => document.querySelector('.polywalk').innerText.includes(text)", arg=story)
 
