@@ -13,8 +13,8 @@ from polywalk.drawing.space import cross, inner
 
 Eye = tuple[float, float, float]
 
-TURNS = (-25, -35, -45, -55, -65, 25, 35, 45, 55, 65, 115, 125, 145, 155, -115, -125, -145, -155)
-"""Angles about the vertical axis, in degrees, among which a picture chooses."""
+TURNS = tuple(side + turn for side in (-90, 0, 90, 180) for turn in (62, 52, 38, 28))
+"""Angles about the vertical axis, in degrees, among which a picture chooses; 45 would hide a cube's corners."""
 
 TILTS = (16, 24, 32)
 """Angles above the horizontal, in degrees."""

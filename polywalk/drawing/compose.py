@@ -187,9 +187,12 @@ def _status(looked: Subject) -> str:
         return f"{text}; the objective has no optimum: it improves without end"
     if whole.value is None:
         return text
+    if whole.lines:
+        return f"{text}; optimum {short(whole.value)} along a whole line"
     places = [coordinates(whole.vertices[k].point) for k in (whole.optimal.vertices if whole.optimal else ())]
     where = f" at {places[0]}" if len(places) == 1 else f", tied between {len(places)} vertices" if places else ""
-    return f"{text}; optimum {short(whole.value)}{where}"
+    onward = " and on without end" if whole.optimal and whole.optimal.rays else ""
+    return f"{text}; optimum {short(whole.value)}{where}{onward}"
 
 
 def _assembled(

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import os
 import tempfile
+import warnings
 from pathlib import Path
 from typing import Any
 
@@ -86,7 +87,8 @@ def rendered(drawn: Scene, theme: Theme, ending: str = "svg") -> bytes:
     height = max(PAPER[1] + BOTTOM + TOP, ROW * (len(rows) + 1) + TOP)
     width = LEFT + PAPER[0] + KEY + 34
     fixed: Any = {"svg.hashsalt": "polywalk", "svg.fonttype": "path", "pdf.fonttype": 42, "font.family": "DejaVu Sans"}
-    with mpl.rc_context(fixed):
+    with mpl.rc_context(fixed), warnings.catch_warnings():
+        warnings.filterwarnings("ignore", "Glyph .* missing")  # an emoji in a name becomes a box, nothing worse
         figure = Figure(figsize=(width * PIXEL, height * PIXEL), facecolor=theme.paper)
         FigureCanvasAgg(figure)
         base = (height - TOP - PAPER[1]) / height

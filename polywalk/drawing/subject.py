@@ -54,7 +54,7 @@ class Subject:
     def best(self) -> tuple[int, ...]:
         """Indices of the seen vertices that belong to the optimal face."""
         face = self.region.optimal
-        if face is None:
+        if face is None or self.region.lines:  # a region with a line has no vertex
             return ()
         best = {self.along(self.region.vertices[k].point) for k in face.vertices}
         return tuple(k for k, vertex in enumerate(self.seen.vertices) if floats(vertex.point) in best)
