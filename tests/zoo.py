@@ -113,6 +113,10 @@ ZOO: dict[str, tuple[Model, dict[str, Any]]] = {
         build("x y", [("level", [0, 1], "==", 0), ("x lower", [1, 0], ">=", 0)]),
         {"status": "unbounded", "dimension": 1, "points": [(0, 0)], "rays": [(1, 0)], "edges": 1, "facets": 1},
     ),
+    "ray in the plane beside a loose row": (
+        build("x y", [("level", [0, 1], "==", 0), ("x lower", [1, 0], ">=", 0), ("loose", [0, 1], "<=", 5)]),
+        {"status": "unbounded", "dimension": 1, "points": [(0, 0)], "rays": [(1, 0)], "edges": 1, "facets": 1},
+    ),
     "flat in space": (
         build("x y z", [*XYZ, ("sum", [1, 1, 1], "==", 1)], ("max", [1, 2, 3])),
         {"status": "bounded", "dimension": 2, "points": [(0, 0, 1), (0, 1, 0), (1, 0, 0)], "edges": 3, "facets": 3}
