@@ -33,7 +33,7 @@ def _random_problem(rng):
     n, m, k = rng.randint(1, 4), rng.randint(0, 5), rng.choice([0, 0, 0, 1])
     whole = lambda rows: np.array([[rng.randint(-3, 4) for _ in range(n)] for _ in range(rows)], dtype=float)  # noqa: E731
     c = np.array([rng.randint(-4, 5) for _ in range(n)], dtype=float)
-    upper, upper_side = (whole(m), np.array([float(rng.randint(0, 9)) for _ in range(m)])) if m else (None, None)
+    upper, upper_side = (whole(m), np.array([float(rng.randint(-3, 9)) for _ in range(m)])) if m else (None, None)
     equal, equal_side = (whole(k), np.array([float(rng.randint(0, 4)) for _ in range(k)])) if k else (None, None)
     return c, upper, upper_side, equal, equal_side, _random_bounds(rng, n)
 
