@@ -44,7 +44,7 @@ def scene(source: Model | Region, view: View | None = None) -> Scene:
     >>> from polywalk.drawing import scene
     >>> model = pw.from_algebra(maximize="x + y", constraints={"both": "x + y <= 3"}, bounds={"x": (0, 2), "y": (0, 2)})
     >>> [mark.text for mark in scene(model).marks if mark.role == "optimum"]
-    ['V4', 'V5']
+    ['V2', 'V4']
     """
     looked = subject(source, view or View())
     if looked.seen.status == "empty":

@@ -10,6 +10,7 @@ from polywalk.drawing.scene import KeyPart, KeyRow
 from polywalk.drawing.subject import Subject, coordinates, floats
 from polywalk.exact import short
 from polywalk.model import GOAL
+from polywalk.region import vertex_name
 from polywalk.walks import Walk
 
 MOST_VERTICES = 16
@@ -61,7 +62,7 @@ def _degenerate(subject: Subject) -> list[KeyRow]:
     found: dict[int, list[str]] = {}
     for k, vertex in enumerate(subject.seen.vertices):
         if vertex.degenerate:
-            found.setdefault(len(vertex.active), []).append(f"V{k + 1}")
+            found.setdefault(len(vertex.active), []).append(vertex_name(k))
     return [
         KeyRow("degenerate", f"degenerate: at {', '.join(names)} {most} constraints meet, {len(subject.axes)} would do")
         for most, names in found.items()
@@ -69,7 +70,7 @@ def _degenerate(subject: Subject) -> list[KeyRow]:
 
 
 def _optimum(subject: Subject) -> str:
-    places = [f"V{k + 1} {coordinates(subject.seen.vertices[k].point)}" for k in subject.best]
+    places = [f"{vertex_name(k)} {coordinates(subject.seen.vertices[k].point)}" for k in subject.best]
     value = f"objective {short(subject.region.value)}" if subject.region.value is not None else ""
     face = subject.region.optimal
     if face is not None and (face.rays or face.lines):
@@ -81,7 +82,7 @@ def _optimum(subject: Subject) -> str:
 
 def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
     """What a walk did, and the vertices it passed."""
-    names = {floats(vertex.point): f"V{k + 1}" for k, vertex in enumerate(subject.seen.vertices)}
+    names = {floats(vertex.point): vertex_name(k) for k, vertex in enumerate(subject.seen.vertices)}
     stops = [names.get(subject.along(point), "outside") for point in walk.points]
     path = [stop for stop, before in zip(stops, ["", *stops[:-1]], strict=True) if stop != before]
     shown = path if len(path) <= MOST_STOPS else [*path[: MOST_STOPS - 2], "...", path[-1]]
@@ -97,7 +98,9 @@ def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
     for k in listed:
         vertex = seen.vertices[k]
         value = f"  objective {short(vertex.objective)}" if vertex.objective is not None else ""
-        rows.append(KeyRow("point", f"{coordinates(vertex.point)}{value}: {', '.join(vertex.active)}", tag=f"V{k + 1}"))
+        rows.append(
+            KeyRow("point", f"{coordinates(vertex.point)}{value}: {', '.join(vertex.active)}", tag=vertex_name(k))
+        )
     left = len(seen.vertices) - len(listed)
     if left:
         rows.append(KeyRow("point", f"and {left} more vertices", tag=""))

@@ -11,6 +11,7 @@ from polywalk.drawing.shape import Shape
 from polywalk.drawing.subject import Subject, floats, planar
 from polywalk.drawing.window import Window
 from polywalk.model import SIGN, Constraint
+from polywalk.region import vertex_name
 
 HATCH_GAP, HATCH = 15.0, 7.0
 """Pixels between the short strokes on a constraint's forbidden side, and their length."""
@@ -94,8 +95,8 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
     for k, (vertex, point) in enumerate(zip(seen.vertices, points, strict=True)):
         if vertex.degenerate:
             marks.append(Mark(point, "degenerate"))
-        marks.append(Mark(point, "vertex", text=f"V{k + 1}", hover=subject.hover(k), key=k))
-    marks += [Mark(points[k], "optimum", text=f"V{k + 1}", hover=subject.hover(k)) for k in subject.best]
+        marks.append(Mark(point, "vertex", text=vertex_name(k), hover=subject.hover(k), key=k))
+    marks += [Mark(points[k], "optimum", text=vertex_name(k), hover=subject.hover(k)) for k in subject.best]
     if subject.view.vertex is not None:
         marks.append(Mark(points[subject.view.vertex], "selected"))
     if sheet is not None:
@@ -103,6 +104,7 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
         for point in points:
             sheet.keep_clear(point, 8.0)
         labels = [
-            sheet.place(f"V{k + 1}", about(sheet.pixel(point), away=middle), "point") for k, point in enumerate(points)
+            sheet.place(vertex_name(k), about(sheet.pixel(point), away=middle), "point")
+            for k, point in enumerate(points)
         ]
     return Layer(marks=tuple(marks), labels=tuple(labels))

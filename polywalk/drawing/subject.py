@@ -11,7 +11,7 @@ from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
 from polywalk.exact import full, rounded, short
 from polywalk.model import Model
-from polywalk.region import Region, Vertex, project, region
+from polywalk.region import Region, Vertex, project, region, vertex_name
 
 MOST_AXES = 3
 
@@ -62,7 +62,7 @@ class Subject:
     def hover(self, index: int) -> str:
         """Everything about one seen vertex, as lines of plain text."""
         vertex = self.seen.vertices[index]
-        lines = [f"V{index + 1}{' (optimum)' if index in self.best else ''}"]
+        lines = [f"{vertex_name(index)}{' (optimum)' if index in self.best else ''}"]
         lines += [_amount(self.model, name, value) for name, value in zip(self.axes, vertex.point, strict=True)]
         if vertex.objective is not None:
             lines.append(f"objective {_both(vertex.objective)}")

@@ -14,6 +14,7 @@ from polywalk.errors import PolywalkError
 from polywalk.explorer import steps, texts
 from polywalk.explorer.rows import Rows
 from polywalk.explorer.state import RULES, State
+from polywalk.region import vertex_name
 
 NONE = "none"
 USUAL = "origin, else Phase I"
@@ -132,9 +133,7 @@ class WalkPanel:
         """Offer the region's vertices as starts."""
         start = USUAL if self.state.start is None else self.state.start
         offered: list[tuple[str, Any]] = [(USUAL, USUAL)]
-        offered += [
-            (f"vertex {texts.vertex_name(k)}", vertex.point) for k, vertex in enumerate(self.state.region.vertices)
-        ]
+        offered += [(f"vertex {vertex_name(k)}", vertex.point) for k, vertex in enumerate(self.state.region.vertices)]
         if start not in [value for _, value in offered]:
             offered.append(("as given", start))
         with self._quietly():

@@ -8,7 +8,7 @@ from html import escape
 
 from polywalk.exact import full, short
 from polywalk.model import Model
-from polywalk.region import Region, Vertex
+from polywalk.region import Region, Vertex, vertex_name
 from polywalk.table import Table, cell
 
 OUTCOME = {
@@ -23,11 +23,6 @@ def number(value: Fraction, unit: str = "") -> str:
     text = escape(short(value))
     shown = text if full(value) == short(value) else f'<span title="{escape(full(value))}">{text}</span>'
     return f"{shown} {escape(unit)}".rstrip()
-
-
-def vertex_name(index: int) -> str:
-    """What the picture calls the vertex."""
-    return f"V{index + 1}"
 
 
 def count(number_of: int, word: str, plural: str = "") -> str:

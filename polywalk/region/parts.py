@@ -10,6 +10,11 @@ from polywalk.exact import Row, dot
 from polywalk.model import Model
 
 
+def vertex_name(number: int) -> str:
+    """What vertex ``number`` of a region is called in every table, picture and widget."""
+    return f"V{number}"
+
+
 @dataclass(frozen=True)
 class Vertex:
     """A corner of the region.

@@ -47,9 +47,9 @@ class Region(Shown):
     >>> print(region(Model(("x", "y"), rows)))
     bounded region of dimension 2: 3 vertices, 3 edges, 3 facets
     vertex  x  y  active            degenerate
-    0       0  0  x lower, y lower  no
-    1       0  4  x lower, labour   no
-    2       4  0  y lower, labour   no
+    V0      0  0  x lower, y lower  no
+    V1      0  4  x lower, labour   no
+    V2      4  0  y lower, labour   no
     """
 
     model: Model

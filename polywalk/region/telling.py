@@ -7,6 +7,7 @@ from fractions import Fraction
 from typing import TYPE_CHECKING
 
 from polywalk.exact import Row, short
+from polywalk.region.parts import vertex_name
 from polywalk.table import Table
 
 if TYPE_CHECKING:
@@ -18,7 +19,13 @@ def table(region: Region) -> Table:
     model, valued = region.model, region.model.objective is not None
     columns = ("vertex", *model.variables, *(("objective",) if valued else ()), "active", "degenerate")
     rows = tuple(
-        (k, *vertex.point, *((vertex.objective,) if valued else ()), ", ".join(vertex.active), vertex.degenerate)
+        (
+            vertex_name(k),
+            *vertex.point,
+            *((vertex.objective,) if valued else ()),
+            ", ".join(vertex.active),
+            vertex.degenerate,
+        )
         for k, vertex in enumerate(region.vertices)
     )
     return Table(_title(region), columns if rows else (), rows, tuple(_notes(region)))
@@ -47,10 +54,10 @@ def _notes(region: Region) -> Iterable[str]:
     if region.equalities and region.status != "empty":
         yield f"active at every point: {', '.join(region.equalities)}"
     if region.outcome == "optimal" and region.value is not None and region.optimal is not None:
-        kind = "base point" if region.lines else "vertex"
-        where = ", ".join(str(k) for k in region.optimal.vertices)
+        kind = "base point " if region.lines else ""
+        where = ", ".join(str(k) if region.lines else vertex_name(k) for k in region.optimal.vertices)
         beyond = "".join(f", along ray {k}" for k in region.optimal.rays)
-        yield f"optimum {short(region.value)} at {kind} {where}{beyond}"
+        yield f"optimum {short(region.value)} at {kind}{where}{beyond}"
     elif region.outcome == "unbounded":
         yield "the objective is unbounded: it improves for ever"
     if region.model.integers:

@@ -185,9 +185,9 @@ def test_more_variables_are_projected_and_the_title_says_so() -> None:
 
 def test_the_key_tells_optimum_degeneracy_open_sides_and_paths() -> None:
     text = [row.text for part in scene(harbour_row(), View(walks=(pw.walk(harbour_row()),))).key for row in part.rows]
-    assert "optimum: objective 292 at V9 (4, 4, 4)" in text
-    assert "degenerate: at V11 4 constraints meet, 3 would do" in text
-    assert "dantzig: 4 pivots, no stay, optimal: V1 → V2 → V3 → V8 → V9" in text
+    assert "optimum: objective 292 at V8 (4, 4, 4)" in text
+    assert "degenerate: at V10 4 constraints meet, 3 would do" in text
+    assert "dantzig: 4 pivots, no stay, optimal: V0 → V1 → V2 → V7 → V8" in text
     text = [row.text for part in scene(harbour_row("unbounded")).key for row in part.rows]
     assert "no limit along (pump, chips, tank) = (0, 1, 0), and the objective improves without end" in text
 

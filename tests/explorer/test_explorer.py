@@ -37,7 +37,7 @@ def test_a_pick_in_the_page_selects_row_card_and_picture() -> None:
     before = explorer.picture.figure
     explorer.picture.receive({"kind": "pick", "vertex": 3})
     assert (explorer.state.vertex, explorer.vertices.rows.selected) == (3, 3)
-    assert "Vertex V4" in explorer.vertices.card.value
+    assert "Vertex V3" in explorer.vertices.card.value
     assert explorer.picture.figure != before
 
 
@@ -69,7 +69,7 @@ def test_names_are_escaped_everywhere() -> None:
 
 def test_the_verdict_tells_status_optimum_and_vertices() -> None:
     told = pw.explore(square()).verdict.value
-    assert "bounded region of dimension 2; optimum 3 at V4; 4 vertices; 1 of them degenerate." in told
+    assert "bounded region of dimension 2; optimum 3 at V3; 4 vertices; 1 of them degenerate." in told
 
 
 def test_buttons_and_keys_step_on_and_back() -> None:
