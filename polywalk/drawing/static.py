@@ -5,6 +5,7 @@ from __future__ import annotations
 import os
 import tempfile
 import warnings
+from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
@@ -29,14 +30,50 @@ PIXEL = 1 / 96
 ENDINGS = (".png", ".svg", ".pdf")
 
 
-def picture(source: Model | Region, path: str | os.PathLike[str], view: View | None = None, **changes: Any) -> Path:
-    """Write a static picture of a region: PNG, SVG or PDF by the file's ending.
+@dataclass(frozen=True, repr=False)
+class Picture:
+    """A finished static picture: it shows itself in a notebook, and is a file where a path was given.
+
+    Parameters
+    ----------
+    data : bytes
+        The PNG, SVG or PDF.
+    ending : {"png", "svg", "pdf"}
+    path : pathlib.Path or None
+        The file it was written to.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> pw.picture(pw.scenarios.harbour_row("two decisions")).data[:5]
+    b'<?xml'
+    """
+
+    data: bytes
+    ending: str
+    path: Path | None = None
+
+    def __repr__(self) -> str:
+        return f"picture of a region ({self.ending}{f', {self.path.name}' if self.path else ''})"
+
+    def _repr_svg_(self) -> str | None:
+        return self.data.decode() if self.ending == "svg" else None
+
+    def _repr_png_(self) -> bytes | None:
+        return self.data if self.ending == "png" else None
+
+
+def picture(
+    source: Model | Region, path: str | os.PathLike[str] | None = None, view: View | None = None, **changes: Any
+) -> Picture:
+    """Paint a static picture of a region with its key: SVG, PNG or PDF, without a browser.
 
     Parameters
     ----------
     source : Model or Region
-    path : str or path-like
-        Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete.
+    path : str or path-like, optional
+        Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete. Without a path
+        the picture is an SVG that only shows itself.
     view : View, optional
         Axes, walks, selection, camera, light, dark or grey.
     **changes
@@ -44,13 +81,13 @@ def picture(source: Model | Region, path: str | os.PathLike[str], view: View | N
 
     Returns
     -------
-    pathlib.Path
-        The file that was written.
+    Picture
+        The same bytes for the same input.
 
     Raises
     ------
     DrawingError
-        Another ending, a folder that does not exist, or axes that do not fit the model.
+        Another ending, a folder that does not exist or may not be written, or axes that do not fit the model.
 
     Examples
     --------
@@ -58,21 +95,35 @@ def picture(source: Model | Region, path: str | os.PathLike[str], view: View | N
     >>> import polywalk as pw
     >>> model = pw.from_algebra(maximize="x", constraints={"both": "x + y <= 3"}, bounds={"x": (0, 2), "y": (0, 2)})
     >>> with tempfile.TemporaryDirectory() as folder:
-    ...     pw.picture(model, pathlib.Path(folder) / "region.svg").name
-    'region.svg'
+    ...     pw.picture(model, pathlib.Path(folder) / "region.pdf")
+    picture of a region (pdf, region.pdf)
     """
-    target = Path(path)
-    if target.suffix.lower() not in ENDINGS:
-        raise DrawingError(f"expected a file ending in {', '.join(ENDINGS)}, got {target.name!r}.", culprit=target)
-    if not target.parent.is_dir():
-        raise DrawingError(f"the folder {str(target.parent)!r} does not exist; create it first.", culprit=target)
+    target = None if path is None else _target(Path(path))
+    ending = target.suffix.lower()[1:] if target else "svg"
     looked = viewed(view, changes)
-    content = rendered(scene(source, looked), THEMES[looked.mode], target.suffix.lower()[1:])
-    with tempfile.NamedTemporaryFile(dir=target.parent, suffix=target.suffix, delete=False) as file:
-        file.write(content)
-    os.chmod(file.name, 0o644)
-    os.replace(file.name, target)
-    return target
+    data = rendered(scene(source, looked), THEMES[looked.mode], ending)
+    if target is not None:
+        _write(target, data)
+    return Picture(data, ending, target)
+
+
+def _target(path: Path) -> Path:
+    if path.suffix.lower() not in ENDINGS:
+        raise DrawingError(f"expected a file ending in {', '.join(ENDINGS)}, got {path.name!r}.", culprit=path)
+    if not path.parent.is_dir():
+        raise DrawingError(f"the folder {str(path.parent)!r} does not exist; create it first.", culprit=path)
+    return path
+
+
+def _write(target: Path, data: bytes) -> None:
+    """Replace a file in one step, so that it is never half-written."""
+    try:
+        with tempfile.NamedTemporaryFile(dir=target.parent, suffix=target.suffix, delete=False) as file:
+            file.write(data)
+        os.chmod(file.name, 0o644)
+        os.replace(file.name, target)
+    except OSError as error:
+        raise DrawingError(f"{str(target)!r} could not be written ({error.strerror}).", culprit=target) from error
 
 
 def rendered(drawn: Scene, theme: Theme, ending: str = "svg") -> bytes:
