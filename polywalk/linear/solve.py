@@ -41,30 +41,25 @@ def solve(model: Model) -> Solved:
     start = crash(dictionary_of(model))
     if start.contradiction is not None:
         return Solved("infeasible", start.dictionary, start.contradiction)
-    dictionary = start.dictionary
-    if not dictionary.feasible:
-        dictionary = _phase_one(dictionary)
-        if dictionary.phase == 1:
-            return Solved("infeasible", dictionary, dictionary.basic.index(dictionary.slacks.auxiliary))
-    slope = _sloping_line(dictionary, start.lines)
-    if slope is not None:
-        return Solved("unbounded", dictionary, slope)
-    dictionary, column = bland(dictionary)
+    dictionary, column = bland(_eased(start.dictionary))
+    if dictionary.phase == 1:
+        return Solved("infeasible", dictionary, dictionary.basic.index(dictionary.slacks.auxiliary))
+    if column is None:
+        column = _sloping_line(dictionary, start.lines)
     return Solved("optimal" if column is None else "unbounded", dictionary, column)
 
 
 def bland(dictionary: Dictionary) -> tuple[Dictionary, int | None]:
-    """Bland's rule to the end of the phase: the lowest index enters, the lowest index leaves.
+    """Bland's rule to the end, through Phase I where the auxiliary is basic: lowest index enters, lowest index leaves.
 
     Returns
     -------
     dictionary : Dictionary
-        The last one; Phase I ends as soon as the auxiliary leaves, and its column is dropped.
+        The last one; still with the auxiliary where it cannot be driven to zero.
     column : int or None
-        The column of a ray, None at an optimum.
+        The column of a ray, None where nothing improves.
     """
-    phase = dictionary.phase
-    while dictionary.phase == phase and (columns := dictionary.improving()):
+    while columns := dictionary.improving():
         column = min(columns, key=dictionary.nonbasic.__getitem__)
         rows = dictionary.first_to_run_out(column)
         if not rows:
@@ -73,11 +68,13 @@ def bland(dictionary: Dictionary) -> tuple[Dictionary, int | None]:
     return dictionary, None
 
 
-def _phase_one(dictionary: Dictionary) -> Dictionary:
-    """Feasible and without the auxiliary, or with the auxiliary at its least value above 0."""
+def _eased(dictionary: Dictionary) -> Dictionary:
+    """Feasible as it is, or made so by the auxiliary variable."""
+    if dictionary.feasible:
+        return dictionary
     row = min(most_violated(dictionary), key=dictionary.basic.__getitem__)
     eased = relaxed(dictionary)
-    return bland(eased.pivot(row, len(eased.nonbasic) - 1))[0]
+    return eased.pivot(row, len(eased.nonbasic) - 1)
 
 
 def _sloping_line(dictionary: Dictionary, lines: tuple[int, ...]) -> int | None:
