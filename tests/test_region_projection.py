@@ -32,6 +32,7 @@ def test_a_flat_shadow_keeps_its_equality_and_its_name() -> None:
     model = build("x y z", [*XYZ, ("gap", [1, -1, 0], "==", 0), ("sum", [0, 1, 1], "<=", 3)])
     found = project(region(model), ["x", "y"])
     assert found.dimension == 1
+    assert [row.name for row in found.model.constraints] == ["x lower & y lower", "z lower & sum", "gap"]
     assert rows(found.model)[-1] == "gap: x - y = 0"
     assert [vertex.point for vertex in found.vertices] == [(0, 0), (3, 3)]
 
