@@ -71,6 +71,7 @@ PIXELS = """(k) => {
 }"""
 
 CAMERA = "(k) => document.querySelectorAll('.polywalk-figure')[k]._fullLayout.scene._scene.getCamera().eye"
+ZOOM = "(k) => document.querySelectorAll('.polywalk-figure')[k]._fullLayout.scene._scene.glplot.getAspectratio().x"
 DRAWINGS = "(k) => Number(document.querySelectorAll('.polywalk-figure')[k].dataset.drawn ?? 0)"
 
 
@@ -96,6 +97,10 @@ class Lab:
     def drawn(self, which: int = 0) -> None:
         """Wait until that figure is on the page."""
         self.page.wait_for_function(DRAWN, arg=which)
+        self.frames()
+
+    def frames(self) -> None:
+        """Wait for two frames of animation."""
         self.page.evaluate("() => new Promise((d) => requestAnimationFrame(() => requestAnimationFrame(d)))")
 
     def redrawn(self, since: int, which: int = 0) -> None:
@@ -128,6 +133,10 @@ class Lab:
         """Where the eye is."""
         eye = self.page.evaluate(CAMERA, which)
         return tuple(eye[axis] for axis in "xyz")
+
+    def zoom(self, which: int = 0) -> float:
+        """How large the scene is drawn."""
+        return float(self.page.evaluate(ZOOM, which))
 
     def shoot(self, what: str) -> None:
         """Keep a screenshot."""

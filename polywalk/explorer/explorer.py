@@ -21,8 +21,8 @@ from polywalk.model import Model
 STEPS = {"ArrowLeft": -1, "ArrowRight": +1}
 NEIGHBOURS = {"ArrowUp": -1, "ArrowDown": +1}
 HELP = (
-    "Click a vertex to select it. With the picture focused, the arrow keys left and right step through the walk, "
-    "up and down select vertices."
+    "Click a vertex to select it, drag to turn or move the picture. Once you clicked into it, the wheel zooms, the "
+    "arrow keys left and right step through the walk, up and down select vertices."
 )
 
 

@@ -16,6 +16,9 @@ from polywalk.walks import Walk, walk
 from polywalk.walks.rules import ENTERING
 
 LARGEST_PICTURE = 3
+SETTABLE = ("rules", "start", "axes", "step", "vertex", "camera", "dark")
+"""In this order, for another rule begins its walk anew and a step moves the selection along."""
+
 RULES = tuple(rule.name for rule in ENTERING)
 
 
@@ -68,9 +71,13 @@ class State(HasTraits):
 
     def __init__(self, model: Model, **traits: Any) -> None:
         super().__init__()
+        for name in traits:
+            if name not in SETTABLE:
+                raise unknown("trait", name, SETTABLE, "the explorer")
         self.model = model
-        for name, value in traits.items():
-            setattr(self, name, value)
+        for name in SETTABLE:
+            if name in traits:
+                setattr(self, name, traits[name])
 
     @validate("model")
     def _enumerated(self, proposal: Any) -> Model:
@@ -83,7 +90,8 @@ class State(HasTraits):
         index: int | None = proposal["value"]
         count = len(self.region.vertices)
         if index is not None and not 0 <= index < count:
-            raise UnknownName(f"expected the index of a vertex, 0 to {count - 1}, got {index}.", index)
+            known = f"0 to {count - 1}" if count else "but the region has none"
+            raise UnknownName(f"expected the index of a vertex, {known}, got {index}.", index)
         return index
 
     @validate("rules")

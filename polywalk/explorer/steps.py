@@ -76,7 +76,7 @@ def _ratios(walk: Walk, pivot: Pivot) -> str:
     lines = [
         (
             f"<b>{escape(ratio.name)}</b>" if ratio.leaves else escape(ratio.name),
-            escape(_rule(walk, pivot, ratio.name)),
+            escape(_rule(walk, ratio.name)),
             number(ratio.slack),
             number(ratio.rate),
             "never" if ratio.ratio is None else number(ratio.ratio),
@@ -87,8 +87,7 @@ def _ratios(walk: Walk, pivot: Pivot) -> str:
     return grid(columns, lines, numbers={2, 3, 4})
 
 
-def _rule(walk: Walk, pivot: Pivot, name: str) -> str:
-    """The constraint behind a slack, as people write it."""
-    slacks = pivot.before.slacks
-    place = slacks.items[slacks.names.index(name)].constraint
-    return "" if place is None else walk.model.constraints[place].text(walk.model.variables)
+def _rule(walk: Walk, name: str) -> str:
+    """The constraint behind a slack, as people write it; the auxiliary has none."""
+    constraint = walk.constraint_of.get(name)
+    return "" if constraint is None else walk.model.constraint(constraint).text(walk.model.variables)

@@ -38,13 +38,20 @@ function scenes(plot) {
   return Object.entries(plot._fullLayout ?? {}).filter(([, part]) => part?._scene?.glplot);
 }
 
-// The live camera: the stored one lags behind while the scene is turned.
-function withCamera(plot, layout) {
+// The layout with the live camera and zoom: the stored camera lags behind while the scene is turned, and the wheel
+// zooms an orthographic scene by its aspect ratio. `given` holds the ratios before any zoom.
+function asSeen(plot, layout, given) {
   const kept = { ...layout };
-  if (plot._fullLayout?.uirevision !== layout.uirevision) return kept;
+  const same = plot._fullLayout?.uirevision === layout.uirevision;
   for (const [name, part] of scenes(plot)) {
-    if (kept[name]) kept[name] = { ...kept[name], camera: part._scene.getCamera() };
+    if (!same || !kept[name]) continue;
+    const scene = { ...kept[name], camera: part._scene.getCamera() };
+    const zoom = part._scene.glplot.getAspectratio().x / given[name];
+    const ratio = Object.entries(scene.aspectratio ?? {}).map(([axis, length]) => [axis, length * zoom]);
+    if (zoom > 0 && ratio.length) scene.aspectratio = Object.fromEntries(ratio);
+    kept[name] = scene;
   }
+  for (const [name, part] of Object.entries(layout)) given[name] = part?.aspectratio?.x;
   return kept;
 }
 
@@ -106,6 +113,7 @@ function render({ model, el }) {
 
   const ended = new AbortController();
   const until = { signal: ended.signal, capture: true };
+  const given = {};
   let Plotly = null;
   let pressed = null;
   let waiting = false;
@@ -126,8 +134,8 @@ function render({ model, el }) {
     }
     const figure = model.get("figure");
     if (!figure.data || ended.signal.aborted) return;
-    const config = { displaylogo: false, responsive: false, scrollZoom: true, ...figure.config };
-    await Plotly.react(plot, figure.data, withCamera(plot, figure.layout), config);
+    const config = { displaylogo: false, responsive: false, scrollZoom: true };
+    await Plotly.react(plot, figure.data, asSeen(plot, figure.layout, given), config);
     note.hidden = true;
     plot.dataset.drawn = Number(plot.dataset.drawn ?? 0) + 1;
   };
@@ -136,6 +144,7 @@ function render({ model, el }) {
 
   plot.addEventListener("pointerdown", (event) => {
     if (event.button !== 0 || event.target.closest(".modebar, .legend")) return;
+    plot.focus({ preventScroll: true });
     pressed = { x: event.clientX, y: event.clientY, vertex: vertexAt(plot, event.clientX, event.clientY) };
   }, until);
   for (const kind of ["pointerup", "pointercancel"]) {
@@ -149,6 +158,9 @@ function render({ model, el }) {
       if (waiting) show();
     }, until);
   }
+  plot.addEventListener("wheel", (event) => { // the page scrolls past a picture that nobody is working in
+    if (!plot.contains(document.activeElement)) event.stopPropagation();
+  }, until);
   const report = () => requestAnimationFrame(() => {
     for (const [, part] of scenes(plot)) model.send({ kind: "camera", camera: part._scene.getCamera() });
   });

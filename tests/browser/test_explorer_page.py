@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from lab import Lab
+from lab import ZOOM, Lab
 
 pytestmark = pytest.mark.browser
 
@@ -31,6 +31,7 @@ def test_click_rotate_and_step_through_a_walk(lab: Lab) -> None:
     assert "optimum" in lab.page.locator(".polywalk-verdict").inner_text()
     rows = lab.page.get_by_role("grid", name="vertices").locator("tbody tr")
     assert rows.count() == int(lab.ask("print(len(explorer.state.region.vertices))"))
+    the_wheel_zooms_only_where_one_works(lab)
     clicked = clicks_select(lab)
     lab.shoot("2 a vertex clicked")
     turned = a_drag_turns_and_queues(lab, clicked)
@@ -38,6 +39,26 @@ def test_click_rotate_and_step_through_a_walk(lab: Lab) -> None:
     buttons_rows_and_keys_step(lab)
     assert near(lab.camera(), turned)
     assert lab.errors == []
+
+
+def the_wheel_zooms_only_where_one_works(lab: Lab) -> None:
+    """The page scrolls past the picture until one clicks into it; what the wheel zooms stays zoomed."""
+    page, first = lab.page, lab.zoom()
+    box = page.locator(".polywalk-figure").bounding_box()
+    page.mouse.move(box["x"] + box["width"] - 30, box["y"] + 60)
+    page.mouse.wheel(0, -10)
+    lab.frames()
+    assert lab.zoom() == first
+    page.mouse.down()
+    page.mouse.up()
+    page.mouse.wheel(0, -60)
+    page.wait_for_function(f"() => ({ZOOM})(0) > {first}")
+    zoomed, drawn = lab.zoom(), lab.drawings()
+    page.keyboard.press("ArrowDown")
+    lab.redrawn(drawn)
+    assert abs(lab.zoom() - zoomed) < 1e-6
+    page.mouse.wheel(0, 60)
+    page.wait_for_function(f"() => Math.abs(({ZOOM})(0) - {first}) < 0.02")
 
 
 def clicks_select(lab: Lab) -> int:
@@ -54,9 +75,10 @@ def clicks_select(lab: Lab) -> int:
         lab.page.mouse.up()
         lab.until("print(explorer.state.vertex)", str(index))
         lab.redrawn(drawn)
-    selected = lab.page.get_by_role("grid", name="vertices").locator("tr[aria-selected=true] td")
-    assert selected.first.inner_text() == f"V{index + 1}"
-    assert lab.page.get_by_role("heading", name=f"Vertex V{index + 1}").is_visible()
+    name = f"V{index}"
+    lab.page.get_by_role("heading", name=f"Vertex {name}").wait_for()
+    selected = lab.page.get_by_role("grid", name="vertices").locator("tr[aria-selected=true] td", has_text=name)
+    selected.first.wait_for()
     return index
 
 

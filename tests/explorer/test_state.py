@@ -106,6 +106,13 @@ def test_a_start_is_a_vertex_and_the_walk_begins_there() -> None:
     assert not state.walks[0].pivots
 
 
+def test_start_values_may_come_in_any_order() -> None:
+    state = State(square(), vertex=0, step=2, rules=("bland",))
+    assert (state.vertex, state.step, state.rules) == (0, 2, ("bland",))
+    with pytest.raises(pw.PolywalkError, match="did you mean 'vertex'"):
+        State(square(), vertx=0)
+
+
 def test_one_change_draws_once() -> None:
     state = State(square())
     drawn: list[object] = []
