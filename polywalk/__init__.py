@@ -17,6 +17,8 @@ _ROOMS = {
     "from_algebra": "polywalk.reading",
     "from_arrays": "polywalk.reading",
     "from_scipy": "polywalk.reading",
+    "farkas": "polywalk.linear",
+    "improving_ray": "polywalk.linear",
     "optimum": "polywalk.linear",
     "Walk": "polywalk.walks",
     "walk": "polywalk.walks",
