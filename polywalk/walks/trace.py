@@ -92,8 +92,7 @@ class _Rules(NamedTuple):
 def _follow(now: Dictionary, rules: _Rules, limit: int) -> tuple[list[Pivot], End, tuple[Pivot, ...]]:
     """Pivot until the rule has nothing to choose, nothing runs out, a basis comes back, or the limit is reached.
 
-    The rules depend on the basis alone, so that the walk cycles exactly if a basis comes back. A step of positive
-    length changes the objective for good: only the bases met since then can come back.
+    The rules depend on the basis alone, so that the walk cycles exactly if a basis comes back.
     """
     pivots: list[Pivot] = []
     met = {frozenset(now.basic): 0}
@@ -104,8 +103,6 @@ def _follow(now: Dictionary, rules: _Rules, limit: int) -> tuple[list[Pivot], En
         now = pivot.after
         if pivot.kind == "ray":
             return pivots, "unbounded", ()
-        if pivot.kind == "step":
-            met.clear()
         basis = frozenset(now.basic)
         if basis in met:
             return pivots, "cycling", tuple(pivots[met[basis] :])

@@ -147,6 +147,12 @@ def test_violation_is_measured_on_the_rows_as_typed():
     assert walk(model).pivots[0].leaving == "r1"
 
 
+def test_of_equal_violations_the_lowest_index_makes_room():
+    model = typed("max", [0, 0], [([2, 1], ">=", 2), ([1, 2], ">=", 2)], lower=0, names="xy")
+    assert walk(model).pivots[0].leaving == "r1"
+    assert walk(model, order=["r2", "r1", "x", "y"]).pivots[0].leaving == "r2"
+
+
 def test_infeasible_walk_has_no_point_and_contradictory_equalities_need_no_pivot():
     walked = walk(typed("max", [1], [([1], "<=", -1)], lower=0))
     assert (walked.end, walked.point, walked.value, walked.ray) == ("infeasible", None, None, None)
