@@ -81,19 +81,19 @@ class Dictionary:
         added = turned.copy()
         added[place] -= new  # so that below the column's own entry becomes plus or minus the rate
 
-        def substituted(line: Integers) -> Integers:
+        lines = []
+        for line in (*self.rows, self.cost):
             rate = line[place]
-            if rate == 0:
-                return line if new == old else tuple([value * new // old for value in line])
-            return tuple([(value * new + rate * other) // old for value, other in zip(line, added, strict=True)])
-
-        rows = [substituted(line) for line in self.rows]
-        rows[row] = tuple(turned)
+            if rate:
+                pairs = zip(line, added, strict=True)
+                lines.append(tuple([(value * new + rate * other) // old for value, other in pairs]))
+            else:
+                lines.append(line if new == old else tuple([value * new // old for value in line]))
+        lines[row] = tuple(turned)
         basic, nonbasic = list(self.basic), list(self.nonbasic)
         basic[row], nonbasic[column] = nonbasic[column], basic[row]
-        return Dictionary(
-            self.slacks, tuple(basic), tuple(nonbasic), tuple(rows), substituted(self.cost), new, self.relaxed_slacks
-        )
+        rows, cost = tuple(lines[:-1]), lines[-1]
+        return Dictionary(self.slacks, tuple(basic), tuple(nonbasic), rows, cost, new, self.relaxed_slacks)
 
     @cached_property
     def phase(self) -> int:

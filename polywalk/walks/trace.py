@@ -103,6 +103,8 @@ def _follow(now: Dictionary, rules: _Rules, limit: int) -> tuple[list[Pivot], En
         now = pivot.after
         if pivot.kind == "ray":
             return pivots, "unbounded", ()
+        if pivot.kind == "step":
+            met.clear()  # no basis met before a step comes back: the objective has changed for good
         basis = frozenset(now.basic)
         if basis in met:
             return pivots, "cycling", tuple(pivots[met[basis] :])

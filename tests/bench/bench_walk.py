@@ -3,8 +3,8 @@
 Run: python tests/bench/bench_walk.py
 Klee-Minty cubes in the 2/5 form (Klee & Minty 1972), Dantzig's rule: 31 pivots for n = 5, 4,095 for n = 12. Informs,
 never fails.
-The sides are run in turn and the best time of each is compared, which other work on the machine disturbs
-least (as the documentation of Python's timeit advises); sympy's pivots are counted by its own pivot function.
+The sides are run in turn; told is the median of the ratios of neighbouring runs, which other work on the machine
+disturbs alike; sympy's pivots are counted by its own pivot function.
 """
 
 from __future__ import annotations
@@ -13,6 +13,7 @@ import time
 import tracemalloc
 from collections.abc import Callable
 from fractions import Fraction
+from statistics import median
 
 import sympy
 import sympy.solvers.simplex as peer
@@ -112,9 +113,16 @@ def against_peer(n: int = 5, rounds: int = 7) -> None:
         read.append(seconds(lambda: everything(walk(model))) / pivots)
         spent, count = peer_pivots(n)
         theirs.append(spent / count)
-    us, them, full = min(ours), min(theirs), min(read)
+    us, them, full = median(ours), median(theirs), median(read)
     print(f"Klee-Minty n={n}: walk {us * 1e6:.0f} us a pivot ({pivots}), sympy {them * 1e6:.0f} us a pivot ({count})")
-    print(f"  {them / us:.0f}x faster; {them / full:.0f}x with every record read ({full * 1e6:.0f} us)")
+    print(
+        f"  {median_ratio(theirs, ours):.0f}x faster; {median_ratio(theirs, read):.0f}x with every record read ({full * 1e6:.0f} us)"
+    )
+
+
+def median_ratio(longer: list[float], shorter: list[float]) -> float:
+    """The median of the ratios of neighbouring runs."""
+    return median(a / b for a, b in zip(longer, shorter, strict=True))
 
 
 def everything(kept: Walk) -> None:
@@ -128,7 +136,7 @@ def against_bare(n: int = 12, rounds: int = 15) -> None:
     model = model_of(n)
     assert bare(n) == len(walk(model).pivots) == 2**n - 1
     pairs = [(seconds(lambda: walk(model)), seconds(lambda: bare(n))) for _ in range(rounds)]
-    us, them = (min(times) for times in zip(*pairs, strict=True))
+    us, them = (median(times) for times in zip(*pairs, strict=True))
     tracemalloc.start()
     kept = walk(model)
     walked = tracemalloc.get_traced_memory()[1]
@@ -136,7 +144,7 @@ def against_bare(n: int = 12, rounds: int = 15) -> None:
     read = tracemalloc.get_traced_memory()[1]
     tracemalloc.stop()
     print(f"Klee-Minty n={n}, {len(kept.pivots)} pivots: walk {us:.3f} s, bare integer loop {them:.3f} s")
-    print(f"  {us / them:.2f}x; peak memory {walked / 1e6:.0f} MB, {read / 1e6:.0f} MB all read")
+    print(f"  {median(a / b for a, b in pairs):.2f}x; peak memory {walked / 1e6:.0f} MB, {read / 1e6:.0f} MB all read")
 
 
 if __name__ == "__main__":

@@ -66,6 +66,11 @@ def test_a_start_works_beside_equalities_and_free_decisions():
     assert walk(redundant, start=(2, 0, 4)).start == (2, 0, 4)
 
 
+def test_what_is_held_already_is_not_pivoted_away_on_the_way_to_a_start():
+    model = typed("max", [1, 2], [([1, 1], "<=", 3)], lower=0, names="xy")
+    assert walk(model, start=("r1", "x lower")).crash == (("y", "r1"),)
+
+
 @pytest.mark.parametrize(
     ("start", "culprit", "words"),
     [
