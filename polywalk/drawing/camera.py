@@ -19,6 +19,9 @@ TURNS = tuple(side + turn for side in (-90, 0, 90, 180) for turn in (62, 52, 38,
 TILTS = (16, 24, 32)
 """Angles above the horizontal, in degrees."""
 
+FOREIGN = 0.55
+"""Worth of a view that does not have both horizontal axes running to the right, as people expect them."""
+
 MOST_CORNERS = 24
 """Past this many corners the choice would cost more than the picture; the usual view is taken."""
 
@@ -62,7 +65,7 @@ class Camera:
 
 
 def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
-    """The direction from which no corner hides another or lies on a foreign edge, open sides turned away.
+    """The direction from which the region looks large, no corner hides another, and open sides turn away.
 
     Parameters
     ----------
@@ -80,7 +83,8 @@ def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
     def quality(way: tuple[int, int]) -> float:
         camera = Camera(eye(*way), scale)
         lit = all(inner(camera.scaled(ray), camera.toward) <= 0 for ray in away)
-        return round(_gap(shape, camera) * (1.0 if lit else 0.4), 6)
+        usual = 1.0 if -90 < way[0] < 0 else FOREIGN
+        return round(_gap(shape, camera) * _area(shape, camera) * (1.0 if lit else 0.4) * usual, 6)
 
     return eye(*max(((turn, tilt) for turn in TURNS for tilt in TILTS), key=quality))
 
@@ -93,6 +97,25 @@ def _gap(shape: Shape, camera: Camera) -> float:
     for corner, seen in flat.items():
         gaps += [2 * _distance(seen, p, q) for p, q, a, b in edges if corner not in (a, b)]
     return min(gaps)
+
+
+def _area(shape: Shape, camera: Camera) -> float:
+    """How large the region looks: the area of the convex hull of its corners on paper (Andrew's chain, 1979)."""
+    seen = sorted({camera.see(corner)[:2] for corner in shape.corners})
+    chains: list[list[Point]] = []
+    for points in (seen, seen[::-1]):
+        chain: list[Point] = []
+        for point in points:
+            while len(chain) > 1 and _turn(chain[-2], chain[-1], point) <= 0:
+                chain.pop()
+            chain.append(point)
+        chains.append(chain[:-1])
+    hull = chains[0] + chains[1]
+    return sum(a[0] * b[1] - a[1] * b[0] for a, b in zip(hull, hull[1:] + hull[:1], strict=True)) / 2
+
+
+def _turn(start: Point, middle: Point, end: Point) -> float:
+    return (middle[0] - start[0]) * (end[1] - start[1]) - (middle[1] - start[1]) * (end[0] - start[0])
 
 
 def _distance(point: Point, start: Point, end: Point) -> float:

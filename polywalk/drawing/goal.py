@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from polywalk.drawing.placing import Sheet, about, beside, upright
-from polywalk.drawing.plane import chord
+from polywalk.drawing.plane import BEYOND, chord
 from polywalk.drawing.scene import Label, Layer, Line, Polygon
 from polywalk.drawing.space import slice_of, uphill
 from polywalk.drawing.subject import Subject, floats, planar
@@ -45,7 +45,7 @@ def _direction(subject: Subject, goal: Objective, window: Window, sheet: Sheet |
         return Layer(lines=(line,), labels=(Label(TREND[goal.goal], head, "note", shift=(0, 10)),))
     end = sheet.pixel(head)
     sheet.lines.append((sheet.pixel(foot), end))
-    return Layer(lines=(line,), labels=(sheet.place(TREND[goal.goal], about(end, 34.0), "note"),))
+    return Layer(lines=(line,), labels=(sheet.place(TREND[goal.goal], about(end, TREND[goal.goal]), "note"),))
 
 
 def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | None) -> Layer:
@@ -69,4 +69,5 @@ def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | Non
     )
     sheet.lines.append((start, end))
     label = sheet.place(text, beside(start, end, normal), "note", angle=upright(start, end))
-    return Layer(lines=(Line((ends,), "level line", name=text),), labels=(label,))
+    long = chord(row, window.grown(BEYOND)) or ends
+    return Layer(lines=(Line((long,), "level line", name=text),), labels=(label,))

@@ -149,7 +149,7 @@ def _stays(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
         if frame.sheet is None:
             labels.append(Label(text, point, "stay", index, target=point))
         else:
-            places = about(frame.sheet.pixel(point), 44.0, frame.sheet.pixel(frame.middle))
+            places = about(frame.sheet.pixel(point), text, 30.0, frame.sheet.pixel(frame.middle))
             labels.append(replace(frame.sheet.place(text, places, "stay", index), target=point))
     return labels
 

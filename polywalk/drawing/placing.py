@@ -127,12 +127,15 @@ def beside(start: Point, end: Point, normal: Point, distance: float = 14.0) -> l
     ]
 
 
-def about(centre: Point, distance: float = 16.0, away: Point | None = None) -> list[Point]:
-    """Candidate centres around a mark (pixels); those pointing away from ``away`` come first."""
+def about(centre: Point, text: str, gap: float = 14.0, away: Point | None = None) -> list[Point]:
+    """Candidate centres for a text around a mark (pixels); those pointing away from ``away`` come first."""
+    half = max(GLYPH * SIZE * len(text) / 2 - gap / 2, 0.0)
     ring = [(1, 0), (-1, 0), (0, 1), (0, -1), (0.75, 0.75), (-0.75, 0.75), (0.75, -0.75), (-0.75, -0.75)]
     if away is not None:
         out = (centre[0] - away[0], centre[1] - away[1])
         ring.sort(key=lambda way: -(way[0] * out[0] + way[1] * out[1]))
     return [
-        (centre[0] + spread * distance * x, centre[1] + spread * distance * y) for spread in (1.0, 1.6) for x, y in ring
+        (centre[0] + x * (spread * gap + half), centre[1] + y * spread * gap)
+        for spread in (1.0, 1.7, 2.6)
+        for x, y in ring
     ]

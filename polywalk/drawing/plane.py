@@ -16,6 +16,9 @@ from polywalk.region import vertex_name
 HATCH_GAP, HATCH = 15.0, 7.0
 """Pixels between the short strokes on a constraint's forbidden side, and their length."""
 
+BEYOND = 0.6
+"""How far lines go on past the window, as a share of it: an interactive figure may be wider, and can be moved."""
+
 
 def chord(row: Constraint, window: Window) -> tuple[Point, Point] | None:
     """The part of a constraint's border inside the window, or None where it does not pass."""
@@ -62,6 +65,8 @@ def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) 
         wanted.append((index, row, start, end))
         hover = f"{row.name}\n{row.text(subject.axes)}"
         role = "conflict line" if row.name in conflict else "constraint"
+        ends = chord(row, sheet.window.grown(BEYOND)) or ends
+        start, end = (sheet.pixel(point) for point in ends)
         lines.append(Line((ends,), role, index, row.name, hover))
         if row.sense != "==":
             strokes = tuple((sheet.unpixel(a), sheet.unpixel(b)) for a, b in _hatch(start, end, forbidden(row, sheet)))
@@ -104,7 +109,7 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
         for point in points:
             sheet.keep_clear(point, 8.0)
         labels = [
-            sheet.place(vertex_name(k), about(sheet.pixel(point), away=middle), "point")
+            sheet.place(vertex_name(k), about(sheet.pixel(point), vertex_name(k), 15.0, middle), "point")
             for k, point in enumerate(points)
         ]
     return Layer(marks=tuple(marks), labels=tuple(labels))

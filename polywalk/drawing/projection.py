@@ -149,12 +149,12 @@ def _labels(scene: Scene, on: Paper, front: tuple[Polygon, ...], lines: list[Lin
             placed.append(replace(item, point=spot, role="back tag" if back else item.role))
             sheet.keep_clear(spot, 8.0)
         else:
-            reach = 46.0 if item.target else 20.0 + 2.6 * len(item.text)
-            found = sheet.place(item.text, about(spot, reach), item.role, item.index)
+            gap = 30.0 if item.target else 14.0
+            found = sheet.place(item.text, about(spot, item.text, gap), item.role, item.index)
             placed.append(replace(found, target=spot if item.target else None))
     middle = (PAPER[0] / 2, PAPER[1] / 2)
     vertices = [mark for mark in scene.marks if mark.key is not None]
-    placed += [sheet.place(mark.text, about(on.at(mark.point), 16.0, middle), "point") for mark in vertices]
+    placed += [sheet.place(mark.text, about(on.at(mark.point), mark.text, 15.0, middle), "point") for mark in vertices]
     return tuple(placed)
 
 

@@ -54,6 +54,14 @@ class Window:
         alike = longest <= LIKE * min(self.extent)
         return tuple(1 / (longest if alike else length) for length in self.extent)
 
+    def grown(self, share: float) -> Window:
+        """The window with more room on every side, as a share of its extent."""
+        more = [share * length for length in self.extent]
+        return Window(
+            tuple(a - room for a, room in zip(self.low, more, strict=True)),
+            tuple(b + room for b, room in zip(self.high, more, strict=True)),
+        )
+
     def inside(self, point: Sequence[float], slack: float = 1e-9) -> bool:
         """Whether a point lies in it; the slack only forgives rounding of a drawn coordinate."""
         return all(
