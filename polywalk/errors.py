@@ -70,6 +70,10 @@ class DrawingError(PolywalkError, ValueError):
     """A picture that cannot be made as asked (too many axes, an unknown file ending)."""
 
 
+class ExpectationError(PolywalkError, AssertionError):
+    """A stated expectation of a model that its review does not bear out; ``culprit`` holds the expectations' names."""
+
+
 class BudgetError(PolywalkError, RuntimeError):
     """Work that was ended because it passed its budget of seconds or memory."""
 

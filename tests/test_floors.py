@@ -16,7 +16,7 @@ FLOORS = {
     7: ("__main__", "explorer"),
     6: ("sheet",),
     5: ("drawing", "sweep"),
-    4: ("review", "scenarios"),
+    4: ("reviewing", "scenarios"),
     3: ("walks", "narrowing"),
     2: ("region", "linear", "reading"),
     1: ("errors", "exact", "table", "model", "bigmodel", "budget"),
