@@ -21,6 +21,7 @@ _ROOMS = {
     "improving_ray": "polywalk.linear",
     "optimum": "polywalk.linear",
     "Walk": "polywalk.walks",
+    "bases": "polywalk.walks",
     "walk": "polywalk.walks",
     "scenarios": "polywalk",
     "View": "polywalk.drawing",

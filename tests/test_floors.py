@@ -123,7 +123,7 @@ def test_rooms_load_on_first_use():
 
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
-NAMES |= {"farkas", "improving_ray", "scenarios", "walk"}
+NAMES |= {"bases", "farkas", "improving_ray", "scenarios", "walk"}
 
 
 def test_public_names_are_pinned():

@@ -1,9 +1,27 @@
 """Pivot walks through a region: rules, starts, and every pivot with all it was decided by."""
 
+from polywalk.walks.bases import Bases, bases
+from polywalk.walks.basis import Basis, Exchange, Exit, basis_name
 from polywalk.walks.order import ORDERS
 from polywalk.walks.pivots import Pivot, Ratio
 from polywalk.walks.results import Walk
+from polywalk.walks.routes import Route
 from polywalk.walks.rules import ENTERING, LEAVING
 from polywalk.walks.trace import walk
 
-__all__ = ["ENTERING", "LEAVING", "ORDERS", "Pivot", "Ratio", "Walk", "walk"]
+__all__ = [
+    "ENTERING",
+    "LEAVING",
+    "ORDERS",
+    "Bases",
+    "Basis",
+    "Exchange",
+    "Exit",
+    "Pivot",
+    "Ratio",
+    "Route",
+    "Walk",
+    "bases",
+    "basis_name",
+    "walk",
+]
