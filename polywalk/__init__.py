@@ -22,6 +22,7 @@ _ROOMS = {
     "optimum": "polywalk.linear",
     "Walk": "polywalk.walks",
     "bases": "polywalk.walks",
+    "compare": "polywalk.walks",
     "walk": "polywalk.walks",
     "scenarios": "polywalk",
     "View": "polywalk.drawing",

@@ -19,12 +19,12 @@ FLOORS = {
     4: ("reviewing", "scenarios"),
     3: ("walks", "narrowing"),
     2: ("region", "linear", "reading"),
-    1: ("errors", "exact", "table", "model", "bigmodel", "budget"),
+    1: ("errors", "exact", "table", "model", "bigmodel", "budget", "progress"),
 }
 """Room -> floor, as in DESIGN section 2."""
 
 GROUND = {"errors": (), "exact": ("errors",), "table": ("errors", "exact"), "model": ("errors", "exact", "table")}
-GROUND |= {"bigmodel": ("errors", "exact", "table", "model"), "budget": ("errors",)}
+GROUND |= {"bigmodel": ("errors", "exact", "table", "model"), "budget": ("errors",), "progress": ()}
 """On the ground floor, which room may import which: errors < exact < table < model < bigmodel, budget above errors."""
 
 FLOOR = {room: floor for floor, rooms in FLOORS.items() for room in rooms}
@@ -123,7 +123,7 @@ def test_rooms_load_on_first_use():
 
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
-NAMES |= {"bases", "farkas", "improving_ray", "scenarios", "walk"}
+NAMES |= {"compare", "bases", "farkas", "improving_ray", "scenarios", "walk"}
 
 
 def test_public_names_are_pinned():

@@ -2,6 +2,8 @@
 
 from polywalk.walks.bases import Bases, bases
 from polywalk.walks.basis import Basis, Exchange, Exit, basis_name
+from polywalk.walks.compare import compare
+from polywalk.walks.comparison import Comparison
 from polywalk.walks.order import ORDERS
 from polywalk.walks.pivots import Pivot, Ratio
 from polywalk.walks.results import Walk
@@ -15,6 +17,7 @@ __all__ = [
     "ORDERS",
     "Bases",
     "Basis",
+    "Comparison",
     "Exchange",
     "Exit",
     "Pivot",
@@ -23,5 +26,6 @@ __all__ = [
     "Walk",
     "bases",
     "basis_name",
+    "compare",
     "walk",
 ]

@@ -66,7 +66,7 @@ def _basis_names(model: Model, dictionary: Dictionary, start: object) -> list[st
 
 def _at_basis(model: Model, first: Crash, names: list[str]) -> Crash:
     known = first.dictionary.slacks.of_constraint
-    done, held = _hold(first, [known[name] for name in names])
+    done, held = hold(first, [known[name] for name in names])
     for name in names:
         if known[name] not in held:
             raise WalkError(
@@ -83,7 +83,7 @@ def _at_vertex(model: Model, first: Crash, point: Row, rank: Sequence[int]) -> C
     _check_inside(model, point, "the start")
     known = first.dictionary.slacks.of_constraint
     touching = [known[row.name] for row in model.constraints if _touches(row, point)]
-    done, held = _hold(first, sorted(touching, key=rank.__getitem__))
+    done, held = hold(first, sorted(touching, key=rank.__getitem__))
     if len(held) < model.n:
         raise WalkError(
             f"the start {_told(point)} is no vertex: only {len(held)} independent constraints are active there, "
@@ -93,7 +93,7 @@ def _at_vertex(model: Model, first: Crash, point: Row, rank: Sequence[int]) -> C
     return done
 
 
-def _hold(first: Crash, wanted: list[int]) -> tuple[Crash, set[int]]:
+def hold(first: Crash, wanted: list[int]) -> tuple[Crash, set[int]]:
     """Pivot the wanted slacks to 0, one after another; those that follow from the ones before are passed over."""
     items = first.dictionary.slacks.items
     held = {k for k in first.dictionary.nonbasic if items[k].kind == "equality"}

@@ -1,0 +1,132 @@
+"""Pivot rules compared: every pair of rules from every start, beside what no rule can beat."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from itertools import groupby
+from math import dist
+from typing import Any
+
+from polywalk.errors import WalkError
+from polywalk.linear import Crash, dictionary_of
+from polywalk.model import Model
+from polywalk.progress import progress
+from polywalk.region import region
+from polywalk.walks.comparison import Comparison
+from polywalk.walks.order import ranks
+from polywalk.walks.results import Walk
+from polywalk.walks.rules import ENTERING, entering_rule, leaving_rule
+from polywalk.walks.shared import shared
+from polywalk.walks.standings import Pair, Tally
+from polywalk.walks.starts import Start, Starts, opened_at
+from polywalk.walks.trace import _follow, _Rules
+from polywalk.walks.yardsticks import Yardsticks, yardsticks
+
+Rule = Any
+"""An entering rule as ``walk`` takes it, or a pair (entering, leaving)."""
+
+
+def compare(  # noqa: PLR0917 (the order of walk, as far as it goes)
+    model: Model,
+    rules: Sequence[Rule] | Rule | None = None,
+    starts: Starts = None,
+    leaving: str = "lowest-index",
+    order: str | Sequence[str] | None = None,
+    seed: int = 0,
+    limit: int = 10_000,
+) -> Comparison:
+    """Walk with every rule from every start, and say which rule to trust.
+
+    Longer work shows a progress bar in a notebook or a terminal. Ctrl-C keeps the walks that are finished: the
+    comparison is returned with ``complete`` False and says so.
+
+    Parameters
+    ----------
+    model : Model
+        An integer-marked model is walked as its relaxation.
+    rules : optional
+        Entering rules as ``walk`` takes them, or pairs of an entering and a leaving rule; by default every entering
+        rule there is.
+    starts : None, "vertices", "bases" or sequence, optional
+        None: at rest, as ``walk`` starts by default. "vertices": every vertex of the region, at the basis that
+        holds the lowest indices active. "bases": every basis of every vertex. Else a list of starts as ``walk`` takes
+        them.
+    leaving : str, optional
+        The leaving rule of those entering rules that are not given in a pair.
+    order, seed, limit : optional
+        As in ``walk``; every walk draws its lots from the same seed.
+
+    Returns
+    -------
+    Comparison
+
+    Raises
+    ------
+    WalkError
+        An unknown rule, a start that is no vertex or basis, a region with a line, no start at all.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> print(pw.compare(pw.scenarios.klee_minty(3), rules=["dantzig", "bland"]).recommendation)
+    recommendation: bland needs 5 pivots from rest (V0), fewer than any other. It holds for this model and these \
+starts, and proves nothing for others.
+    """
+    pairs = _pairs(rules, leaving)
+    first = shared(dictionary_of(model))
+    rank = ranks(first.slacks, order)
+    space = region(model)
+    begun = opened_at(first, space, starts, rank)
+    jobs = [(pair, start, opened) for start, opened in begun for pair in pairs]
+    tallies, complete = list[Tally](), True
+    measured = yardsticks(space)
+    try:
+        for pair, start, opened in progress(jobs, len(jobs), "walks"):
+            tallies.append(_tally(pair, start, _walked(model, pair, opened, rank, limit), measured))
+    except KeyboardInterrupt:
+        if not tallies:
+            raise
+        complete = False
+    named = tuple(first.slacks.names[k] for k in sorted(range(first.slacks.auxiliary), key=rank.__getitem__))
+    started = tuple(start for start, _ in begun)
+    return Comparison(model, tuple(tallies), started, pairs, named, seed, limit, complete)
+
+
+def _pairs(rules: Sequence[Rule] | Rule | None, leaving: str) -> tuple[Pair, ...]:
+    if rules is None:
+        listed: list[Rule] = [rule.name for rule in ENTERING]
+    else:
+        listed = [rules] if isinstance(rules, str) or not isinstance(rules, Sequence) else list(rules)
+    if not listed:
+        raise WalkError("the list of rules is empty; leave rules out to compare all.", culprit=rules)
+    given = [rule if isinstance(rule, tuple) else (rule, leaving) for rule in listed]
+    return tuple(Pair(entering_rule(one).name, leaving_rule(other).name, (one, other)) for one, other in given)
+
+
+def _walked(model: Model, pair: Pair, opened: Crash, rank: Sequence[int], limit: int) -> Walk:
+    rules = _Rules(entering_rule(pair.given[0]).choose, leaving_rule(pair.given[1]).choose, rank)
+    first = opened.dictionary
+    if opened.contradiction is not None:
+        return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, (), "infeasible")
+    pivots, end, cycle = _follow(first, rules, limit)
+    return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, tuple(pivots), end, cycle)
+
+
+def _tally(pair: Pair, start: Start, walked: Walk, measured: Yardsticks) -> Tally:
+    kinds = [pivot.kind for pivot in walked.pivots]
+    legs = [(pivot.point_before, pivot.point_after) for pivot in walked.pivots if pivot.kind == "step"]
+    moved = [(one, other) for one, other in legs if one != other]
+    here = start.vertex
+    return Tally(
+        pair,
+        start,
+        pivots=len(kinds) - kinds.count("ray"),
+        moves=len(moved),
+        stays=walked.stays,
+        stall=max((len(list(run)) for kind, run in groupby(kinds) if kind == "degenerate"), default=0),
+        length=sum(dist(*leg) for leg in moved),
+        end=walked.end,
+        value=walked.value,
+        shortest=None if here is None else measured.shortest[here],
+        improving=None if here is None else measured.improving[here],
+    )
