@@ -11,7 +11,7 @@ Schrijver, Theory of Linear and Integer Programming, 1986, chapter 7 (duality, c
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
@@ -85,7 +85,7 @@ class OptimalDuals:
     def face(self) -> Model:
         """The optimal duals as a model over the tight constraints' multipliers."""
         rows = [self.model.constraints[i] for i in self.tight]
-        return _dual_rows(self.model, rows, [f"y{i}" for i in self.tight])
+        return dual_rows(self.model, rows, [f"y{i}" for i in self.tight])
 
     def extremes(self, name: str) -> tuple[Extended, Extended]:
         """The least and the greatest multiplier of a constraint among all optimal duals."""
@@ -139,15 +139,19 @@ def dual_model(model: Model) -> Model:
     Its optimal value is the model's; its other optimal duals are the model's optimal points.
     """
     names = [f"y{i}" for i in range(len(model.constraints))]
-    dual = _dual_rows(model, model.constraints, names)
+    dual = dual_rows(model, model.constraints, names)
     rhs = tuple(row.rhs for row in model.constraints) or (ZERO,)
     assert model.objective is not None
     goal: Goal = "min" if model.objective.goal == "max" else "max"
     return Model(dual.variables, dual.constraints, Objective(goal, rhs, model.objective.constant))
 
 
-def _dual_rows(model: Model, rows: tuple[Constraint, ...] | list[Constraint], names: list[str]) -> Model:
-    """The rows, multiplied and added, are the objective; each multiplier has its constraint's sign."""
+def dual_rows(model: Model, rows: Sequence[Constraint], names: list[str]) -> Model:
+    """The model of all multipliers of these rows that are dual feasible.
+
+    The rows, multiplied and added, are the objective (one equality a variable, named c0, c1, ...); each multiplier has
+    its constraint's sign.
+    """
     assert model.objective is not None
     signs = [_sign(row.sense, model.objective.goal) for row in rows]
     if not rows:  # a model needs a variable: one that is 0
@@ -167,6 +171,12 @@ def _sign(sense: Sense, goal: Goal) -> Sense | None:
     if sense == "==":
         return None
     return ">=" if (sense == "<=") == (goal == "max") else "<="
+
+
+def keeps_sign(sense: Sense, goal: Goal, price: Fraction) -> bool:
+    """Whether a price has the sign that the constraint's sense and the goal ask for."""
+    asked = _sign(sense, goal)
+    return asked is None or (price >= 0 if asked == ">=" else price <= 0)
 
 
 def _end(model: Model, goal: Goal, costs: Row) -> Extended:
