@@ -24,6 +24,7 @@ _ROOMS = {
     "bases": "polywalk.walks",
     "compare": "polywalk.walks",
     "walk": "polywalk.walks",
+    "review": "polywalk.reviewing",
     "scenarios": "polywalk",
     "View": "polywalk.drawing",
     "draw": "polywalk.drawing",

@@ -124,6 +124,7 @@ def test_rooms_load_on_first_use():
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "farkas", "improving_ray", "scenarios", "walk"}
+NAMES |= {"review"}
 
 
 def test_public_names_are_pinned():
