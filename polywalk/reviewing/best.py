@@ -37,7 +37,7 @@ class BestPoint:
 def best_points(source: Model | Region, best: Optimum) -> tuple[tuple[BestPoint, ...], tuple[Row, ...]]:
     """The optimal vertices, and the directions in which the optimal points go on for ever."""
     model = best.model
-    whole = source if isinstance(source, Region) else region(model) if _small(model) else None
+    whole = source if isinstance(source, Region) else region(model) if is_small(model) else None
     if whole is not None and whole.optimal is not None:
         face = whole.optimal
         points = [(_name(whole, k), whole.base[k]) for k in face.vertices]
@@ -60,7 +60,7 @@ def active(model: Model, point: Row) -> tuple[str, ...]:
     return tuple(row.name for row in model.constraints if not row.is_constant and row.slack(point) == 0)
 
 
-def _small(model: Model) -> bool:
+def is_small(model: Model) -> bool:
     return work(model.n, len(model.constraints)) <= SMALL_WORK
 
 

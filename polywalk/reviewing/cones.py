@@ -17,9 +17,10 @@ from fractions import Fraction
 from polywalk.exact import Row, dot, exact, linear, primitive
 from polywalk.model import Goal, Model
 from polywalk.region import Region, region, vertex_name
-from polywalk.table import Shown, Table
+from polywalk.table import Shown, Table, cell
 
 SIGN = {"max": "≤", "min": "≥"}
+TURNED = {"≤": "≥", "≥": "≤", "=": "="}
 
 
 @dataclass(frozen=True)
@@ -102,12 +103,14 @@ class Cone(Shown):
         names = [f"cost of {name}" for name in self.model.variables]
         rows = []
         for condition in self.conditions:
-            sign = "=" if condition.toward.startswith("line") else SIGN[self.goal]
-            rows.append((condition.toward, f"{linear(condition.direction, names)} {sign} 0"))
-        made = [f"{name} {_told(costs)}" for name, costs in self.generators]
-        made += [f"{name} ±{_told(costs)}" for name, costs in self.lines]
+            way, sign = condition.direction, "=" if condition.toward.startswith("line") else SIGN[self.goal]
+            if next(value for value in way if value) < 0:
+                way, sign = tuple(-value for value in way), TURNED[sign]
+            rows.append((condition.toward, f"{linear(way, names)} {sign} 0"))
+        made = [f"{name} {cell(costs)}" for name, costs in self.generators]
+        made += [f"{name} ±{cell(costs)}" for name, costs in self.lines]
         word = "maximize" if self.goal == "max" else "minimize"
-        title = f"{self.name} {_told(self.point)} is optimal ({word}) as long as"
+        title = f"{self.name} {cell(self.point)} is optimal ({word}) as long as"
         return Table(title, ("beside", "condition"), tuple(rows), (f"made of {'; '.join(made) or 'nothing'}",))
 
 
@@ -157,9 +160,9 @@ def cones(source: Model | Region) -> Cones:
     ...                         bounds={"x": (0, None), "y": (0, 3)})
     >>> found = cones(model)
     >>> print(found.members[2])
-    V2 (1/2, 3) is optimal (maximize) as long as
+    V2 (0.5, 3) is optimal (maximize) as long as
     beside  condition
-    V1      -cost of x ≤ 0
+    V1      cost of x ≥ 0
     V3      cost of x - 2 cost of y ≤ 0
     made of labour (2, 1); y upper (0, 1)
     >>> found.best({"x": 2, "y": 1})
@@ -206,7 +209,3 @@ def _conditions_with_lines(whole: Region, number: int) -> tuple[Condition, ...]:
 
 def _way(whole: Region, start: int, end: int) -> Row:
     return primitive([b - a for a, b in zip(whole.base[start], whole.base[end], strict=True)])
-
-
-def _told(row: Row) -> str:
-    return f"({', '.join(str(value) for value in row)})"

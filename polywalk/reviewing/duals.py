@@ -75,11 +75,14 @@ class OptimalDuals:
         return tuple(i for i, row in enumerate(self.model.constraints) if row.slack(self.point) == 0)
 
     @cached_property
+    def _independent(self) -> bool:
+        """Whether the tight constraints leave no choice of multipliers."""
+        return rank([self.model.constraints[i].coefficients for i in self.tight]) == len(self.tight)
+
+    @cached_property
     def unique(self) -> bool:
         """Whether there is only one optimal dual."""
-        if rank([self.model.constraints[i].coefficients for i in self.tight]) == len(self.tight):
-            return True
-        return all(low == high for low, high in (self._ends(i) for i in self.tight))
+        return self._independent or all(low == high for low, high in (self._ends(i) for i in self.tight))
 
     @cached_property
     def face(self) -> Model:
@@ -98,7 +101,7 @@ class OptimalDuals:
 
     def reach(self, shares: Mapping[int, Fraction]) -> tuple[Extended, Extended]:
         """The least and the greatest of a sum of multiples of multipliers, given by place of the constraint."""
-        if rank([self.model.constraints[i].coefficients for i in self.tight]) == len(self.tight):
+        if self._independent:
             value = dot(shares.values(), [self.weights[i] for i in shares])
             return value, value
         costs = tuple(shares.get(i, ZERO) for i in self.tight)
@@ -107,7 +110,7 @@ class OptimalDuals:
     @cached_property
     def corners(self) -> tuple[Row, ...]:
         """The extreme optimal duals, one multiplier a constraint, sorted; base points where the face has a line."""
-        return tuple(self._whole(point) for point in self.region.base)
+        return (self.weights,) if self._independent else tuple(self._whole(point) for point in self.region.base)
 
     @cached_property
     def region(self) -> Region:
@@ -117,6 +120,8 @@ class OptimalDuals:
     @cached_property
     def directions(self) -> tuple[Row, ...]:
         """Directions in which optimal duals go on for ever; a line gives two of them."""
+        if self._independent:
+            return ()
         lines = [tuple(sign * value for value in line) for line in self.region.lines for sign in (1, -1)]
         return tuple(self._whole(way) for way in [*(ray.direction for ray in self.region.rays), *lines])
 

@@ -85,12 +85,12 @@ def _why(found: Sensitivity) -> Iterator[str]:
     if not found.unique_prices:
         moot = [price.constraint for price in found.prices if not price.unique]
         yield (
-            f"the prices of {listed(moot)} are not unique: {_meeting(found)}, and a solver reports the prices of the "
-            "basis it happens to end with, which may be the left ones, the right ones or others between"
+            f"the prices of {listed(moot)} are not unique: {meeting(found)}; a solver reports those of the basis it "
+            "ends with, which may be the left ones, the right ones or others between"
         )
 
 
-def _meeting(found: Sensitivity) -> str:
+def meeting(found: Sensitivity) -> str:
     """The reason in one phrase."""
     corner = next((corner for corner in found.best if corner.degenerate), None)
     if corner is None:

@@ -1,0 +1,153 @@
+"""Which optimal dual a list of prices is: a mix of the extreme optimal duals, or how far it is from the nearest one."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+from fractions import Fraction
+from typing import cast
+
+from polywalk.errors import ModelError
+from polywalk.exact import Row, dot, exact
+from polywalk.linear import optimum
+from polywalk.model import Constraint, Model, Objective
+from polywalk.reviewing.duals import OptimalDuals, keeps_sign
+from polywalk.reviewing.tolerances import TOLERANCES
+from polywalk.reviewing.verdicts import Verdict, judged, worst
+
+ONE, ZERO = Fraction(1), Fraction(0)
+
+
+@dataclass(frozen=True)
+class Pricing:
+    """The verdict on a list of prices.
+
+    Parameters
+    ----------
+    model : Model
+    prices : (m,) tuple of Fraction
+        One a constraint, in the model's order.
+    derived : tuple of str
+        Bounds whose price was not given and follows: what the other prices leave of the variable's cost.
+    verdict : Verdict
+        Against the nearest optimal dual; the amount is the largest difference of a single price.
+    nearest : (m,) tuple of Fraction
+        That dual.
+    mix : tuple of (int, Fraction)
+        It as a mix of the extreme optimal duals: numbers in ``OptimalDuals.corners``, and shares that add up to 1 (more
+        may be added along ``OptimalDuals.directions``).
+    convention : str
+        "" where the prices are right as they are, or wrong anyhow; else in which sign convention they are right.
+    wrong_signs : tuple of str
+        Constraints whose price has a sign that no optimum allows.
+    """
+
+    model: Model = field(repr=False)
+    prices: Row
+    derived: tuple[str, ...]
+    verdict: Verdict
+    nearest: Row
+    mix: tuple[tuple[int, Fraction], ...]
+    convention: str
+    wrong_signs: tuple[str, ...]
+
+    @property
+    def right(self) -> bool:
+        """Whether they are optimal prices, exactly or within solver tolerance, in polywalk's sign convention."""
+        return self.verdict.right
+
+
+def pricing(duals: OptimalDuals, given: object) -> Pricing:
+    """Which optimal dual the given prices are; see ``explain`` for what may be given."""
+    model = duals.model
+    named = _named(model, given)
+    open_ = _left_open(model, named)
+    verdict, nearest, mix = _nearest(duals, named, open_)
+    whole = _filled(model, named, dict(zip(open_, (nearest[i] for i in open_), strict=True)))
+    derived = tuple(model.constraints[i].name for i in open_ if nearest[i]) if verdict.right else ()
+    goal = duals.goal.goal
+    wrong = tuple(name for name, price in named.items() if not keeps_sign(model.constraint(name).sense, goal, price))
+    convention = "" if verdict.right else _convention(duals, named, open_)
+    return Pricing(model, whole, derived, verdict, nearest, mix, convention, wrong)
+
+
+def is_bound(row: Constraint) -> bool:
+    """Whether the constraint is a bound of a single variable."""
+    return row.bounds() is not None
+
+
+def _named(model: Model, given: object) -> dict[str, Fraction]:
+    """The given prices by constraint; a sequence may leave out the bounds."""
+    if isinstance(given, Mapping):
+        return {model.constraint(cast(str, name)).name: exact(value) for name, value in given.items()}
+    if isinstance(given, str) or not isinstance(given, Iterable):
+        raise ModelError(
+            f"expected prices as a mapping from constraint to number or as a sequence, got {given!r}.", given
+        )
+    values = [exact(value) for value in given]
+    rows = list(model.constraints)
+    plain = [row for row in rows if not is_bound(row)]
+    for names in (rows, plain):
+        if len(values) == len(names):
+            return {row.name: value for row, value in zip(names, values, strict=True)}
+    without = f", or {len(plain)} without the bounds ({', '.join(row.name for row in plain)})" if plain != rows else ""
+    raise ModelError(
+        f"expected {len(rows)} prices, one a constraint ({', '.join(row.name for row in rows)}){without}; "
+        f"got {len(values)}.",
+        given,
+    )
+
+
+def _left_open(model: Model, named: Mapping[str, Fraction]) -> tuple[int, ...]:
+    """Places of the bounds of variables none of whose bounds has a price given: these prices follow from the costs."""
+    owners = [(row.bounds() or (None,))[0] for row in model.constraints]
+    settled = {owner for owner, row in zip(owners, model.constraints, strict=True) if row.name in named}
+    return tuple(i for i, owner in enumerate(owners) if owner is not None and owner not in settled)
+
+
+def _filled(model: Model, named: Mapping[str, Fraction], others: Mapping[int, Fraction]) -> Row:
+    """One price a constraint; those neither given nor left open are 0."""
+    return tuple(named.get(row.name, others.get(i, ZERO)) for i, row in enumerate(model.constraints))
+
+
+def _nearest(
+    duals: OptimalDuals, named: Mapping[str, Fraction], open_: tuple[int, ...]
+) -> tuple[Verdict, Row, tuple[tuple[int, Fraction], ...]]:
+    """The optimal dual whose largest difference, each relative to its price, is least: a linear program."""
+    prices = {i: price for i, price in enumerate(_filled(duals.model, named, {})) if i not in open_}
+    made = [*duals.corners, *duals.directions]
+    found = optimum(_distance(len(duals.corners), made, prices)).point
+    if found is None:
+        raise AssertionError("some mix of the extreme duals is nearest")
+    shares = found[: len(made)]
+    nearest = tuple(dot(shares, [row[i] for row in made]) for i in range(len(duals.model.constraints)))
+    offs = [judged(price - nearest[i], price, TOLERANCES.price) for i, price in prices.items()]
+    mix = tuple((k, share) for k, share in enumerate(shares[: len(duals.corners)]) if share)
+    return worst(offs), nearest, mix
+
+
+def _distance(corners: int, made: list[Row], prices: Mapping[int, Fraction]) -> Model:
+    """Minimize the relative distance between the prices and a mix of what the optimal duals are made of."""
+    count = len(made)
+    unit = [tuple(Fraction(int(i == k)) for i in range(count + 1)) for k in range(count + 1)]
+    rows = [Constraint(f"share {k}", unit[k], ">=", ZERO) for k in range(count + 1)]
+    rows.append(Constraint("whole", tuple(Fraction(int(k < corners)) for k in range(count + 1)), "==", ONE))
+    for i, price in prices.items():
+        size = max(ONE, abs(price))
+        parts = tuple(row[i] for row in made)
+        rows.append(Constraint(f"above {i}", (*parts, size), ">=", price))
+        rows.append(Constraint(f"below {i}", (*parts, -size), "<=", price))
+    return Model(tuple(f"v{k}" for k in range(count + 1)), tuple(rows), Objective("min", unit[count]))
+
+
+def _convention(duals: OptimalDuals, named: Mapping[str, Fraction], open_: tuple[int, ...]) -> str:
+    """The sign convention in which prices that are wrong as they stand are right; "" if there is none."""
+    turned = {name: -price for name, price in named.items()}
+    if _nearest(duals, turned, open_)[0].right:
+        return "with all signs turned round"
+    model, goal = duals.model, duals.goal.goal
+    fits = {name: keeps_sign(model.constraint(name).sense, goal, price) for name, price in named.items()}
+    sizes = {name: price if fits[name] else -price for name, price in named.items()}
+    if sizes != named and _nearest(duals, sizes, open_)[0].right:
+        return "by their sizes, with the sign each constraint's sense asks for"
+    return ""
