@@ -13,7 +13,7 @@ Bareiss, Sylvester's identity and multistep integer-preserving Gaussian eliminat
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
@@ -123,6 +123,16 @@ class Dictionary:
     def gain(self, column: int) -> int:
         """How fast the objective improves per unit of the column's slack, times a positive number common to all."""
         return self.aim[column + 1] * self.slacks.scales[self.nonbasic[column]]
+
+    def combination(self, weights: Mapping[int, int]) -> Integers:
+        """A linear function of slacks, given by index and scaled as the rows are, as a row of this dictionary."""
+        total = [0] * (len(self.nonbasic) + 1)
+        for j, k in enumerate(self.nonbasic):
+            total[j + 1] = weights.get(k, 0) * self.denominator
+        for k, line in zip(self.basic, self.rows, strict=True):
+            if weight := weights.get(k, 0):
+                total = [value + weight * entry for value, entry in zip(total, line, strict=True)]
+        return tuple(total)
 
     def blocking_rows(self) -> Iterator[tuple[int, Integers]]:
         """The rows whose slack may not fall below zero, each with its place."""

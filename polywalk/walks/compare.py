@@ -15,11 +15,11 @@ from polywalk.region import region
 from polywalk.walks.comparison import Comparison
 from polywalk.walks.order import ranks
 from polywalk.walks.results import Walk
-from polywalk.walks.rules import ENTERING, entering_rule, leaving_rule
+from polywalk.walks.rules import ENTERING, Rules, entering_rule, leaving_rule
 from polywalk.walks.shared import shared
 from polywalk.walks.standings import Pair, Tally
 from polywalk.walks.starts import Start, Starts, opened_at
-from polywalk.walks.trace import _follow, _Rules
+from polywalk.walks.trace import follow
 from polywalk.walks.yardsticks import Yardsticks, yardsticks
 
 Rule = Any
@@ -82,7 +82,7 @@ starts, and proves nothing for others.
     measured = yardsticks(space)
     try:
         for pair, start, opened in progress(jobs, len(jobs), "walks"):
-            tallies.append(_tally(pair, start, _walked(model, pair, opened, rank, limit), measured))
+            tallies.append(_tally(pair, start, _walked(model, pair, opened, _rules(pair, rank, seed), limit), measured))
     except KeyboardInterrupt:
         if not tallies:
             raise
@@ -103,12 +103,15 @@ def _pairs(rules: Sequence[Rule] | Rule | None, leaving: str) -> tuple[Pair, ...
     return tuple(Pair(entering_rule(one).name, leaving_rule(other).name, (one, other)) for one, other in given)
 
 
-def _walked(model: Model, pair: Pair, opened: Crash, rank: Sequence[int], limit: int) -> Walk:
-    rules = _Rules(entering_rule(pair.given[0]).choose, leaving_rule(pair.given[1]).choose, rank)
+def _rules(pair: Pair, rank: Sequence[int], seed: int) -> Rules:
+    return Rules(entering_rule(pair.given[0]), leaving_rule(pair.given[1]), rank, seed)
+
+
+def _walked(model: Model, pair: Pair, opened: Crash, rules: Rules, limit: int) -> Walk:
     first = opened.dictionary
     if opened.contradiction is not None:
         return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, (), "infeasible")
-    pivots, end, cycle = _follow(first, rules, limit)
+    pivots, end, cycle = follow(first, rules, limit)
     return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, tuple(pivots), end, cycle)
 
 

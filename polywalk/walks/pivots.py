@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from fractions import Fraction
 from functools import cached_property
 from typing import Literal, NamedTuple
@@ -10,6 +10,7 @@ from typing import Literal, NamedTuple
 from polywalk.exact import Row
 from polywalk.linear import Dictionary
 from polywalk.table import Shown, Table, cell
+from polywalk.walks.rules import Rules
 
 Kind = Literal["step", "degenerate", "ray"]
 
@@ -53,6 +54,8 @@ class Pivot(Shown):
         The entering slack's column in ``before``.
     row : int or None
         The leaving slack's row in ``before``; None on a ray.
+    rules : Rules or None
+        The pair that chose it.
     """
 
     number: int
@@ -60,6 +63,7 @@ class Pivot(Shown):
     after: Dictionary
     column: int
     row: int | None
+    rules: Rules | None = field(default=None, compare=False)
 
     @property
     def phase(self) -> int:

@@ -2,28 +2,31 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from typing import NamedTuple
+from collections.abc import Callable, Mapping, Sequence
+from typing import Any
 
 from polywalk.errors import WalkError
+from polywalk.exact import Row
 from polywalk.linear import Dictionary, dictionary_of
 from polywalk.linear.phase_one import most_violated, relaxed, step
 from polywalk.model import Model
 from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import End, Walk
-from polywalk.walks.rules import Entering, Leaving, entering_rule, leaving_rule
+from polywalk.walks.rules import Rule, Rules, entering_rule, leaving_rule
 from polywalk.walks.start import first_dictionary
 
 
 def walk(  # noqa: PLR0917 (the order is the published one)
     model: Model,
-    rule: str = "dantzig",
-    leaving: str = "lowest-index",
+    rule: str | Callable[..., int] = "dantzig",
+    leaving: str | Callable[..., int] = "lowest-index",
     order: str | Sequence[str] | None = None,
     start: object = None,
     seed: int = 0,
     limit: int = 10_000,
+    *,
+    start_objective: Sequence[object] | Mapping[str, object] | None = None,
 ) -> Walk:
     """Follow a pivot rule from a start to its end.
 
@@ -35,10 +38,13 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     Parameters
     ----------
     model : Model
-    rule : {"dantzig", "bland"}, optional
-        The entering rule.
-    leaving : {"lowest-index"}, optional
-        The leaving rule, for ties of the ratio test.
+    rule : optional
+        The entering rule: "dantzig", "bland", "greatest-improvement", "steepest-edge", "steepest-edge-decisions",
+        "random-edge", "shadow-vertex", or a function ``(dictionary, columns) -> column`` (see
+        ``polywalk.walks.rules``).
+    leaving : optional
+        The leaving rule, for ties of the ratio test: "lowest-index", "lexicographic", "first-row", "largest-pivot",
+        "random", or a function ``(dictionary, column, rows) -> row``. Any two rules go together.
     order : str or sequence of str, optional
         The index order: "decisions first" (default), "slacks first", "interleaved", or all slack names, lowest first.
         A decision's own slack has the decision's name, any other slack its constraint's name.
@@ -47,9 +53,12 @@ def walk(  # noqa: PLR0917 (the order is the published one)
         numbers, or a mapping), or the names of n constraints held active (a basis). Of the bases of a degenerate vertex
         the one with the lowest indices held active is taken.
     seed : int, optional
-        For rules that draw lots; the present ones do not.
+        For rules that draw lots: the same seed gives the same walk.
     limit : int, optional
         The most pivots to make.
+    start_objective : (n,) sequence or mapping, optional
+        For the shadow-vertex rule: the coefficients of an objective, of the model's own sense, for which the start is
+        optimal.
 
     Returns
     -------
@@ -58,7 +67,8 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     Raises
     ------
     WalkError
-        An unknown rule, a start that is no vertex or basis, a region with a line.
+        An unknown rule, a rule that chooses what it may not, a start that is no vertex or basis or not optimal for the
+        start objective, a region with a line.
 
     Examples
     --------
@@ -72,64 +82,89 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     2      2      y         y upper  3     step  7.5        (0.5, 3)
     """
     opened = dictionary_of(model)
-    rules = _Rules(entering_rule(rule).choose, leaving_rule(leaving).choose, ranks(opened.slacks, order))
+    entering, tie = entering_rule(rule), leaving_rule(leaving)
+    toward = _toward(model, entering, start_objective)
+    rules = Rules(entering, tie, ranks(opened.slacks, order), _whole(seed), toward)
     if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
         raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
     begun = first_dictionary(opened, start, rules.rank)
     first = begun.dictionary
-    pivots, end, cycle = ([], "infeasible", ()) if begun.contradiction is not None else _follow(first, rules, limit)
+    pivots, end, cycle = ([], "infeasible", ()) if begun.contradiction is not None else follow(first, rules, limit)
     indices = sorted(range(first.slacks.auxiliary), key=rules.rank.__getitem__)
     named = tuple(first.slacks.names[k] for k in indices)
-    return Walk(model, rule, leaving, named, begun.swaps, first, tuple(pivots), end, cycle)
+    names = rules.entering.name, rules.leaving.name
+    return Walk(model, *names, named, begun.swaps, first, tuple(pivots), end, cycle)
 
 
-class _Rules(NamedTuple):
-    entering: Entering
-    leaving: Leaving
-    rank: Sequence[int]
+def _toward(model: Model, entering: Rule, start_objective: Any) -> Row | None:
+    if start_objective is None:
+        return None
+    if entering.name != "shadow-vertex":
+        raise WalkError(
+            f"a start objective is for the shadow-vertex rule only, got it for {entering.name!r}; leave it out.",
+            culprit=start_objective,
+        )
+    return model.point(start_objective)
 
 
-def _follow(now: Dictionary, rules: _Rules, limit: int) -> tuple[list[Pivot], End, tuple[Pivot, ...]]:
-    """Pivot until the rule has nothing to choose, nothing runs out, a basis comes back, or the limit is reached.
+def _whole(seed: object) -> int:
+    if isinstance(seed, bool) or not isinstance(seed, int):
+        raise WalkError(f"expected as seed a whole number, got {seed!r}.", culprit=seed)
+    return seed
 
-    The rules depend on the basis alone, so that the walk cycles exactly if a basis comes back.
+
+def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End, tuple[Pivot, ...]]:
+    """Pivot until the rule has nothing to choose, nothing runs out, a state comes back, or the limit is reached.
+
+    Between two steps the walk cycles exactly if a state that the pair of rules depends on comes back.
     """
-    pivots: list[Pivot] = []
-    met = {frozenset(now.basic): 0}
-    while (pivot := _next(now, len(pivots) + 1, rules)) is not None:
+    pivots, lots = list[Pivot](), rules.lots()
+    if not now.feasible:
+        if limit == 0:
+            return pivots, "stopped", ()
+        pivots.append(_auxiliary_enters(now, rules))
+        now = pivots[0].after
+    choose = rules.begin(now, lots)
+    met = {rules.state(now): len(pivots)}
+    while (pivot := _next(now, len(pivots) + 1, rules, choose)) is not None:
         if len(pivots) == limit:
             return pivots, "stopped", ()
         pivots.append(pivot)
-        now = pivot.after
         if pivot.kind == "ray":
             return pivots, "unbounded", ()
+        if pivot.after.phase != now.phase:
+            choose = rules.begin(pivot.after, lots)
+        now = pivot.after
         if pivot.kind == "step":
-            met.clear()  # no basis met before a step comes back: the objective has changed for good
-        basis = frozenset(now.basic)
-        if basis in met:
-            return pivots, "cycling", tuple(pivots[met[basis] :])
-        met[basis] = len(pivots)
+            met.clear()  # nothing met before a step comes back: the objective has changed for good
+        state = rules.state(now)
+        if state is not None and state in met:
+            return pivots, "cycling", tuple(pivots[met[state] :])
+        met[state] = len(pivots)
     return pivots, "optimal" if now.phase == 2 else "infeasible", ()
 
 
-def _next(now: Dictionary, number: int, rules: _Rules) -> Pivot | None:
+Choices = tuple[Callable[..., int], Callable[..., int]]
+
+
+def _next(now: Dictionary, number: int, rules: Rules, choose: Choices) -> Pivot | None:
     """The pivot the rules choose; None where no slack improves the objective."""
-    if number == 1 and not now.feasible:
-        return _auxiliary_enters(now, rules)
-    columns = sorted(now.improving(), key=lambda j: rules.rank[now.nonbasic[j]])
+    enter, leave = choose
+    rank = rules.rank
+    columns = sorted(now.improving(), key=lambda j: rank[now.nonbasic[j]])
     if not columns:
         return None
-    column = rules.entering(now, columns)
+    column = enter(now, columns)
     rows = now.first_to_run_out(column)
     if not rows:
-        return Pivot(number, now, now, column, None)
-    row = rules.leaving(now, column, sorted(rows, key=lambda i: rules.rank[now.basic[i]]))
-    return Pivot(number, now, step(now, row, column), column, row)
+        return Pivot(number, now, now, column, None, rules)
+    row = leave(now, column, sorted(rows, key=lambda i: rank[now.basic[i]]))
+    return Pivot(number, now, step(now, row, column), column, row, rules)
 
 
-def _auxiliary_enters(now: Dictionary, rules: _Rules) -> Pivot:
+def _auxiliary_enters(now: Dictionary, rules: Rules) -> Pivot:
     """Phase I begins: the auxiliary enters for the slack that is short by the most (ties: the lowest index)."""
     row = min(most_violated(now), key=lambda i: rules.rank[now.basic[i]])
     eased = relaxed(now)
     column = len(eased.nonbasic) - 1
-    return Pivot(1, eased, step(eased, row, column), column, row)
+    return Pivot(1, eased, step(eased, row, column), column, row, rules)
