@@ -125,6 +125,7 @@ NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region"
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "farkas", "improving_ray", "scenarios", "walk"}
 NAMES |= {"review"}
+NAMES |= {"cones", "explain", "sensitivity", "value_function"}
 
 
 def test_public_names_are_pinned():

@@ -1,9 +1,30 @@
 """From a model to findings: the modelling mistake, its proof, and the smallest change that explains it."""
 
 from polywalk.reviewing.codes import CODES
+from polywalk.reviewing.cones import Cones, cones
 from polywalk.reviewing.expectations import EXPECTATIONS
+from polywalk.reviewing.explain import Explanation, explain
 from polywalk.reviewing.findings import Finding, Proof, Review
 from polywalk.reviewing.limits import Limits
 from polywalk.reviewing.review import CHECKS, review
+from polywalk.reviewing.sensitivity import Sensitivity, sensitivity
+from polywalk.reviewing.value import ValueFunction, value_function
 
-__all__ = ["CHECKS", "CODES", "EXPECTATIONS", "Finding", "Limits", "Proof", "Review", "review"]
+__all__ = [
+    "CHECKS",
+    "CODES",
+    "EXPECTATIONS",
+    "Cones",
+    "Explanation",
+    "Finding",
+    "Limits",
+    "Proof",
+    "Review",
+    "Sensitivity",
+    "ValueFunction",
+    "cones",
+    "explain",
+    "review",
+    "sensitivity",
+    "value_function",
+]
