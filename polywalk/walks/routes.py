@@ -59,12 +59,25 @@ class Route(Shown):
     @property
     def story(self) -> str:
         """The route in one line."""
-        rule = f"{self.walk.rule} with {self.walk.leaving}"
         if not self.places:
-            return f"{rule} does not come to {vertex_name(self.vertex)}"
+            return f"{self._rule} does not come to {vertex_name(self.vertex)}"
         path = " → ".join(basis_name(number) for number in self.places)
-        count = f"{len(self.stays)} {'stay' if len(self.stays) == 1 else 'stays'}"
-        return f"{rule}: {path} ({count}), {self._ending()}"
+        return f"{self._rule}: {path} ({self._count}), {self._ending()}"
+
+    @property
+    def brief(self) -> str:
+        """The same without the way: rule, stays, how it ends."""
+        if not self.places:
+            return f"{self._rule}: elsewhere"
+        return f"{self._rule}: {self._count}, {f'to {self.target}' if self.target else self.end}"
+
+    @property
+    def _rule(self) -> str:
+        return f"{self.walk.rule} with {self.walk.leaving}"
+
+    @property
+    def _count(self) -> str:
+        return f"{len(self.stays)} {'stay' if len(self.stays) == 1 else 'stays'}"
 
     def _ending(self) -> str:
         if self.departure is not None:
