@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from itertools import count
 from string import ascii_lowercase
 
 from polywalk.drawing import conflict as conflicts
 from polywalk.drawing import goal, paths, plane
+from polywalk.drawing.bases import bases_scene
 from polywalk.drawing.camera import USUAL, best_eye
+from polywalk.drawing.chart import chart
 from polywalk.drawing.key import key
 from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import Axis, KeyPart, Label, Layer, Line, Point, Polygon, Scene
@@ -18,15 +21,20 @@ from polywalk.drawing.window import Window, around, square
 from polywalk.exact import short
 from polywalk.model import Model
 from polywalk.region import Region
+from polywalk.walks import Bases, Comparison, Walk
+
+Source = Model | Region | Bases | Comparison | Walk | Sequence[Walk]
+"""What can be drawn: a region, the bases of a vertex, or walks as a chart of the objective by pivot."""
 
 
-def scene(source: Model | Region, view: View | None = None) -> Scene:
+def scene(source: Source, view: View | None = None) -> Scene:
     """The picture of a model or a region as plain data.
 
     Parameters
     ----------
-    source : Model or Region
-        A Region saves enumerating again.
+    source : Model, Region, Bases, Comparison, Walk or sequence of Walk
+        A Region saves enumerating again. Bases give the picture of one vertex's bases. Walks give the chart of the
+        objective by pivot, a comparison that of its walks from the first start.
     view : View, optional
 
     Returns
@@ -46,6 +54,10 @@ def scene(source: Model | Region, view: View | None = None) -> Scene:
     >>> [mark.text for mark in scene(model).marks if mark.role == "optimum"]
     ['V2', 'V4']
     """
+    if isinstance(source, Bases):
+        return bases_scene(source, view or View())
+    if isinstance(source, Walk | Comparison | Sequence):
+        return chart(source)
     looked = subject(source, view or View())
     if looked.seen.status == "empty":
         return _empty(looked)
@@ -131,8 +143,9 @@ def _tags(looked: Subject, drawn: Shape) -> tuple[dict[str, str], Layer]:
         letter = next(letters)
         tags.update(dict.fromkeys(side.constraints, letter))
         words = [looked.seen.model.constraint(name) for name in side.constraints]
+        longer = f"{letter} {' & '.join(side.constraints)}"
         hover = "\n".join(f"{row.name}: {row.text(looked.axes)}" for row in words)
-        labels.append(Label(letter, side.centre, "tag", order.index(side.constraints[0]), hover=hover))
+        labels.append(Label(letter, side.centre, "tag", order.index(side.constraints[0]), hover=hover, longer=longer))
     return tags, Layer(labels=tuple(labels))
 
 
@@ -149,31 +162,29 @@ def _optimal_face(looked: Subject) -> Layer:
 
 
 def _empty(looked: Subject) -> Scene:
-    model = looked.seen.model
-    found = conflicts.conflict(looked.model)
+    model, found = looked.seen.model, conflicts.conflict(looked.model)
     words = conflicts.sentence(found)
     if looked.projected:
         nothing = Window((0.0,) * max(len(looked.axes), 2), (1.0,) * max(len(looked.axes), 2))
         return _assembled(looked, nothing, (), rows=key(looked, {}, (), found), status=words)
     frame = conflicts.window(model, found)
+    if model.n == 2:
+        frame = square(frame)
     rest = shape(found.rest, frame) if found.rest is not None else None
-    if len(frame.low) == 3:
+    if model.n == 3:
         tags, tagged = _tags(looked, rest) if rest else ({}, Layer())
         body = plane.region(rest, "rest") if rest else Layer()
-        layers = (body, conflicts.borders(model, found, frame), tagged)
+        planes = (conflicts.faces(model, found, rest), conflicts.borders(model, found, frame))
+        layers = (body, *planes, conflicts.shortfall(found, None), tagged)
         return _assembled(looked, frame, layers, rows=key(looked, tags, (), found), status=words, drawn=rest)
-    frame = square(frame) if len(frame.low) == 2 else _lifted_window(frame)
-    if found.rest is not None:
-        rest = (
-            shape(found.rest, frame)
-            if model.n == 2
-            else _lifted_shape(shape(found.rest, conflicts.window(model, found)))
-        )
+    if model.n == 1:
+        frame, rest = _lifted_window(frame), _lifted_shape(rest) if rest else None
     sheet = Sheet(frame)
     body = plane.region(rest, "rest") if rest else Layer()
     conflicts.keep_names_clear(body, sheet)
+    gap = conflicts.shortfall(found, sheet)
     lines, absent = plane.constraints(looked, sheet, found.names)
-    return _assembled(looked, frame, (body, lines), rows=key(looked, {}, absent, found), status=words)
+    return _assembled(looked, frame, (body, lines, gap), rows=key(looked, {}, absent, found), status=words)
 
 
 def _status(looked: Subject) -> str:

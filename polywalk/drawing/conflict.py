@@ -3,12 +3,15 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from fractions import Fraction
 
-from polywalk.drawing.placing import Sheet
+from polywalk.drawing.placing import Sheet, about
 from polywalk.drawing.scene import Label, Layer, Line, Point, Polygon
+from polywalk.drawing.shape import Shape
 from polywalk.drawing.space import inner, slice_of, uphill
-from polywalk.drawing.subject import floats
+from polywalk.drawing.subject import floats, planar
 from polywalk.drawing.window import Window, around, crossings
+from polywalk.exact import Row, short
 from polywalk.linear import farkas
 from polywalk.model import Constraint, Model
 from polywalk.region import Region, region
@@ -29,6 +32,18 @@ class Conflict:
     lifted: Constraint | None
     rest: Region | None
 
+    @property
+    def nearest(self) -> Row | None:
+        """The point of the rest that misses the lifted constraint by least; None where there is no rest."""
+        if self.rest is None or self.lifted is None or self.lifted.is_constant:
+            return None
+        return max(self.rest.base, key=self.lifted.slack)
+
+    @property
+    def short(self) -> Fraction | None:
+        """By how much it misses, in the constraint's own unit."""
+        return None if self.nearest is None or self.lifted is None else -self.lifted.slack(self.nearest)
+
 
 def conflict(model: Model) -> Conflict:
     """The conflict of an empty model; a row is lifted before a bound, and what stays bounded first."""
@@ -48,13 +63,53 @@ def window(model: Model, found: Conflict) -> Window:
         return around(crossings([model.constraint(name) for name in found.names], model.n))
     points = [floats(point) for point in found.rest.base]
     if not found.lifted.is_constant:
-        nearest = max(found.rest.base, key=found.lifted.slack)
-        row, gap = floats(found.lifted.coefficients), float(found.lifted.slack(nearest))
-        _, inward = found.lifted.inward
-        square = inner(row, row)
-        points.append(tuple(x - gap * float(a) / square for x, a in zip(floats(nearest), inward, strict=True)))
+        points += gap(found)
     rays = [floats(ray.direction) for ray in found.rest.rays]
     return around(points, rays, [floats(line) for line in found.rest.lines])
+
+
+def faces(model: Model, found: Conflict, rest: Shape | None) -> Layer:
+    """In space: the faces of the rest that the conflict's other constraints make, in their colours."""
+    places = [row.name for row in model.constraints]
+    return Layer(
+        tuple(
+            Polygon(
+                face.corners,
+                "conflict",
+                places.index(name),
+                name,
+                f"{name}\n{model.constraint(name).text(model.variables)}",
+            )
+            for face in (rest.faces if rest else ())
+            for name in face.constraints
+            if name in found.names
+        )
+    )
+
+
+def gap(found: Conflict) -> tuple[Point, ...]:
+    """From the nearest point of the rest straight to the border it does not reach; () where there is none."""
+    if found.nearest is None or found.lifted is None:
+        return ()
+    row, miss = floats(found.lifted.coefficients), float(found.lifted.slack(found.nearest))
+    _, inward = found.lifted.inward
+    foot = floats(found.nearest)
+    return foot, tuple(x - miss * float(a) / inner(row, row) for x, a in zip(foot, inward, strict=True))
+
+
+def shortfall(found: Conflict, sheet: Sheet | None) -> Layer:
+    """The dotted line over the gap, with its size."""
+    ends = tuple(planar(point) for point in gap(found))
+    if not ends or found.short is None or found.lifted is None:
+        return Layer()
+    text = f"{short(found.short)} short"
+    middle = tuple(sum(values) / 2 for values in zip(*ends, strict=True))
+    if sheet is None:
+        label = Label(text, middle, "name")
+    else:
+        sheet.lines.append((sheet.pixel(ends[0]), sheet.pixel(ends[1])))
+        label = sheet.place(text, about(sheet.pixel(middle), text), "name")
+    return Layer(lines=(Line((ends,), "short", name=text),), labels=(label,))
 
 
 def borders(model: Model, found: Conflict, frame: Window) -> Layer:

@@ -14,6 +14,9 @@ from polywalk.model import Constraint, Objective
 ARROW = {2: 46.0, 3: 0.2}
 """Length of the direction arrow: pixels in the plane, a share of the longest side in space."""
 
+PATCH = 0.16
+"""How far a solid's level is drawn beyond the optimum, as a share of the window."""
+
 TREND = {"min": "objective falls", "max": "objective rises"}
 
 
@@ -48,6 +51,17 @@ def _direction(subject: Subject, goal: Objective, window: Window, sheet: Sheet |
     return Layer(lines=(line,), labels=(sheet.place(TREND[goal.goal], about(end, TREND[goal.goal]), "note"),))
 
 
+def _near(subject: Subject, window: Window) -> Window:
+    """The part of a solid's window around its optimum: a patch of the level shows where it touches."""
+    points = [floats(subject.seen.vertices[k].point) for k in subject.best] or [window.middle]
+    low = [min(values) for values in zip(*points, strict=True)]
+    high = [max(values) for values in zip(*points, strict=True)]
+    return Window(
+        tuple(a - PATCH * length for a, length in zip(low, window.extent, strict=True)),
+        tuple(b + PATCH * length for b, length in zip(high, window.extent, strict=True)),
+    )
+
+
 def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | None) -> Layer:
     value = subject.region.value
     if value is None:
@@ -55,7 +69,7 @@ def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | Non
     text = f"objective = {short(value)}"
     row = Constraint("level", goal.coefficients, "==", value - goal.constant)
     if sheet is None:
-        corners = slice_of(floats(row.coefficients), float(row.rhs), window)
+        corners = slice_of(floats(row.coefficients), float(row.rhs), _near(subject, window))
         if not corners:
             return Layer()
         border = Line((corners + corners[:1],), "level line", name=text)

@@ -12,18 +12,19 @@ from polywalk.drawing.traces import traces
 from polywalk.drawing.view import View, viewed
 from polywalk.model import Model
 from polywalk.region import Region
+from polywalk.walks import Bases
 
 if TYPE_CHECKING:
     import plotly.graph_objects as go
 
 
-def draw(source: Model | Region, view: View | None = None, **changes: Any) -> go.Figure:
+def draw(source: Model | Region | Bases, view: View | None = None, **changes: Any) -> go.Figure:
     """Draw a region as an interactive plotly figure: constraints, vertices, optimum, walks.
 
     Parameters
     ----------
-    source : Model or Region
-        A Region saves enumerating again.
+    source : Model, Region or Bases
+        A Region saves enumerating again. Bases give the picture of one vertex's bases.
     view : View, optional
     **changes
         Fields of View, for short: ``walks=[...]``, ``axes=("pump", "tank")``, ``mode="dark"``.
@@ -51,7 +52,7 @@ def draw(source: Model | Region, view: View | None = None, **changes: Any) -> go
     return go.Figure(figure(source, viewed(view, changes)))
 
 
-def figure(source: Model | Region, view: View | None = None) -> dict[str, Any]:
+def figure(source: Model | Region | Bases, view: View | None = None) -> dict[str, Any]:
     """The same figure as plain dicts: ``data`` and ``layout``, ready for plotly.js.
 
     All vertices are one trace named "vertices", whose ``customdata`` holds their indices.

@@ -24,7 +24,7 @@ def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: 
     """All parts of the key that have rows."""
     parts = (
         KeyPart("What the marks say", _marks(subject, found)),
-        KeyPart("Walks", tuple(_walk(subject, index, walk) for index, walk in enumerate(subject.view.walks))),
+        KeyPart("Walks", _walks(subject)),
         KeyPart("Vertices, with the constraints active there", _vertices(subject)),
         KeyPart("Constraints", _constraints(subject, tags, absent, found)),
     )
@@ -34,9 +34,7 @@ def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: 
 def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
     seen, rows = subject.seen, []
     if found is not None:
-        if found.rest is not None and found.lifted is not None:
-            rows.append(KeyRow("rest", f"what would be allowed without {found.lifted.name}"))
-        return tuple(rows)
+        return _conflict(found)
     rows += [KeyRow("optimum", _optimum(subject))] if subject.best else []
     goal = seen.model.objective
     if goal is not None and any(goal.coefficients):
@@ -48,13 +46,41 @@ def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
     for ray in seen.rays:
         better = goal is not None and ray.change is not None and goal.better(ray.change, Fraction(0))
         gain = ", and the objective improves without end" if better else ""
-        rows.append(KeyRow("open edge", f"no limit along {names} = {coordinates(ray.direction)}{gain}"))
+        along = f"; it slides along {', '.join(ray.active)}" if ray.active else ""
+        rows.append(KeyRow("open edge", f"no limit along {names} = {coordinates(ray.direction)}{gain}{along}"))
     for line in seen.lines:
         rows.append(KeyRow("open edge", f"no limit along {names} = {coordinates(line)}, nor against it"))
     rows += _degenerate(subject)
+    rows += _solid(subject)
     if not subject.axes[2:]:
         rows.append(KeyRow("hatch", "strokes: the side a constraint forbids"))
     return tuple(rows)
+
+
+def _conflict(found: Conflict) -> tuple[KeyRow, ...]:
+    rows = [
+        KeyRow(
+            "none",
+            "thick and coloured: the constraints that cannot hold together; an arrow points to the side one allows",
+        )
+    ]
+    if found.rest is not None and found.lifted is not None:
+        name = found.lifted.name
+        rows.append(KeyRow("rest", f"not allowed either: only what would be left without {name}"))
+        if found.nearest is not None and found.short is not None:
+            miss = f"the nearest point of that, {coordinates(found.nearest)}, misses {name} by {short(found.short)}"
+            rows.append(KeyRow("short", miss))
+    return tuple(rows)
+
+
+def _solid(subject: Subject) -> list[KeyRow]:
+    """What only a picture in space has to explain."""
+    if not subject.axes[2:] or subject.seen.dimension < 3:
+        return []
+    rows = [KeyRow("hidden edge", "edges and letters in dashes: at the back, seen through the body")]
+    if subject.seen.rays:
+        rows.append(KeyRow("none", "where faces end without an edge, they go on beyond the picture"))
+    return rows
 
 
 def _degenerate(subject: Subject) -> list[KeyRow]:
@@ -80,13 +106,21 @@ def _optimum(subject: Subject) -> str:
     return f"optimum: {value} at {places[0]}"
 
 
+def _walks(subject: Subject) -> tuple[KeyRow, ...]:
+    rows = [_walk(subject, index, walk) for index, walk in enumerate(subject.view.walks)]
+    if any(walk.pivots for walk in subject.view.walks):
+        rows.append(KeyRow("start", "where the first walk starts; circled numbers count its pivots"))
+    return tuple(rows)
+
+
 def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
     """What a walk did, and the vertices it passed."""
     names = {floats(vertex.point): vertex_name(k) for k, vertex in enumerate(subject.seen.vertices)}
-    stops = [names.get(subject.along(point), "outside") for point in walk.points]
+    stops = [names.get(subject.along(point)) or f"outside {coordinates(point)}" for point in walk.points]
     path = [stop for stop, before in zip(stops, ["", *stops[:-1]], strict=True) if stop != before]
     shown = path if len(path) <= MOST_STOPS else [*path[: MOST_STOPS - 2], "...", path[-1]]
-    return KeyRow("walk", f"{walk_text(walk)}: {' → '.join(shown)}", index)
+    onward = " → on without end" if walk.end == "unbounded" else ""
+    return KeyRow("walk", f"{walk_text(walk)}: {' → '.join(shown)}{onward}", index)
 
 
 def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
@@ -123,5 +157,6 @@ def _constraints(
         elif row.name not in tags and len(model.variables) == 3:
             note = "   (makes no face)"
         text = f"{row.name}: {row.text(model.variables)}{note}"
-        rows.append(KeyRow("constraint", text, index, tags.get(row.name, "")))
+        role = "conflict line" if found is not None and row.name in found.names else "constraint"
+        rows.append(KeyRow(role, text, index, tags.get(row.name, "")))
     return tuple(rows)

@@ -43,7 +43,7 @@ def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             continue
         style = theme.style(label.role, label.index)
         font = {"size": style.size, "color": style.colour, "family": FONT}
-        text = f"<b>{html(label.text)}</b>" if label.role == "point" else html(label.text)
+        text = f"<b>{html(label.text)}</b>" if label.role in {"point", "target"} else html(label.text)
         note: dict[str, Any] = {
             "x": label.point[0],
             "y": label.point[1],
@@ -52,8 +52,9 @@ def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             "font": font,
         }
         note |= {"textangle": -label.angle, "xanchor": "center", "yanchor": "middle", "borderpad": 1}
-        if label.target:
+        if label.target or label.role == "target":
             note |= {"bgcolor": theme.paper, "bordercolor": style.colour, "borderwidth": 1}
+        if label.target:
             note |= {"x": label.target[0], "y": label.target[1], "showarrow": True, "arrowhead": 0, "arrowwidth": 1}
             note |= {"ax": label.point[0], "ay": label.point[1], "axref": "x", "ayref": "y"}
         found.append(note)
@@ -66,6 +67,7 @@ def _plane(drawn: Scene, theme: Theme) -> dict[str, Any]:
         look = {"range": [axis.low, axis.high], "gridcolor": theme.grid, "zeroline": False, "tickcolor": theme.quiet}
         found[name] = look | {"title": {"text": html(axis.title)}, "visible": bool(axis.title), "showgrid": False}
         found[name] |= {"linecolor": theme.grid, "mirror": True, "showline": True, "exponentformat": "none"}
+        found[name] |= {"tick0": 0, "dtick": axis.spacing} if axis.spacing else {}
     if abs(drawn.scale[0] - drawn.scale[1]) <= 1e-9 * drawn.scale[0]:  # equal units but for rounding
         found["yaxis"] |= {"scaleanchor": "x", "scaleratio": 1}
     return found

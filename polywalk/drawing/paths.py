@@ -7,9 +7,8 @@ the middle of the region, so that none hides another.
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from math import hypot
 
-from polywalk.drawing.placing import Sheet, about
+from polywalk.drawing.placing import Sheet, about, aside, number_spot
 from polywalk.drawing.scene import Label, Layer, Line, Mark, Point
 from polywalk.drawing.space import exit_point
 from polywalk.drawing.subject import Subject, planar
@@ -19,7 +18,7 @@ from polywalk.walks import Pivot, Walk
 APART = 7.0
 """Pixels between walks that share an edge."""
 
-OUTWARD = 0.035
+OUTWARD = 0.012
 """In space, how far each further walk is moved from the middle, as a share of its distance from there."""
 
 MOST_NUMBERS = 60
@@ -86,10 +85,7 @@ def _shifted(frame: Frame, index: int, leg: Leg) -> tuple[Point, Point]:
         )
         return start, end
     a, b = frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)
-    first, last = sorted((a, b))
-    length = hypot(b[0] - a[0], b[1] - a[1])
-    aside = APART * (index - (frame.count - 1) / 2) / length
-    move = (-(last[1] - first[1]) * aside, (last[0] - first[0]) * aside)
+    move = aside(a, b, APART * (index - (frame.count - 1) / 2))
     return frame.sheet.unpixel((a[0] + move[0], a[1] + move[1])), frame.sheet.unpixel((b[0] + move[0], b[1] + move[1]))
 
 
@@ -111,16 +107,17 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
 
 
 def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
-    share = (index + 1) / (frame.count + 1)
     labels = []
     for leg in legs:
         if not leg.moves or (len(legs) > MOST_NUMBERS and leg.pivot.number % 10):
             continue
         start, end = _shifted(frame, index, leg)
-        spot = tuple(a + share * (b - a) for a, b in zip(start, end, strict=True))
+        spot = tuple((a + b) / 2 for a, b in zip(start, end, strict=True))
         if frame.sheet is not None:
+            ends = (frame.sheet.pixel(start), frame.sheet.pixel(end))
+            spot = frame.sheet.unpixel(number_spot(*ends, index, frame.count))
             frame.sheet.keep_clear(spot, 9.0)
-        labels.append(Label(str(leg.pivot.number), spot, "step", index))
+        labels.append(Label(str(leg.pivot.number), spot, "step", index, along=(start, end)))
     return labels
 
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, field
-from math import atan2, cos, degrees, radians, sin
+from math import atan2, cos, degrees, hypot, radians, sin
 
 from polywalk.drawing.scene import Label, Point
 from polywalk.drawing.window import PAPER, Window
@@ -14,6 +14,12 @@ GLYPH = 0.56
 
 SIZE = 11.0
 """Size of names in pixels."""
+
+REACH, NEAR = (1.0, 1.7, 2.6), (1.0, 1.35)
+"""How far a text may be put from its mark, in gaps; the name of a vertex stays near."""
+
+SHORT, BESIDE = 52.0, 13.0
+"""A segment shorter than this (pixels) has no room for a number and an arrow head; then the number stands beside it."""
 
 Box = tuple[float, float, float, float]  # left, bottom, right, top in pixels
 
@@ -94,7 +100,7 @@ class Sheet:
         out = sum(max(value, 0.0) for value in (-area[0], -area[1], area[2] - PAPER[0], area[3] - PAPER[1]))
         taken = sum(overlap(area, other) for other in self.boxes)
         crossed = sum(crosses(area, start, end) for start, end in self.lines)
-        covered = sum(_within(fill, ((area[0] + area[2]) / 2, (area[1] + area[3]) / 2)) for fill in self.fills)
+        covered = sum(contains(fill, ((area[0] + area[2]) / 2, (area[1] + area[3]) / 2)) for fill in self.fills)
         return 400 * out + 20 * taken + 60 * crossed + 90 * covered
 
     def place(self, text: str, centres: Iterable[Point], role: str, index: int = 0, angle: float = 0.0) -> Label:
@@ -108,7 +114,7 @@ class Sheet:
         return Label(text, self.unpixel(centre), role, index, angle=angle)
 
 
-def _within(corners: tuple[Point, ...], point: Point) -> bool:
+def contains(corners: tuple[Point, ...], point: Point) -> bool:
     """Whether a pixel lies in a convex polygon."""
     turns = [
         (b[0] - a[0]) * (point[1] - a[1]) - (b[1] - a[1]) * (point[0] - a[0])
@@ -127,15 +133,30 @@ def beside(start: Point, end: Point, normal: Point, distance: float = 14.0) -> l
     ]
 
 
-def about(centre: Point, text: str, gap: float = 14.0, away: Point | None = None) -> list[Point]:
+def aside(start: Point, end: Point, distance: float) -> Point:
+    """The move (pixels) that puts a segment beside itself, on the same side whichever way it runs."""
+    first, last = sorted((start, end))
+    length = hypot(last[0] - first[0], last[1] - first[1]) or 1.0
+    return (-(last[1] - first[1]) * distance / length, (last[0] - first[0]) * distance / length)
+
+
+def number_spot(start: Point, end: Point, index: int, count: int) -> Point:
+    """Where a step's number stands: on its segment, or beside it where it would cover the arrow (pixels)."""
+    share = (index + 1) / (count + 1) if count > 1 else 0.45
+    spot = (start[0] + share * (end[0] - start[0]), start[1] + share * (end[1] - start[1]))
+    if hypot(end[0] - start[0], end[1] - start[1]) >= SHORT:
+        return spot
+    move = aside(start, end, BESIDE if index >= count / 2 else -BESIDE)
+    return (spot[0] + move[0], spot[1] + move[1])
+
+
+def about(
+    centre: Point, text: str, gap: float = 14.0, away: Point | None = None, reach: tuple[float, ...] = REACH
+) -> list[Point]:
     """Candidate centres for a text around a mark (pixels); those pointing away from ``away`` come first."""
     half = max(GLYPH * SIZE * len(text) / 2 - gap / 2, 0.0)
     ring = [(1, 0), (-1, 0), (0, 1), (0, -1), (0.75, 0.75), (-0.75, 0.75), (0.75, -0.75), (-0.75, -0.75)]
     if away is not None:
         out = (centre[0] - away[0], centre[1] - away[1])
         ring.sort(key=lambda way: -(way[0] * out[0] + way[1] * out[1]))
-    return [
-        (centre[0] + x * (spread * gap + half), centre[1] + y * spread * gap)
-        for spread in (1.0, 1.7, 2.6)
-        for x, y in ring
-    ]
+    return [(centre[0] + x * (spread * gap + half), centre[1] + y * spread * gap) for spread in reach for x, y in ring]

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from math import hypot
 
-from polywalk.drawing.placing import Sheet, about, beside, upright
+from polywalk.drawing.placing import NEAR, Sheet, about, beside, upright
 from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.subject import Subject, floats, planar
@@ -85,7 +85,8 @@ def _name(sheet: Sheet, index: int, row: Constraint, start: Point, end: Point) -
 def region(shape: Shape, role: str = "region") -> Layer:
     """Fill and edges of the drawn region; unbounded edges end in dashed arrows."""
     polygons = tuple(Polygon(face.corners, role, name="region") for face in shape.faces)
-    lines = [Line(shape.edges, "edge", name="edges")] if shape.edges else []
+    border = "rest edge" if role == "rest" else "edge"
+    lines = [Line(shape.edges, border, name="edges")] if shape.edges else []
     if shape.open_edges:
         lines.append(Line(shape.open_edges, "open edge", name="unbounded this way", arrow="end"))
     return Layer(polygons, tuple(lines))
@@ -109,7 +110,7 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
         for point in points:
             sheet.keep_clear(point, 8.0)
         labels = [
-            sheet.place(vertex_name(k), about(sheet.pixel(point), vertex_name(k), 15.0, middle), "point")
+            sheet.place(vertex_name(k), about(sheet.pixel(point), vertex_name(k), 15.0, middle, NEAR), "point")
             for k, point in enumerate(points)
         ]
     return Layer(marks=tuple(marks), labels=tuple(labels))

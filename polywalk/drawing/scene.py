@@ -51,7 +51,8 @@ class Mark:
 class Label:
     """Text centred on a point, moved by ``shift`` pixels (right, up), turned by ``angle`` degrees.
 
-    A label with a ``target`` is joined to that point by a thin line.
+    A label with a ``target`` is joined to that point by a thin line; a number that counts a step knows the segment
+    it lies ``along``; a tag is written as its ``longer`` text where there is room.
     """
 
     text: str
@@ -62,6 +63,8 @@ class Label:
     angle: float = 0.0
     target: Point | None = None
     hover: str = ""
+    along: tuple[Point, Point] | None = None
+    longer: str = ""
 
 
 @dataclass(frozen=True)
@@ -84,11 +87,15 @@ class KeyPart:
 
 @dataclass(frozen=True)
 class Axis:
-    """One axis: title (with unit) and the drawn interval; an axis without title is not shown."""
+    """One axis: title (with unit) and the drawn interval; an axis without title is not shown.
+
+    ``spacing`` is the distance of the numbers along it; 0 leaves it to the painter.
+    """
 
     title: str
     low: float
     high: float
+    spacing: float = 0.0
 
 
 @dataclass(frozen=True)

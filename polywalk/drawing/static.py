@@ -20,6 +20,7 @@ from polywalk.drawing.window import PAPER
 from polywalk.errors import DrawingError
 from polywalk.model import Model
 from polywalk.region import Region
+from polywalk.walks import Bases
 
 LEFT, BOTTOM = 64.0, 54.0
 """Pixels beside and below the picture for the axes' numbers."""
@@ -64,13 +65,13 @@ class Picture:
 
 
 def picture(
-    source: Model | Region, path: str | os.PathLike[str] | None = None, view: View | None = None, **changes: Any
+    source: Model | Region | Bases, path: str | os.PathLike[str] | None = None, view: View | None = None, **changes: Any
 ) -> Picture:
     """Paint a static picture of a region with its key: SVG, PNG or PDF, without a browser.
 
     Parameters
     ----------
-    source : Model or Region
+    source : Model, Region or Bases
     path : str or path-like, optional
         Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete. Without a path
         the picture is an SVG that only shows itself.
@@ -178,6 +179,8 @@ def _paint(axes: Any, drawn: Scene, theme: Theme) -> None:
 
 
 def _ticks(axes: Any, drawn: Scene, theme: Theme) -> None:
+    from matplotlib.ticker import MultipleLocator
+
     for side in axes.spines.values():
         side.set_color(theme.grid)
     axes.tick_params(colors=theme.quiet, labelsize=points(10), length=3)
@@ -186,5 +189,7 @@ def _ticks(axes: Any, drawn: Scene, theme: Theme) -> None:
             axis.set_visible(False)
         axis.set_label_text(data.title, fontsize=points(12), color=theme.text, parse_math=False)
         axis.get_major_formatter().set_useOffset(False)
+        if data.spacing:
+            axis.set_major_locator(MultipleLocator(data.spacing))
     if drawn.solid or not (drawn.axes[0].title or drawn.axes[1].title):
         axes.axis("off")

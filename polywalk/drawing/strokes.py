@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from typing import Any
 
-from polywalk.drawing.scene import Label, Line, Mark, Polygon
-from polywalk.drawing.theme import DEPTH, Theme, mixed
+from polywalk.drawing.scene import Label, Line, Mark, Point, Polygon
+from polywalk.drawing.theme import DEPTH, Style, Theme, mixed
 
 DASH = {"solid": "-", "dash": (0, (5, 3)), "dot": (0, (1.2, 2)), "dashdot": (0, (6, 2.5, 1.5, 2.5))}
+DASH |= {"longdash": (0, (11, 3)), "longdashdot": (0, (11, 2.5, 1.5, 2.5))}
 
 
 SYMBOLS = {"circle": "o", "ring": "o", "diamond": "D", "square ring": "s"}
@@ -37,8 +38,10 @@ def line(axes: Any, item: Line, theme: Theme) -> None:
     """Draw the parts of one line, with their heads."""
     style = theme.style(item.role, item.index)
     look = {"color": style.colour, "alpha": style.opacity, "zorder": DEPTH[item.role]}
-    for part in item.parts:
-        if not item.arrow:
+    for part in filter(None, item.parts):
+        if item.arrow and len(part) > 2:
+            _bent(axes, part, style, look)
+        elif not item.arrow:
             x, y = zip(*part, strict=True)
             width = points(style.width)
             axes.plot(x, y, linestyle=DASH[style.dash], linewidth=width, solid_capstyle="butt", **look)
@@ -53,15 +56,30 @@ def line(axes: Any, item: Line, theme: Theme) -> None:
             axes.annotate("", xy=part[-1], xytext=part[0], arrowprops=arrow, zorder=DEPTH[item.role])
 
 
-def mark(axes: Any, item: Mark, theme: Theme) -> None:
-    """Draw one mark; a vertex at the back is hollow."""
-    style = theme.style(item.role)
+def _bent(axes: Any, part: tuple[Point, ...], style: Style, look: dict[str, Any]) -> None:
+    """An arrow along a bent line, its head as large as its stroke asks for."""
+    x, y = zip(*part, strict=True)
+    axes.plot(x[:-1], y[:-1], linestyle=DASH[style.dash], linewidth=points(style.width), **look)
+    head: dict[str, Any] = {"arrowstyle": "-|>,head_width=0.26,head_length=0.55"}
+    head |= {
+        "mutation_scale": 13 if style.width > 2 else 9,
+        "linewidth": points(style.width),
+        "shrinkA": 0,
+        "shrinkB": 0,
+        **look,
+    }
+    axes.annotate("", xy=part[-1], xytext=part[-2], arrowprops=head, zorder=look["zorder"])
+
+
+def mark(axes: Any, item: Mark, theme: Theme, shrink: float = 1.0) -> None:
+    """Draw one mark, in the key a smaller one; a vertex at the back is hollow."""
+    style = theme.style(item.role, item.index)
     hollow = not style.fill or (item.role == "vertex" and item.index == 1)
     axes.plot(
         item.point[0],
         item.point[1],
         SYMBOLS[style.symbol],
-        markersize=points(style.size * (0.8 if style.symbol == "diamond" else 1)),
+        markersize=points(style.size * shrink * (0.8 if style.symbol == "diamond" else 1)),
         markerfacecolor=("none" if not style.fill else theme.paper) if hollow else style.fill,
         markeredgecolor=(style.fill or style.colour) if hollow else style.colour,
         markeredgewidth=points(max(style.width, 1.2 if hollow else 1.0)),
@@ -77,7 +95,7 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
         axes.plot(x, y, color=style.colour, linewidth=points(0.9), zorder=DEPTH["note"])
     size = {"step": 10.0}.get(item.role, style.size)
     frame = None
-    if item.role in {"step", "tag", "back tag", "stay"}:
+    if item.role in {"step", "tag", "back tag", "stay", "end", "ends", "target"}:
         shape = "circle,pad=0.22" if item.role == "step" else "round,pad=0.22"
         frame = {
             "boxstyle": shape,
@@ -99,6 +117,6 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
         bbox=frame,
         zorder=DEPTH[item.role],
         parse_math=False,
-        fontweight="bold" if item.role in {"step", "point"} else "normal",
+        fontweight="bold" if item.role in {"step", "point", "target"} else "normal",
         clip_on=False,
     )

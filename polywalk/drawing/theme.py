@@ -20,10 +20,11 @@ CONSTRAINTS = {
 WALKS = {
     "light": ("#16181D", "#A63A00", "#004E7C", "#6B2C63"),
     "dark": ("#FFFFFF", "#FFB27A", "#8FD0F5", "#F1B7DA"),
-    "grey": ("#000000", "#000000", "#333333", "#333333"),
+    "grey": ("#000000", "#3A3A3A", "#707070", "#000000"),
 }
 FONT = "DejaVu Sans, Verdana, sans-serif"
 DASHES = ("solid", "dash", "dot", "dashdot")
+WALK_DASHES = (*DASHES, "longdash", "longdashdot")
 
 
 @dataclass(frozen=True)
@@ -57,8 +58,8 @@ class Theme:
         return Style(colours[index % 8], width=1.8, dash=DASHES[(index // 8) % 4])
 
     def walk(self, index: int) -> Style:
-        """Walk number ``index``: told apart by dash as well as colour."""
-        return Style(WALKS[self.mode][index % 4], width=2.6, dash=DASHES[index % 4])
+        """Walk number ``index``: told apart by dash as well as colour; the two together repeat after twelve."""
+        return Style(WALKS[self.mode][index % 4], width=2.6, dash=WALK_DASHES[index % 6])
 
     def style(self, role: str, index: int = 0) -> Style:
         """The style of a role, the only place a painter asks."""
@@ -71,13 +72,17 @@ class Theme:
             if role == "conflict line":
                 return replace(base, width=3.2, dash="solid")
             return replace(base, fill=self.paper, size=11.0)
-        if role in {"walk", "phase 1", "walk rest", "step"}:
+        if role in {"walk", "phase 1", "walk rest", "step", "onward", "end", "moved", "stayed"}:
             base = self.walk(index)
             changes = {
                 "walk": replace(base),
                 "phase 1": replace(base, dash="dot", width=2.2),
                 "walk rest": replace(base, opacity=0.25, width=1.6),
                 "step": replace(base, fill=self.paper, size=15.0, width=1.2),
+                "onward": replace(base, width=1.8),
+                "end": replace(base, fill=self.paper, size=11.0, width=1.0),
+                "moved": replace(base, fill=base.colour, size=6.0, width=1.0),
+                "stayed": replace(base, fill=self.paper, size=9.0, width=1.6),
             }
             return changes[role]
         return self._fixed()[role]
@@ -86,18 +91,20 @@ class Theme:
         return {
             "region": Style(self.edge, fill=self.face, opacity=1.0, width=0.0),
             "facet": Style(self.edge, fill=self.face, opacity=0.62, width=0.0),
-            "rest": Style(self.quiet, fill=self.face, opacity=0.6, width=1.0, dash="dash"),
+            "rest": Style(self.quiet, fill=self.face, opacity=0.45, width=1.0, dash="dash"),
+            "rest edge": Style(self.quiet, width=1.3, dash="dash"),
+            "short": Style(self.text, width=1.6, dash="dot"),
             "edge": Style(self.edge, width=1.6),
             "hidden edge": Style(self.quiet, width=1.0, dash="dash"),
             "open edge": Style(self.edge, width=1.8, dash="dash"),
             "level": Style(self.quiet, fill=self.quiet, opacity=0.1, width=0.0),
             "level line": Style(self.quiet, width=1.3, dash="dashdot"),
-            "objective": Style(self.text, width=2.0),
+            "objective": Style(self.quiet, width=3.4),
             "grid": Style(self.grid, width=0.8),
             "axis": Style(self.quiet, width=1.0),
             "vertex": Style(self.paper, fill=self.edge, width=1.0, size=8.0),
-            "degenerate": Style(self.edge, width=1.6, size=17.0, symbol="ring"),
-            "optimum": Style(self.paper, fill=self.text, width=1.0, size=15.0, symbol="diamond"),
+            "degenerate": Style(self.edge, width=1.8, size=21.0, symbol="ring"),
+            "optimum": Style(self.paper, fill=self.text, width=1.0, size=14.0, symbol="diamond"),
             "optimal face": Style(self.text, width=4.5),
             "selected": Style(self.text, width=2.0, size=22.0, symbol="square ring"),
             "start": Style(self.text, width=2.0, size=13.0, symbol="square ring"),
@@ -105,8 +112,22 @@ class Theme:
             "back tag": Style(self.quiet, fill=self.paper, width=1.0, size=11.0),
             "back": Style(self.quiet, fill=self.face, opacity=0.9, width=0.0),
             "name": Style(self.text, size=11.0),
+            "ends": Style(self.text, fill=self.paper, size=11.0, width=1.0),
             "note": Style(self.quiet, size=10.0),
             "point": Style(self.text, size=11.0),
+            "basis": Style(self.edge, fill=self.paper, width=1.4, size=34.0),
+            "optimal basis": Style(self.text, fill=self.text, width=1.4, size=34.0),
+            "first basis": Style(self.text, width=2.0, size=44.0, symbol="square ring"),
+            "basis name": Style(self.text, size=9.5),
+            "optimal basis name": Style(self.paper, size=9.5),
+            "exchange": Style(self.grid, width=1.2),
+            "pivot": Style(self.quiet, width=0.9),
+            "faint pivot": Style(self.quiet, width=0.8, opacity=0.4),
+            "exit": Style(self.text, width=1.3),
+            "other exit": Style(self.quiet, width=0.9, dash="dash"),
+            "target": Style(self.text, size=12.0),
+            "none": Style(self.text),
+            "letter": Style(self.paper, width=0.0),
         }
 
 
@@ -120,15 +141,17 @@ DEPTH = {
             ("level", "level line"),
             ("facet", "rest"),
             ("hatch", "constraint"),
-            ("edge", "open edge", "conflict line"),
+            ("edge", "rest edge", "short", "open edge", "conflict line", "exchange", "letter"),
+            ("pivot", "faint pivot", "exit", "other exit"),
             ("optimal face", "objective"),
             ("walk rest",),
-            ("phase 1", "walk"),
-            ("vertex",),
+            ("phase 1", "walk", "onward"),
+            ("first basis",),
+            ("vertex", "basis", "optimal basis", "moved", "stayed"),
             ("degenerate", "optimum", "start", "selected"),
             ("back tag",),
-            ("note", "name", "tag", "point"),
-            ("stay", "step"),
+            ("note", "name", "tag", "point", "basis name", "optimal basis name", "target"),
+            ("stay", "step", "end", "ends"),
         )
     )
     for role in roles

@@ -17,10 +17,19 @@ LISTED = {
     "optimum": "optimum",
     "start": "start of the walk",
     "selected": "selected",
+    "first basis": "where a walk starts or arrives",
+    "basis": "basis",
+    "optimal basis": "optimal basis",
+    "moved": "pivot that moves",
+    "stayed": "stay",
 }
 """Marks by role, as the legend calls them."""
 
+OF_WALK = ("moved", "stayed")
+"""Marks in the look of their walk, switched off and on with it."""
+
 IN_LEGEND = {"constraint", "conflict line", "open edge", "level line", "objective", "walk", "phase 1", "optimal face"}
+IN_LEGEND |= {"pivot", "faint pivot", "exchange", "exit", "other exit", "letter"}
 
 
 IN_SPACE = 0.55
@@ -95,14 +104,15 @@ def _line(drawn: Scene, item: Line, theme: Theme) -> list[dict[str, Any]]:
     points: list[Point | None] = []
     for part in item.parts:
         points += [*part, None]
-    group = f"{item.role} {item.index}" if item.role not in {"phase 1", "walk rest"} else f"walk {item.index}"
+    of_walk = item.role in {"phase 1", "walk rest", "onward"}
+    group = f"walk {item.index}" if of_walk else f"{item.role} {item.index}"
     look: dict[str, Any] = {
         "mode": "lines",
         "line": {"color": style.colour, "width": style.width * (1.6 if drawn.solid else 1.0), "dash": style.dash},
         "opacity": style.opacity,
         "name": html(item.name or item.role),
         "legendgroup": group if item.role != "hatch" else f"constraint {item.index}",
-        "showlegend": item.role in IN_LEGEND,
+        "showlegend": item.role in IN_LEGEND and (bool(item.name) or item.role != "phase 1"),
     }
     hover = {"hoverinfo": "text", "text": html(item.hover)} if item.hover else {"hoverinfo": "skip"}
     traces = [_trace(drawn, points, **look, **hover)]
@@ -128,18 +138,21 @@ def _marks(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
     traces = []
     for role in LISTED:
         found = [mark for mark in drawn.marks if mark.role == role]
-        if found:
-            traces.append(_mark_trace(drawn, role, found, theme))
+        for index in sorted({mark.index for mark in found}) if role in OF_WALK else [0] if found else []:
+            group = [mark for mark in found if role not in OF_WALK or mark.index == index]
+            traces.append(_mark_trace(drawn, role, group, theme))
     return traces
 
 
 def _mark_trace(drawn: Scene, role: str, found: list[Mark], theme: Theme) -> dict[str, Any]:
-    style = theme.style(role)
+    style = theme.style(role, found[0].index)
     size = style.size * (IN_SPACE if drawn.solid else 1.0)
     marker = {"symbol": SYMBOLS[style.symbol], "size": size, "color": style.fill or style.colour}
     marker["line"] = {"color": style.colour, "width": style.width}
     look: dict[str, Any] = {"mode": "markers", "marker": marker, "name": LISTED[role], "showlegend": role != "vertex"}
-    if role in {"vertex", "optimum"}:
+    if role in OF_WALK:
+        look |= {"showlegend": False, "legendgroup": f"walk {found[0].index}"}
+    if role in {"vertex", "optimum", "basis", "optimal basis", *OF_WALK}:
         look |= {"hoverinfo": "text", "hovertext": [html(mark.hover) for mark in found]}
     else:
         look |= {"hoverinfo": "skip"}

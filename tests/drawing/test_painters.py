@@ -161,3 +161,28 @@ def test_names_in_the_plane_do_not_cover_one_another() -> None:
         for k, one in enumerate(areas):
             for other in areas[k + 1 :]:
                 assert sum(overlap(a, b) for a in one for b in other) == 0
+
+
+@pytest.mark.parametrize("variant", ["base", "tied", "degenerate", "unbounded", "flat", "infeasible"])
+def test_words_on_a_solid_keep_clear_of_one_another(variant: str) -> None:
+    from polywalk.drawing.placing import box, overlap
+
+    model = harbour_row(variant)
+    walks = () if variant == "infeasible" else (pw.walk(model), pw.walk(model, rule="bland"))
+    words = laid_flat(scene(model, View(walks=walks))).labels
+    areas = [(label.text, box(label.text, label.point)) for label in words if label.role != "back tag"]
+    clashes = [
+        (one, other)
+        for k, (one, area) in enumerate(areas)
+        for other, second in areas[k + 1 :]
+        if overlap(area, second) > 40  # square pixels: the corners of two boxes may touch, the letters in them do not
+    ]
+    assert not clashes
+
+
+def test_two_walks_on_one_edge_are_apart_on_paper() -> None:
+    model = harbour_row()
+    flat = laid_flat(scene(model, View(walks=(pw.walk(model), pw.walk(model, rule="bland")))))
+    first, second = (line for line in flat.lines if line.role == "walk")
+    (a, _), (b, _) = first.parts[-1], second.parts[-1]
+    assert 5 < ((a[0] - b[0]) ** 2 + (a[1] - b[1]) ** 2) ** 0.5 < 12

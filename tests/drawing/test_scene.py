@@ -189,7 +189,13 @@ def test_the_key_tells_optimum_degeneracy_open_sides_and_paths() -> None:
     assert "degenerate: at V10 4 constraints meet, 3 would do" in text
     assert "dantzig: 4 pivots, no stay, optimal: V0 → V1 → V2 → V7 → V8" in text
     text = [row.text for part in scene(harbour_row("unbounded")).key for row in part.rows]
-    assert "no limit along (pump, chips, tank) = (0, 1, 0), and the objective improves without end" in text
+    open_side = (
+        "no limit along (pump, chips, tank) = (0, 1, 0), and the objective improves without end; it slides along "
+    )
+    assert open_side + "grid connection, quay pipe, pump lower, tank lower, tank upper" in text
+    assert "the nearest point of that, (0, 8, 4), misses town contract by 2" in [
+        row.text for part in scene(harbour_row("infeasible")).key for row in part.rows
+    ]
 
 
 @pytest.mark.parametrize(

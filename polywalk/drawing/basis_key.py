@@ -1,0 +1,86 @@
+"""The words of a picture of bases: its key, its letters, what a basis says when pointed at."""
+
+from __future__ import annotations
+
+from itertools import count
+from string import ascii_uppercase
+
+from polywalk.drawing.scene import KeyPart, KeyRow
+from polywalk.region import vertex_name
+from polywalk.walks import Bases, Route, basis_name
+
+MOST_LISTED = 24
+"""Past this many bases the key leaves their list out: their letters say what they hold."""
+
+
+def letters_of(bases: Bases) -> dict[str, str]:
+    """A letter for each constraint that some bases hold and others do not, in the model's order."""
+    letters = (letter * size for size in count(1) for letter in ascii_uppercase)
+    everywhere = set.intersection(*(set(basis.held) for basis in bases.members)) if len(bases.members) > 1 else set()
+    return {name: next(letters) for name in bases.vertex.active if name not in everywhere and _held(bases, name)}
+
+
+def _held(bases: Bases, name: str) -> bool:
+    return any(name in basis.held for basis in bases.members)
+
+
+def hover(bases: Bases, number: int) -> str:
+    """Everything about one basis, as lines of plain text."""
+    basis = bases.members[number]
+    lines = [f"{basis.name}{' (optimal)' if basis.optimal else ''}: {', '.join(basis.held)}"]
+    onward = ", ".join(map(basis_name, bases.onward[number]))
+    lines += [f"a degenerate pivot may lead to {onward}"] if onward else []
+    ways = ", ".join(found.target for found in bases.exits if found.basis == number and found.improves)
+    return "\n".join(lines + ([f"a step may lead to {ways}"] if ways else []))
+
+
+def key(bases: Bases, shown: tuple[int, ...], routes: tuple[Route, ...], few: bool) -> tuple[KeyPart, ...]:
+    """All parts of the key that have rows."""
+    parts = (
+        KeyPart("What the marks say", tuple(_marks(bases, routes, few))),
+        KeyPart("Walks", tuple(KeyRow("walk", route.story, index) for index, route in enumerate(routes))),
+        KeyPart(f"Constraints that meet at {vertex_name(bases.number)}", tuple(_constraints(bases))),
+        KeyPart("Bases, with the constraints held active", _listed(bases, shown)),
+    )
+    return tuple(part for part in parts if part.rows)
+
+
+def _marks(bases: Bases, routes: tuple[Route, ...], few: bool) -> list[KeyRow]:
+    name = vertex_name(bases.number)
+    rows = []
+    if len(bases.optimal) < len(bases.members):
+        rows.append(KeyRow("basis", f"a basis of {name}: the constraints held active, by letter"))
+    if bases.optimal:
+        rows.append(KeyRow("optimal basis", "an optimal basis: no slack improves the objective"))
+    if any(route.places for route in routes):
+        rows.append(KeyRow("first basis", "where a walk starts or arrives; its numbers are those of its pivots"))
+    if any(pivot.improves for pivot in bases.pivots):
+        rows.append(
+            KeyRow(
+                "pivot" if few else "faint pivot",
+                "a degenerate pivot that improves at step 0: the point stays, the basis changes",
+            )
+        )
+    if few and not all(pivot.improves for pivot in bases.pivots):
+        rows.append(KeyRow("exchange", "one constraint apart, but no simplex pivot leads from one to the other"))
+    if any(found.improves for found in bases.exits):
+        rows.append(KeyRow("exit", f"an edge that leaves {name} and improves the objective"))
+    if few and not all(found.improves for found in bases.exits):
+        rows.append(KeyRow("other exit", f"an edge that leaves {name} without improving it"))
+    return rows
+
+
+def _constraints(bases: Bases) -> list[KeyRow]:
+    letters, model = letters_of(bases), bases.model
+    rows = []
+    for name in bases.vertex.active:
+        note = "" if name in letters else "   (in every basis)" if _held(bases, name) else "   (in no basis)"
+        text = f"{name}: {model.constraint(name).text(model.variables)}{note}"
+        rows.append(KeyRow("point", text, tag=letters.get(name, "")))
+    return rows
+
+
+def _listed(bases: Bases, shown: tuple[int, ...]) -> tuple[KeyRow, ...]:
+    if len(shown) > MOST_LISTED:
+        return (KeyRow("point", f"{len(shown)} bases, each named by its letters; pw.bases(...) prints them all"),)
+    return tuple(KeyRow("point", ", ".join(bases.members[k].held), tag=basis_name(k)) for k in shown)
