@@ -30,10 +30,14 @@ def signs_hold(rows, weights, turned=1):
     return not any(wrong[row[1]](turned * w) for row, w in zip(rows, weights, strict=True))
 
 
+def implies(rows, weights, coefficients, rhs):
+    """Whether the weighted rows add up to exactly coefficients . x <= rhs."""
+    return signs_hold(rows, weights) and combined(rows, weights) == (list(coefficients), rhs)
+
+
 def proves_empty(rows, weights):
     """Farkas: the rows add up to 0 <= a negative number."""
-    row, rhs = combined(rows, weights)
-    return bool(rows) and signs_hold(rows, weights) and not any(row) and rhs < 0
+    return bool(rows) and implies(rows, weights, [0] * len(rows[0][0]), rhs := combined(rows, weights)[1]) and rhs < 0
 
 
 def proves_optimal(objective, rows, point, weights, value):

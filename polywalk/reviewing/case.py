@@ -8,12 +8,16 @@ from functools import cached_property
 from operator import mul
 
 from polywalk.budget import Budget
-from polywalk.exact import Row, integer_row
+from polywalk.exact import integer_row, linear, short
 from polywalk.model import Constraint, Model
 from polywalk.region import Region, region
 from polywalk.reviewing.expectations import Outcome
+from polywalk.reviewing.findings import Proof
 from polywalk.reviewing.limits import Limits
 from polywalk.reviewing.standing import Standing, standings
+from polywalk.reviewing.telling import listed
+
+Integers = tuple[int, ...]
 
 
 @dataclass(frozen=True)
@@ -64,19 +68,23 @@ class Case:
         return tuple((k, row) for k, row in enumerate(self.model.constraints) if not row.is_constant)
 
     @cached_property
-    def _whole(self) -> dict[int, tuple[tuple[int, ...], int]]:
+    def whole(self) -> dict[int, tuple[Integers, int]]:
         """Each row as integers (b, a), b + a.x >= 0 inside, and what it was multiplied by."""
-        return {k: integer_row((row.inward[0], *row.inward[1])) for k, row in self.rows}
+        found = {}
+        for k, row in self.rows:
+            (b, *a), scale = integer_row((row.rhs, *row.coefficients))
+            found[k] = ((-b, *a) if row.sense == ">=" else (b, *[-value for value in a])), scale
+        return found
 
     @cached_property
-    def _corners(self) -> list[tuple[int, ...]]:
+    def _corners(self) -> list[Integers]:
         return [integer_row((Fraction(1), *point))[0] for point in self.region.base]
 
     @cached_property
     def _products(self) -> dict[int, list[int]]:
         """For each row and base point: the slack times two positive numbers."""
         corners = self._corners
-        return {k: [sum(map(mul, whole, corner)) for corner in corners] for k, (whole, _) in self._whole.items()}
+        return {k: [sum(map(mul, whole, corner)) for corner in corners] for k, (whole, _) in self.whole.items()}
 
     @cached_property
     def active(self) -> list[list[int]]:
@@ -94,17 +102,33 @@ class Case:
         return self._extreme(k, self._products[k], least=False)
 
     def _extreme(self, k: int, products: list[int], *, least: bool) -> tuple[Fraction, int]:
-        scale, corners = self._whole[k][1], self._corners
-        if least and 0 in products:
-            return Fraction(0), products.index(0)
-        found = (min if least else max)((Fraction(value, corners[c][0]), c) for c, value in enumerate(products))
-        return found[0] / scale, found[1]
+        scale, heads = self.whole[k][1], [corner[0] for corner in self._corners]
+        best, sign = 0, 1 if least else -1
+        for c, value in enumerate(products):
+            if sign * (value * heads[best] - products[best] * heads[c]) < 0:
+                best = c
+        return Fraction(products[best], heads[best] * scale), best
 
     @cached_property
     def standing(self) -> dict[int, Standing]:
         """What each row with variables is there for, by place; of a model that has a plan."""
         return standings(self)
 
-    def slope(self, k: int, direction: Row) -> int:
-        """The slack's change along a direction, times a positive number."""
-        return sum(map(mul, self._whole[k][0][1:], integer_row(direction)[0]))
+    @cached_property
+    def _rules(self) -> dict[str, str]:
+        return {row.name: row.text(self.model.variables) for row in self.model.constraints}
+
+    def told(self, row: Constraint | str) -> str:
+        """A constraint by name and rule: "cap (x ≤ 3)"."""
+        name = row if isinstance(row, str) else row.name
+        return f"{name} ({self._rules[name]})"
+
+    def adds_up(self, proof: Proof) -> str:
+        """The multiplied rows and what they add up to, in words and numbers."""
+        parts = [f"{_times(weight)}{self.told(name)}" for name, weight in proof.multipliers]
+        verb = "says" if len(parts) == 1 else "add up to"
+        return f"{listed(parts)} {verb} {linear(proof.coefficients, self.model.variables)} ≤ {short(proof.rhs)}"
+
+
+def _times(weight: Fraction) -> str:
+    return "" if weight == 1 else f"{short(weight)} × "

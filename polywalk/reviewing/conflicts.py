@@ -15,7 +15,7 @@ from polywalk.model import Constraint, Model
 from polywalk.region import region
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.findings import Proof
-from polywalk.reviewing.proofs import Upper, proof, upper
+from polywalk.reviewing.proofs import Upper, halves, proof
 
 
 @dataclass(frozen=True)
@@ -36,12 +36,12 @@ def conflicts(case: Case) -> Conflicts:
 def all_conflicts(case: Case) -> tuple[Proof, ...]:
     """Every irreducible conflict: the vertices of the alternative polyhedron with the smallest supports."""
     model = case.model
-    halves = [(k, sign, half) for k, row in enumerate(model.constraints) for sign, half in _halves(row)]
-    vertices = region(_alternative([half for *_, half in halves], model.n), case.budget).base
+    sides = [(k, sign, half) for k, row in enumerate(model.constraints) for sign, half in halves(row)]
+    vertices = region(_alternative([half for *_, half in sides], model.n), case.budget).base
     found: dict[frozenset[int], Row] = {}
     for vertex in vertices:
         weights = [Fraction(0)] * len(model.constraints)
-        for (k, sign, _), weight in zip(halves, vertex, strict=True):
+        for (k, sign, _), weight in zip(sides, vertex, strict=True):
             weights[k] += sign * weight
         found.setdefault(frozenset(k for k, weight in enumerate(weights) if weight), primitive(weights))
     least = [support for support in found if not any(other < support for other in found)]
@@ -50,21 +50,14 @@ def all_conflicts(case: Case) -> tuple[Proof, ...]:
     return tuple(proof(model.constraints, found[support], nothing) for support in ordered)
 
 
-def _halves(row: Constraint) -> list[tuple[int, Upper]]:
-    """The row as <=, with the sign its multiplier gets; an equality both ways."""
-    if row.sense == "==":
-        return [(1, upper(row)), (-1, upper(row).reverse)]
-    return [(-1 if row.sense == ">=" else 1, upper(row))]
-
-
-def _alternative(halves: list[Upper], n: int) -> Model:
+def _alternative(sides: list[Upper], n: int) -> Model:
     """Multipliers >= 0 with which no variable is left and the right-hand sides add up to -1."""
-    count = len(halves)
+    count = len(sides)
     names = tuple(f"multiplier {i}" for i in range(count))
     rows = [
-        Constraint(f"variable {j}", tuple(half.coefficients[j] for half in halves), "==", Fraction(0)) for j in range(n)
+        Constraint(f"variable {j}", tuple(half.coefficients[j] for half in sides), "==", Fraction(0)) for j in range(n)
     ]
-    rows.append(Constraint("contradiction", tuple(half.rhs for half in halves), "==", Fraction(-1)))
+    rows.append(Constraint("contradiction", tuple(half.rhs for half in sides), "==", Fraction(-1)))
     for i in range(count):
         unit = tuple(Fraction(int(i == k)) for k in range(count))
         rows.append(Constraint(f"sign {i}", unit, ">=", Fraction(0)))

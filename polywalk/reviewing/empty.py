@@ -15,7 +15,6 @@ from polywalk.exact import short
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.conflicts import Conflicts, conflicts
 from polywalk.reviewing.findings import Finding
-from polywalk.reviewing.proofs import sum_text
 from polywalk.reviewing.repairs import least_repair, single_repairs
 from polywalk.reviewing.telling import listed
 
@@ -33,7 +32,7 @@ def empty(case: Case) -> Iterator[Finding]:
             "conflict",
             f"conflict{count}: {listed(names)}",
             f"no plan satisfies {listed(names)} together, though without any one of them there is one: "
-            f"{sum_text(case.model, proof)}.",
+            f"{case.adds_up(proof)}.",
             "one of them must give way: look for a wrong sense, number or unit.",
             names,
             proofs=(proof,),
@@ -58,7 +57,7 @@ def _no_plan(case: Case, found: Conflicts) -> Finding:
     return Finding(
         "no-plan",
         f"no plan satisfies every constraint: {listed(names)} contradict{each}",
-        f"multiplied and added, {sum_text(case.model, proof)}, which is false. {how}{_tiny(case, found)}",
+        f"multiplied and added, {case.adds_up(proof)}, which is false. {how}{_tiny(case, found)}",
         "see which single constraint would repair it, and by how much.",
         names,
         proofs=(proof,),

@@ -4,12 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from fractions import Fraction
+from math import gcd
 
 from polywalk.exact import short
 from polywalk.model import Constraint
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.findings import Finding
-from polywalk.reviewing.proofs import upper
 
 FACTORS: dict[Fraction, str] = {
     Fraction(60): "minutes in an hour",
@@ -33,19 +33,20 @@ def unit_slips(case: Case) -> Iterator[Finding]:
     """Pairs of constraints with the same variables that agree but for one number, at least two numbers agreeing."""
     seen: dict[object, list[tuple[Constraint, Fraction]]] = {}
     told = set[tuple[str, str]]()
-    for _, row in case.rows:
-        numbers = (*upper(row).coefficients, upper(row).rhs)
-        support = tuple(j for j, value in enumerate(numbers) if value)
+    for k, row in case.rows:
+        b, *a = case.whole[k][0]
+        numbers = (*a, -b)
+        support = [j for j, value in enumerate(numbers) if value]
         for left_out in support if len(support) > 2 else ():
-            rest = [j for j in support if j != left_out]
-            size = numbers[rest[0]]
-            key = (left_out, abs(size) == size, tuple((j, numbers[j] / size) for j in rest))
-            for other, share in seen.get(key, ()):
-                found = _factor(numbers[left_out] / size / share)
+            rest = [numbers[j] if j != left_out else 0 for j in range(len(numbers))]
+            size = gcd(*rest) * (1 if next(value for value in rest if value) > 0 else -1)
+            key, share = (left_out, *[value // size for value in rest]), Fraction(numbers[left_out], size)
+            for other, one in seen.get(key, ()):
+                found = _factor(share / one)
                 if found is not None and (other.name, row.name) not in told:
                     told.add((other.name, row.name))
                     yield _hint(case, other, row, left_out, found)
-            seen.setdefault(key, []).append((row, numbers[left_out] / size))
+            seen.setdefault(key, []).append((row, share))
 
 
 def _factor(ratio: Fraction) -> tuple[Fraction, Fraction] | None:
@@ -66,7 +67,7 @@ def _hint(
     return Finding(
         "unit-slip",
         f"hint: {first.name} and {second.name} differ by {short(ratio)} in {where}",
-        f"{first.name} ({first.text(names)}) and {second.name} ({second.text(names)}) agree in every proportion but "
+        f"{case.told(first)} and {case.told(second)} agree in every proportion but "
         "one: "
         f"{where} differs by a factor of {short(ratio)}, which is the factor between common units ({FACTORS[factor]}). "
         "This is a hint, not a proof.",

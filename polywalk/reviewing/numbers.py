@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from fractions import Fraction
 from math import asin, degrees, sqrt
 
@@ -18,32 +18,46 @@ from polywalk.reviewing.proofs import place, upper
 def spread(case: Case) -> Iterator[Finding]:
     """Coefficients of very different size, in a row and across the model."""
     limit, names = case.limits.spread, case.model.variables
-    for _, row in case.rows:
-        sizes = [(abs(value), name) for value, name in zip(row.coefficients, names, strict=True) if value]
+    ends = []
+    for k, row in case.rows:
+        (_, *a), scale = case.whole[k]
+        sizes = [(abs(value), name) for value, name in zip(a, names, strict=True) if value]
         (least, small), (largest, large) = min(sizes), max(sizes)
+        ends.append((Fraction(least, scale), Fraction(largest, scale), row.name))
         if largest > limit * least:
-            yield Finding(
-                "wide-row",
-                f"{row.name} mixes coefficients of {short(least)} and {short(largest)}",
-                f"in {row.name} the coefficient of {large} is {short(largest / least)} times that of {small}: within a "
-                "solver's tolerance the smaller term is lost.",
-                "choose units in which both are of similar size, or check for a unit slip.",
-                (row.name,),
-                (large, small),
-                amounts=(("ratio", largest / least),),
-            )
-    everywhere = [(abs(value), row.name) for _, row in case.rows for value in row.coefficients if value]
-    if everywhere and max(everywhere)[0] > limit * min(everywhere)[0]:
-        (least, small), (largest, large) = min(everywhere), max(everywhere)
-        yield Finding(
-            "wide-model",
-            f"coefficients run from {short(least)} to {short(largest)}",
-            f"the largest coefficient of the model ({short(largest)} in {large}) is {short(largest / least)} times the "
-            f"smallest ({short(least)} in {small}).",
-            "choose units that bring them together.",
-            (large, small),
-            amounts=(("ratio", largest / least),),
-        )
+            yield _wide_row(row, (ends[-1][0], small), (ends[-1][1], large))
+    if ends:
+        low, high = min(ends), max(ends, key=lambda end: end[1])
+        if high[1] > limit * low[0]:
+            yield _wide_model((low[0], low[2]), (high[1], high[2]))
+
+
+def _wide_row(row: Constraint, least: tuple[Fraction, str], largest: tuple[Fraction, str]) -> Finding:
+    ratio = largest[0] / least[0]
+    return Finding(
+        "wide-row",
+        f"{row.name} mixes coefficients of {short(least[0])} and {short(largest[0])}",
+        f"in {row.name} the coefficient of {largest[1]} is {short(ratio)} times that of {least[1]}: within a solver's "
+        "tolerance the smaller term is lost.",
+        "choose units in which both are of similar size, or check for a unit slip.",
+        (row.name,),
+        (largest[1], least[1]),
+        amounts=(("ratio", ratio),),
+    )
+
+
+def _wide_model(least: tuple[Fraction, str], largest: tuple[Fraction, str]) -> Finding:
+    ratio = largest[0] / least[0]
+    return Finding(
+        "wide-model",
+        f"coefficients run from {short(least[0])} to {short(largest[0])}",
+        f"the largest coefficient of the model ({short(largest[0])} in {largest[1]}) is {short(ratio)} times the "
+        "smallest "
+        f"({short(least[0])} in {least[1]}).",
+        "choose units that bring them together.",
+        (largest[1], least[1]),
+        amounts=(("ratio", ratio),),
+    )
 
 
 def nearly_parallel(case: Case) -> Iterator[Finding]:
@@ -52,7 +66,7 @@ def nearly_parallel(case: Case) -> Iterator[Finding]:
         return
     limit = case.limits.angle**2
     rows = [row for _, row in case.rows]
-    whole = np.array([_unit(row) for row in rows])
+    whole = np.array([_unit(case.whole[k][0][1:]) for k, _ in case.rows])
     near = np.abs(whole @ whole.T) > 1 - 2 * float(limit) - 1e-9
     for i, k in zip(*np.nonzero(np.triu(near, 1)), strict=True):
         sine = sine_squared(rows[i].coefficients, rows[k].coefficients)
@@ -60,10 +74,10 @@ def nearly_parallel(case: Case) -> Iterator[Finding]:
             yield _parallel(case, rows[i], rows[k], sine)
 
 
-def _unit(row: Constraint) -> list[float]:
-    """Of length 1; divided exactly first, so that no size overflows."""
-    largest = max(map(abs, row.coefficients))
-    scaled = [float(value / largest) for value in row.coefficients]
+def _unit(row: Sequence[int]) -> list[float]:
+    """Of length 1; divided as integers first, so that no size overflows."""
+    largest = max(map(abs, row))
+    scaled = [value / largest for value in row]
     length = sqrt(sum(value * value for value in scaled))
     return [value / length for value in scaled]
 
@@ -74,11 +88,11 @@ def sine_squared(left: Row, right: Row) -> Fraction:
 
 
 def _parallel(case: Case, first: Constraint, second: Constraint, sine: Fraction) -> Finding:
-    angle, names = degrees(asin(sqrt(sine))), case.model.variables
+    angle = degrees(asin(sqrt(sine)))
     return Finding(
         "nearly-parallel",
         f"{first.name} and {second.name} are parallel up to {angle:.2g} degrees",
-        f"{first.name} ({first.text(names)}) and {second.name} ({second.text(names)}) differ in direction by "
+        f"{case.told(first)} and {case.told(second)} differ in direction by "
         f"{angle:.2g} "
         "degrees only: where they meet depends strongly on the last digits of their numbers.",
         "if they are meant to be the same or parallel, use the same numbers in full; else check both.",
@@ -111,7 +125,7 @@ def _sliver(case: Case, row: Constraint, squared: Fraction, corner: int, length:
     return Finding(
         "sliver",
         f"the region is a sliver: {width:.3g} wide and {short(length)} long",
-        f"no plan is farther than {width:.3g} from {row.name} ({row.text(case.model.variables)}), the farthest is "
+        f"no plan is farther than {width:.3g} from {case.told(row)}, the farthest is "
         f"{place(case.model, point)}; yet the region is {short(length)} long. Lengths are taken in the variables' "
         "units.",
         "small errors in a number may empty it; check the constraints on both sides, and the units.",

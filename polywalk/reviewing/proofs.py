@@ -12,12 +12,11 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 
-from polywalk.exact import Row, linear, short
+from polywalk.exact import Row, short
 from polywalk.linear import Optimum, optimum
 from polywalk.model import Constraint, Model, Objective
 from polywalk.region.spans import combination
 from polywalk.reviewing.findings import Proof
-from polywalk.reviewing.telling import listed
 
 
 @dataclass(frozen=True)
@@ -37,6 +36,13 @@ def upper(row: Constraint) -> Upper:
     """A constraint as a <=; of an equality the half as typed."""
     same = Upper(row.coefficients, row.rhs)
     return same.reverse if row.sense == ">=" else same
+
+
+def halves(row: Constraint) -> list[tuple[int, Upper]]:
+    """The row as a <=, with the sign its own multiplier then has; an equality both ways."""
+    if row.sense == "==":
+        return [(1, upper(row)), (-1, upper(row).reverse)]
+    return [(-1 if row.sense == ">=" else 1, upper(row))]
 
 
 def proof(rows: Iterable[Constraint], weights: Iterable[Fraction], coefficients: Row) -> Proof:
@@ -72,23 +78,29 @@ def tight_at(model: Model, coefficients: Row, active: Sequence[Constraint]) -> P
     return None if best.weights is None else proof(active, best.weights, coefficients)
 
 
+def solved(rows: Sequence[Sequence[int]], target: Sequence[int]) -> Row | None:
+    """The y with sum of y_i rows_i = target, for as many integer rows as columns; None where they are dependent.
+
+    Elimination that stays in integers (Bareiss, Math. Comp. 22, 1968).
+    """
+    lines = [[*column, value] for column, value in zip(zip(*rows, strict=True), target, strict=True)]
+    last = 1
+    for k in range(len(lines)):
+        chosen = next((i for i in range(k, len(lines)) if lines[i][k]), None)
+        if chosen is None:
+            return None
+        lines[k], lines[chosen] = lines[chosen], lines[k]
+        lead, pivot = lines[k], lines[k][k]
+        for i, line in enumerate(lines):
+            if i != k:
+                factor = line[k]
+                lines[i] = [(pivot * a - factor * b) // last for a, b in zip(line, lead, strict=True)]
+        last = pivot
+    return tuple(Fraction(line[-1], last) for line in lines)
+
+
 def _proper(row: Constraint, weight: Fraction) -> bool:
     return row.sense == "==" or (weight <= 0 if row.sense == ">=" else weight >= 0)
-
-
-def sum_text(model: Model, found: Proof) -> str:
-    """The multiplied rows and what they add up to, in words and numbers."""
-    parts = [f"{_times(weight)}{name} ({_rule(model, name)})" for name, weight in found.multipliers]
-    added = f"{linear(found.coefficients, model.variables)} ≤ {short(found.rhs)}"
-    return f"{listed(parts)} {'says' if len(parts) == 1 else 'add up to'} {added}"
-
-
-def _times(weight: Fraction) -> str:
-    return "" if weight == 1 else f"{short(weight)} × "
-
-
-def _rule(model: Model, name: str) -> str:
-    return model.constraint(name).text(model.variables)
 
 
 def place(model: Model, point: Row) -> str:

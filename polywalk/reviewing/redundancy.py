@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from fractions import Fraction
+from math import gcd
 
 from polywalk.exact import full, short
 from polywalk.model import Constraint
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.findings import Finding, Proof
-from polywalk.reviewing.proofs import bounded_by, place, sum_text, upper
+from polywalk.reviewing.proofs import bounded_by, place, upper
 from polywalk.reviewing.standing import Standing
 from polywalk.reviewing.telling import listed
 
@@ -42,17 +43,16 @@ def without_variables(case: Case) -> Iterator[Finding]:
 
 def split_equalities(case: Case) -> Iterator[Finding]:
     """Two inequalities with opposite directions and the same end."""
-    lookup: dict[object, str] = {}
-    for _, row in case.rows:
+    seen: dict[tuple[int, ...], Constraint] = {}
+    for k, row in case.rows:
         if row.sense == "==":
             continue
-        mine = upper(row)
-        size = max(abs(value) for value in mine.coefficients)
-        key = (tuple(value / size for value in mine.coefficients), mine.rhs / size)
-        back = (tuple(-value for value in key[0]), -key[1])
-        if back in lookup:
-            yield _one_equality(case, case.model.constraint(lookup[back]), row)
-        lookup.setdefault(key, row.name)
+        whole, _ = case.whole[k]
+        size = gcd(*whole)
+        back = tuple([-value // size for value in whole])
+        if back in seen:
+            yield _one_equality(case, seen[back], row)
+        seen.setdefault(tuple([value // size for value in whole]), row)
 
 
 def _one_equality(case: Case, first: Constraint, second: Constraint) -> Finding:
@@ -60,7 +60,7 @@ def _one_equality(case: Case, first: Constraint, second: Constraint) -> Finding:
     return Finding(
         "split-equality",
         f"{first.name} and {second.name} together are one equality",
-        f"{first.name} ({first.text(names)}) and {second.name} ({second.text(names)}) leave only "
+        f"{case.told(first)} and {case.told(second)} leave only "
         f"{first.text(names).replace('≤', '=').replace('≥', '=')}.",
         "if an equality is meant, write it as one constraint; if not, one of the two has a wrong sense or number.",
         (first.name, second.name),
@@ -81,7 +81,7 @@ def _loose(case: Case, row: Constraint, standing: Standing) -> Finding:
     return Finding(
         "loose-constant",
         f"{row.name} has a constant of {short(row.rhs)}, {short(least)} would change nothing",
-        f"{row.name} ({row.text(case.model.variables)}) never binds: the other constraints keep its left side at "
+        f"{case.told(row)} never binds: the other constraints keep its left side at "
         f"{short(least)} or {'more' if row.sense == '>=' else 'less'}, reached at {_corner(case, standing)}.",
         f"use {full(least)} if it is meant as a switch (a big M), or check the number and its unit.",
         (row.name,),
@@ -125,7 +125,7 @@ def _spare(case: Case, row: Constraint, standing: Standing) -> Finding:
 
 def _duplicate(case: Case, row: Constraint, standing: Standing) -> tuple[str, str, str]:
     lead, rule = _leader(case, standing)
-    says = f"{row.name} ({row.text(case.model.variables)}) is {lead} ({rule}) times {short(_ratio(standing))}."
+    says = f"{case.told(row)} is {lead} ({rule}) times {short(_ratio(standing))}."
     return f"{row.name} says the same as {lead}", says, "keep one of the two; was the second meant to be different?"
 
 
@@ -133,7 +133,7 @@ def _parallel(case: Case, row: Constraint, standing: Standing) -> tuple[str, str
     lead, rule = _leader(case, standing)
     gap = upper(row).rhs - standing.proofs[0].rhs
     says = (
-        f"{row.name} ({row.text(case.model.variables)}) points the same way as {lead} ({rule}), which is tighter by "
+        f"{case.told(row)} points the same way as {lead} ({rule}), which is tighter by "
         f"{short(gap)}; {row.name} never binds."
     )
     return f"{row.name} is weaker than {lead}", says, f"remove {row.name}, or check whether its number was mistyped."
@@ -143,7 +143,7 @@ def _joint(case: Case, row: Constraint, standing: Standing) -> tuple[str, str, s
     others = listed(dict.fromkeys(name for made in standing.proofs for name, _ in made.multipliers))
     says = (
         f"of {others} and {row.name} one can go without changing what is allowed, but not all: "
-        f"{sum_text(case.model, standing.proofs[0])}. Here {row.name} is the one that could go."
+        f"{case.adds_up(standing.proofs[0])}. Here {row.name} is the one that could go."
     )
     return (
         f"{others} already imply {row.name}",
@@ -154,8 +154,8 @@ def _joint(case: Case, row: Constraint, standing: Standing) -> tuple[str, str, s
 
 def _touching(case: Case, row: Constraint, standing: Standing) -> tuple[str, str, str]:
     says = (
-        f"{row.name} ({row.text(case.model.variables)}) cuts nothing off and is only touched, at "
-        f"{_corner(case, standing)}: {sum_text(case.model, standing.proofs[0])}."
+        f"{case.told(row)} cuts nothing off and is only touched, at "
+        f"{_corner(case, standing)}: {case.adds_up(standing.proofs[0])}."
     )
     return (
         f"{row.name} only touches the region",
@@ -166,7 +166,7 @@ def _touching(case: Case, row: Constraint, standing: Standing) -> tuple[str, str
 
 def _redundant(case: Case, row: Constraint, standing: Standing) -> tuple[str, str, str]:
     says = (
-        f"{row.name} ({row.text(case.model.variables)}) never binds: {sum_text(case.model, standing.proofs[0])}. "
+        f"{case.told(row)} never binds: {case.adds_up(standing.proofs[0])}. "
         f"It comes closest at {_corner(case, standing)}, with {short(standing.slack)} to spare."
     )
     return f"{row.name} never binds", says, "remove it, or check whether its number was meant to be tighter."

@@ -12,7 +12,7 @@ from polywalk.model import Constraint, Model, Objective
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.conflicts import Conflicts
 from polywalk.reviewing.findings import Finding, Proof
-from polywalk.reviewing.proofs import Upper, most, place, proof, upper
+from polywalk.reviewing.proofs import Upper, halves, most, place, proof
 from polywalk.reviewing.telling import listed
 
 
@@ -68,34 +68,31 @@ def _repair(model: Model, row: Constraint) -> Repair | None:
     rest = model.without(row.name)
     if row.is_constant and not rest.constraints:
         return Repair(row, Fraction(0), (Fraction(0),) * model.n, Proof((), row.coefficients, Fraction(0)))
-    for half in [upper(row), upper(row).reverse][: 2 if row.sense == "==" else 1]:
+    for sign, half in halves(row):
         best = most(rest, half.reverse.coefficients)
         if best.point is None:
             return None
         if best.value is not None and best.weights is not None and -best.value > half.rhs:
             made = proof(rest.constraints, best.weights, half.reverse.coefficients)
-            return Repair(
-                row, -best.value if half == upper(row) and row.sense != ">=" else best.value, best.point, made
-            )
+            return Repair(row, -sign * best.value, best.point, made)
     return None
 
 
 def least_repair(case: Case) -> Finding:
     """The least weighted total of relaxations, an exact optimum; its multipliers prove that nothing less will do."""
     model, costs = case.model, _costs(case)
-    halves = [(k, half) for k, row in enumerate(model.constraints) for half in _both(row)]
-    best = optimum(_elastic(model, halves, costs))
+    sides = [(k, sign, half) for k, row in enumerate(model.constraints) for sign, half in halves(row)]
+    best = optimum(_elastic(model, [(half, costs[k]) for k, _, half in sides]))
     assert best.value is not None
     assert best.point is not None
     assert best.weights is not None
     point, eased = best.point[: model.n], best.point[model.n :]
     relaxed: dict[str, Fraction] = {}
     weights = [Fraction(0)] * len(model.constraints)
-    for (k, half), amount, weight in zip(halves, eased, best.weights, strict=False):
-        row = model.constraints[k]
+    for (k, sign, _), amount, weight in zip(sides, eased, best.weights, strict=False):
+        weights[k] -= sign * weight  # a minimum has multipliers <= 0 on a <=
         if amount:
-            relaxed[row.name] = amount
-        weights[k] += -weight if half == upper(row) and row.sense != ">=" else weight
+            relaxed[model.constraints[k].name] = amount
     return Finding(
         "least-repair",
         f"relaxing {listed(f'{name} by {short(amount)}' for name, amount in relaxed.items())} is the least in all",
@@ -105,7 +102,7 @@ def least_repair(case: Case) -> Finding:
         "read it as a hint where the model is wrong, not as a decision.",
         tuple(relaxed),
         points=(point,),
-        proofs=(proof(model.constraints, [-value for value in weights], (Fraction(0),) * model.n),),
+        proofs=(proof(model.constraints, weights, (Fraction(0),) * model.n),),
         amounts=(("least total", best.value), *((f"relax {name}", amount) for name, amount in relaxed.items())),
     )
 
@@ -133,20 +130,16 @@ def _amount(repair: Repair) -> Fraction:
     return abs(repair.rhs - repair.row.rhs)
 
 
-def _both(row: Constraint) -> list[Upper]:
-    return [upper(row), upper(row).reverse] if row.sense == "==" else [upper(row)]
-
-
-def _elastic(model: Model, halves: list[tuple[int, Upper]], costs: list[Fraction]) -> Model:
+def _elastic(model: Model, sides: list[tuple[Upper, Fraction]]) -> Model:
     """Every row with a relaxation >= 0 of its own; minimized is their weighted total."""
-    count = len(halves)
+    count = len(sides)
     names = tuple(f"variable {j}" for j in range(model.n)) + tuple(f"relaxation {i}" for i in range(count))
     rows = []
-    for i, (_, half) in enumerate(halves):
+    for i, (half, _) in enumerate(sides):
         own = tuple(Fraction(-int(i == k)) for k in range(count))
         rows.append(Constraint(f"row {i}", (*half.coefficients, *own), "<=", half.rhs))
     for i in range(count):
         unit = tuple(Fraction(int(model.n + i == k)) for k in range(model.n + count))
         rows.append(Constraint(f"sign {i}", unit, ">=", Fraction(0)))
-    cost = (*(Fraction(0),) * model.n, *(costs[k] for k, _ in halves))
+    cost = (*(Fraction(0),) * model.n, *(cost for _, cost in sides))
     return Model(names, tuple(rows), Objective("min", cost))

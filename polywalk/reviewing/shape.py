@@ -9,7 +9,7 @@ from polywalk.exact import Row, short
 from polywalk.model import Constraint
 from polywalk.reviewing.case import Case
 from polywalk.reviewing.findings import Finding, Proof
-from polywalk.reviewing.proofs import Upper, bounded_by, place, sum_text, upper
+from polywalk.reviewing.proofs import Upper, bounded_by, place, upper
 from polywalk.reviewing.telling import listed
 
 
@@ -72,7 +72,7 @@ def _implied(case: Case, row: Constraint) -> Finding:
         f"{row.name} can only hold with equality",
         f"{row.name} ({rule}) has no room in any plan, because {listed(forcing)} already "
         f"force{'s' * (len(forcing) == 1)} "
-        f"the opposite: {sum_text(case.model, made)}.",
+        f"the opposite: {case.adds_up(made)}.",
         f"write {row.name} as an equality if that is meant; else look for a wrong number in {listed(forcing)}.",
         (row.name, *(name for name in forcing if name != row.name)),
         proofs=(made,),
@@ -88,7 +88,7 @@ def _fixed(case: Case, j: int, name: str, value: Fraction) -> Finding:
     return Finding(
         "fixed-variable",
         f"{name} can only be {short(value)}",
-        f"{listed(forcing)} leave {name} no other value: {'; '.join(sum_text(case.model, one) for one in proofs)}.",
+        f"{listed(forcing)} leave {name} no other value: {'; '.join(case.adds_up(one) for one in proofs)}.",
         f"if {name} is meant to be decided, one of them is too tight.",
         forcing,
         (name,),

@@ -10,16 +10,15 @@ Telgen, Identifying redundant constraints and implicit equalities, Management Sc
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from math import gcd
 from typing import TYPE_CHECKING, Literal
 
-from polywalk.exact import Row, primitive
 from polywalk.model import Constraint, Model
 from polywalk.region.spans import rank
 from polywalk.reviewing.findings import Proof
-from polywalk.reviewing.proofs import Upper, bounded_by, tight_at, upper
+from polywalk.reviewing.proofs import bounded_by, halves, proof, solved, tight_at, upper
 
 if TYPE_CHECKING:
     from polywalk.reviewing.case import Case
@@ -50,7 +49,7 @@ class Standing:
 
 def standings(case: Case) -> dict[int, Standing]:
     """The standing of every row with variables, by place."""
-    followers = _followers(case.model, case.rows)
+    followers = _followers(case)
     joint = _spare_equalities(case, [k for k, _ in case.rows if k not in followers])
     kept = _kept(case, {*followers, *joint})
     found = {}
@@ -69,13 +68,27 @@ def standings(case: Case) -> dict[int, Standing]:
 
 
 def _implied(case: Case, row: Constraint, slack: Fraction, corner: int, kept: set[int]) -> Standing:
-    model = case.model
-    active = [
-        model.constraints[place] for place in case.active[corner] if place in kept and model.constraints[place] != row
-    ]
-    made = tight_at(model, upper(row).coefficients, active)
+    rows, k = case.model.constraints, next(k for k, other in case.rows if other is row)
+    places = [place for place in case.active[corner] if place in kept]
+    made = _simple(case, k, places)
+    if made is None:
+        made = tight_at(case.model, upper(row).coefficients, [rows[place] for place in places])
     assert made is not None, "what a region implies, the rows it needs imply"
     return Standing("loose" if slack else "touching", slack, corner, (made,))
+
+
+def _simple(case: Case, k: int, places: list[int]) -> Proof | None:
+    """The only combination of as many independent rows as there are variables; None where there is no such."""
+    rows = case.model.constraints
+    if len(places) != case.model.n or any(rows[place].sense == "==" for place in places):
+        return None
+    (_, *target), scale = case.whole[k]
+    shares = solved([case.whole[place][0][1:] for place in places], target)
+    if shares is None or any(share < 0 for share in shares):
+        return None
+    weights = [share * Fraction(case.whole[place][1], scale) for place, share in zip(places, shares, strict=True)]
+    signed = [-weight if rows[p].sense == ">=" else weight for p, weight in zip(places, weights, strict=True)]
+    return proof([rows[place] for place in places], signed, upper(rows[k]).coefficients)
 
 
 def _kept(case: Case, gone: set[int]) -> set[int]:
@@ -87,28 +100,28 @@ def _kept(case: Case, gone: set[int]) -> set[int]:
     return kept
 
 
-def _followers(model: Model, rows: Sequence[tuple[int, Constraint]]) -> dict[int, tuple[tuple[Proof, ...], bool]]:
+def _followers(case: Case) -> dict[int, tuple[tuple[Proof, ...], bool]]:
     """The rows that another with the same direction makes superfluous: the proofs, and whether it says the same."""
-    groups: dict[Row, list[tuple[Fraction, bool, int, Fraction]]] = {}
-    for k, row in rows:
-        for half in (upper(row), upper(row).reverse)[: 2 if row.sense == "==" else 1]:
-            way = primitive(half.coefficients)
-            size = next(a / b for a, b in zip(half.coefficients, way, strict=True) if b)
-            groups.setdefault(way, []).append((half.rhs / size, row.sense != "==", k, size))
+    groups: dict[tuple[int, ...], list[tuple[Fraction, bool, int]]] = {}
+    rows = case.model.constraints
+    for k, ((b, *a), _) in case.whole.items():
+        size = gcd(*a)
+        for sign in (1, -1) if rows[k].sense == "==" else (1,):
+            way = tuple([sign * value // size for value in a])
+            groups.setdefault(way, []).append((Fraction(sign * b, size), rows[k].sense != "==", k))
     found: dict[int, tuple[tuple[Proof, ...], bool]] = {}
     for group in groups.values():
         if len(group) > 1:
             leader = min(group)
-            for end, _, k, size in group:
+            for end, _, k in group:
                 if k != leader[2]:
-                    made = _scaled(model, leader[2], leader[3], model.constraints[k], size)
+                    made = _scaled(rows[leader[2]], rows[k])
                     found[k] = ((*found[k][0], made) if k in found else (made,), end == leader[0])
-    return {k: pair for k, pair in found.items() if model.constraints[k].sense != "==" or len(pair[0]) == 2}
+    return {k: pair for k, pair in found.items() if rows[k].sense != "==" or len(pair[0]) == 2}
 
 
-def _scaled(model: Model, leader: int, own: Fraction, row: Constraint, size: Fraction) -> Proof:
+def _scaled(lead: Constraint, row: Constraint) -> Proof:
     """The leading row times a number, which has the coefficients of the row (of one half of it)."""
-    lead = model.constraints[leader]
     ratio = next(a / b for a, b in zip(row.coefficients, lead.coefficients, strict=True) if b)
     sign = -1 if row.sense == ">=" else 1
     if row.sense == "==":
@@ -138,8 +151,7 @@ def _spare_equalities(case: Case, leaders: list[int]) -> dict[int, Standing]:
 
 def _proofs(model: Model, row: Constraint, others: list[Constraint]) -> tuple[Proof, ...]:
     """The proofs that others imply a row (both halves of an equality); none where they do not."""
-    halves: list[Upper] = [upper(row)] if row.sense != "==" else [upper(row), upper(row).reverse]
-    made = [bounded_by(model, half, others) for half in halves] if others else [None]
+    made = [bounded_by(model, half, others) for _, half in halves(row)] if others else [None]
     return tuple(one for one in made if one is not None) if all(made) else ()
 
 

@@ -42,7 +42,7 @@ def _loose(case: Case, row: Constraint, j: int) -> Iterator[Finding]:
     yield Finding(
         "loose-switch",
         f"{row.name} has a switch of {short(size)}, {short(least)} would do",
-        f"in {row.name} ({row.text(case.model.variables)}) the switch {name} lets through {short(size)}, but the other "
+        f"in {case.told(row)} the switch {name} lets through {short(size)}, but the other "
         f"constraints allow {short(least)} at the most (at {place(case.model, best.point)}). So large a number lets "
         "the "
         f"relaxation, and a solver's tolerance, cheat: {name} need only be {short(least / size)}.",
