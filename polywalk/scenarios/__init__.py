@@ -1,7 +1,8 @@
 """Models to try: our own scenario Harbour Row with its variants, and published hard instances by their usual names."""
 
+from polywalk.scenarios.cubes import cross_polytope, cube, goldfarb, klee_minty
 from polywalk.scenarios.harbour import VARIANTS, harbour_row
-from polywalk.scenarios.published import beale, chvatal, circling, cross_polytope, cube, klee_minty, kuhn
+from polywalk.scenarios.published import beale, chvatal, circling, kuhn
 
 __all__ = [
     "VARIANTS",
@@ -10,6 +11,7 @@ __all__ = [
     "circling",
     "cross_polytope",
     "cube",
+    "goldfarb",
     "harbour_row",
     "klee_minty",
     "kuhn",
