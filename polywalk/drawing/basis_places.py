@@ -147,11 +147,18 @@ def best_bulge(start: Point, end: Point, others: Sequence[Point]) -> float:
 
 
 def clearest(line: Sequence[Point], taken: Sequence[tuple[Point, float]], radius: float) -> Point:
-    """The point along a line for its number: as near its middle as leaves room, else where there is most room."""
+    """The spot for an arrow's number: as near its middle as leaves room, beside it where the arrow is too short."""
     half = len(line) // 2
     order = sorted(range(1, len(line) - 1), key=lambda k: (abs(k - half), k)) or [half]
+    across, up = line[-1][0] - line[0][0], line[-1][1] - line[0][1]
+    length = hypot(across, up) or 1.0
+    spots = [
+        (line[k][0] - shift * up / length, line[k][1] + shift * across / length)
+        for shift in (0, 13, -13)
+        for k in order
+    ]
 
-    def room(k: int) -> float:
-        return min((_far(line[k], point) - size - radius for point, size in taken), default=radius)
+    def room(spot: Point) -> float:
+        return min((_far(spot, point) - size - radius for point, size in taken), default=0.0)
 
-    return line[max(order, key=lambda k: (min(room(k), 0.0), -abs(k - half)))]
+    return next((spot for spot in spots if room(spot) >= 0), max(spots, key=room))

@@ -74,7 +74,7 @@ def picture(
     source : Model, Region or Bases
     path : str or path-like, optional
         Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete. Without a path
-        the picture is an SVG that only shows itself.
+        the picture is an SVG that only shows itself, with its letters as text, which keeps notebooks small.
     view : View, optional
         Axes, walks, selection, camera, light, dark or grey.
     **changes
@@ -102,7 +102,7 @@ def picture(
     target = None if path is None else _target(Path(path))
     ending = target.suffix.lower()[1:] if target else "svg"
     looked = viewed(view, changes)
-    data = rendered(scene(source, looked), THEMES[looked.mode], ending)
+    data = rendered(scene(source, looked), THEMES[looked.mode], ending, outlines=target is not None)
     if target is not None:
         _write(target, data)
     return Picture(data, ending, target)
@@ -127,8 +127,12 @@ def _write(target: Path, data: bytes) -> None:
         raise DrawingError(f"{str(target)!r} could not be written ({error.strerror}).", culprit=target) from error
 
 
-def rendered(drawn: Scene, theme: Theme, ending: str = "svg") -> bytes:
-    """The bytes of a scene's picture; the same for the same scene."""
+def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool = True) -> bytes:
+    """The bytes of a scene's picture; the same for the same scene.
+
+    An SVG holds its letters as outlines, so that it looks alike everywhere; without them it is a third as large, and
+    takes the reader's sans-serif font where DejaVu Sans is missing.
+    """
     from io import BytesIO
 
     import matplotlib as mpl
@@ -138,7 +142,12 @@ def rendered(drawn: Scene, theme: Theme, ending: str = "svg") -> bytes:
     rows = key_lines(drawn.key)
     height = max(PAPER[1] + BOTTOM + TOP, ROW * (len(rows) + 1) + TOP)
     width = LEFT + PAPER[0] + KEY + 34
-    fixed: Any = {"svg.hashsalt": "polywalk", "svg.fonttype": "path", "pdf.fonttype": 42, "font.family": "DejaVu Sans"}
+    fixed: Any = {
+        "svg.hashsalt": "polywalk",
+        "svg.fonttype": "path" if outlines else "none",
+        "pdf.fonttype": 42,
+        "font.family": "DejaVu Sans",
+    }
     with mpl.rc_context(fixed), warnings.catch_warnings():
         warnings.filterwarnings("ignore", "Glyph .* missing")  # an emoji in a name becomes a box, nothing worse
         figure = Figure(figsize=(width * PIXEL, height * PIXEL), facecolor=theme.paper)

@@ -8,7 +8,7 @@ from polywalk.drawing.scene import Label, Line, Mark, Point, Polygon
 from polywalk.drawing.theme import DEPTH, Style, Theme, mixed
 
 DASH = {"solid": "-", "dash": (0, (5, 3)), "dot": (0, (1.2, 2)), "dashdot": (0, (6, 2.5, 1.5, 2.5))}
-DASH |= {"longdash": (0, (11, 3)), "longdashdot": (0, (11, 2.5, 1.5, 2.5))}
+DASH |= {"longdash": (0, (8, 2)), "longdashdot": (0, (8, 2, 1.5, 2))}
 
 
 SYMBOLS = {"circle": "o", "ring": "o", "diamond": "D", "square ring": "s"}

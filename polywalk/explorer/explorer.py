@@ -108,7 +108,7 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
 
 def still(state: State) -> str:
     """The static picture, always light, as an image element that needs no other file."""
-    drawn = rendered(scene(state.region, replace(state.view, mode="light")), THEMES["light"], "svg")
+    drawn = rendered(scene(state.region, replace(state.view, mode="light")), THEMES["light"], "svg", outlines=False)
     source = f"data:image/svg+xml;base64,{b64encode(drawn).decode()}"
     return f'<img alt="picture of the region" style="max-width: 100%" src="{source}">'
 
