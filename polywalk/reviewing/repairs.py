@@ -28,13 +28,17 @@ class Repair(NamedTuple):
 def single_repairs(case: Case, found: Conflicts) -> Iterator[Finding]:
     """For each constraint the least relaxation that alone restores feasibility; or that none does.
 
-    Only a constraint that is in every conflict can do it.
+    Only a constraint of the first conflict can do it; of each that cannot, a conflict of the others is kept.
     """
-    common = set.intersection(*({name for name, _ in made.multipliers} for made in found.proofs))
-    rows = [row for row in case.model.constraints if row.name in common]
-    repairs = [repair for row in rows if (repair := _repair(case.model, row)) is not None]
+    repairs, left = [], [found.proofs[0]]
+    for name, _ in found.proofs[0].multipliers:
+        repair = _repair(case.model, case.model.constraint(name))
+        if isinstance(repair, Repair):
+            repairs.append(repair)
+        else:
+            left.append(repair)
     if not repairs:
-        yield _none(found)
+        yield _none(left)
     for repair in sorted(repairs, key=lambda repair: _amount(repair) / _size(repair.row)):
         row = repair.row
         verb = "raising" if repair.rhs > row.rhs else "lowering"
@@ -51,31 +55,29 @@ def single_repairs(case: Case, found: Conflicts) -> Iterator[Finding]:
         )
 
 
-def _none(found: Conflicts) -> Finding:
-    names = dict.fromkeys(name for made in found.proofs for name, _ in made.multipliers)
+def _none(left: list[Proof]) -> Finding:
+    names = dict.fromkeys(name for made in left for name, _ in made.multipliers)
     return Finding(
         "no-single-repair",
         "no single relaxation restores feasibility",
         "whichever one constraint is relaxed, however far, the others still contradict each other.",
         "at least two constraints must change; see the least relaxation of all together.",
         tuple(names),
-        proofs=found.proofs,
+        proofs=tuple(left),
     )
 
 
-def _repair(model: Model, row: Constraint) -> Repair | None:
-    """None where the others alone are empty."""
+def _repair(model: Model, row: Constraint) -> Repair | Proof:
+    """The least change of one right-hand side, or the proof that the others alone are empty."""
     rest = model.without(row.name)
-    if row.is_constant and not rest.constraints:
-        return Repair(row, Fraction(0), (Fraction(0),) * model.n, Proof((), row.coefficients, Fraction(0)))
     for sign, half in halves(row):
         best = most(rest, half.reverse.coefficients)
-        if best.point is None:
-            return None
-        if best.value is not None and best.weights is not None and -best.value > half.rhs:
+        if best.infeasibility is not None:
+            return proof(rest.constraints, best.infeasibility.weights, (Fraction(0),) * model.n)
+        if best.value is not None and best.point is not None and best.weights is not None and -best.value > half.rhs:
             made = proof(rest.constraints, best.weights, half.reverse.coefficients)
             return Repair(row, -sign * best.value, best.point, made)
-    return None
+    raise AssertionError("a constraint of a conflict cannot hold beside the others")
 
 
 def least_repair(case: Case) -> Finding:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterable
 from html import escape
 from typing import TYPE_CHECKING
@@ -11,6 +12,10 @@ from polywalk.table import Table, cell
 
 if TYPE_CHECKING:
     from polywalk.reviewing.findings import Finding, Review
+
+
+MOST = 12
+"""So many findings of one code are told in print; all are in the table."""
 
 
 def finding_text(finding: Finding) -> str:
@@ -48,9 +53,15 @@ def review_table(review: Review) -> Table:
 def review_text(review: Review) -> str:
     """The headline, every finding in full, and what was checked."""
     lines = [headline(review)]
+    told: Counter[str] = Counter()
     for item in review.findings:
+        told[item.code] += 1
+        if told[item.code] > MOST:
+            continue
         lines += ["", f"{item.severity.upper()}  {item.title}  [{item.code}]", f"  {item.explanation}"]
         lines += [f"  Remedy: {item.remedy}"] if item.remedy else []
+    more = [f"{count - MOST} more {code}" for code, count in told.items() if count > MOST]
+    lines += ["", f"and {listed(more)}, listed in .findings and .frame()"] if more else []
     lines += ["", "accepted:"] if review.accepted else []
     lines += [f"  {item.title} [{item.code}], because {why}" for item, why in review.accepted]
     return "\n".join([*lines, "", "checked:", *(f"  {line}" for line in review.checked)])
