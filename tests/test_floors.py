@@ -19,13 +19,14 @@ FLOORS = {
     4: ("reviewing", "scenarios"),
     3: ("walks", "narrowing"),
     2: ("region", "linear", "reading"),
-    1: ("errors", "exact", "table", "model", "bigmodel", "budget", "progress"),
+    1: ("errors", "exact", "table", "model", "sides", "bigmodel", "budget", "progress"),
 }
 """Room -> floor, as in DESIGN section 2."""
 
 GROUND = {"errors": (), "exact": ("errors",), "table": ("errors", "exact"), "model": ("errors", "exact", "table")}
-GROUND |= {"bigmodel": ("errors", "exact", "table", "model"), "budget": ("errors",), "progress": ()}
-"""On the ground floor, which room may import which: errors < exact < table < model < bigmodel, budget above errors."""
+GROUND |= {"sides": ("exact", "model"), "bigmodel": ("errors", "exact", "table", "model", "sides")}
+GROUND |= {"budget": ("errors",), "progress": ()}
+"""Which room of the ground floor may import which: errors < exact < table < model < sides < bigmodel; errors < budget."""
 
 FLOOR = {room: floor for floor, rooms in FLOORS.items() for room in rooms}
 LATE = ("plotly", "matplotlib", "ipywidgets", "anywidget", "scipy.optimize", "pandas", "sympy", "IPython")
@@ -123,7 +124,7 @@ def test_rooms_load_on_first_use():
 
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
-NAMES |= {"compare", "bases", "farkas", "improving_ray", "scenarios", "walk"}
+NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios", "walk"}
 NAMES |= {"review"}
 NAMES |= {"cones", "explain", "sensitivity", "value_function"}
 

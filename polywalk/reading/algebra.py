@@ -7,8 +7,9 @@ from fractions import Fraction
 
 from polywalk.errors import ModelError
 from polywalk.model import Constraint, Goal, Model, Objective, Sense
-from polywalk.reading.assembly import bound_rows, pair, unit_row
+from polywalk.reading.assembly import pair
 from polywalk.reading.expression import Linear, comparison, expression, variable
+from polywalk.sides import bound_rows, unit_row
 
 _FLIPPED: dict[str, Sense] = {"<=": ">=", ">=": "<=", "==": "=="}
 _SENSES: dict[str, Sense] = {"<=": "<=", ">=": ">=", "==": "=="}

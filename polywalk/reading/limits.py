@@ -6,10 +6,11 @@ from typing import Any
 
 from polywalk.errors import ModelError
 from polywalk.model import Constraint
-from polywalk.reading.assembly import bound_rows, pair, unit_row
+from polywalk.reading.assembly import pair
 from polywalk.reading.axis import Axis
 from polywalk.reading.grid import column, spread
 from polywalk.reading.matrix import vector
+from polywalk.sides import bound_rows, unit_row
 
 Pairs = list[tuple[Any, Any]]
 

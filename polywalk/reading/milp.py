@@ -10,11 +10,12 @@ import numpy as np
 
 from polywalk.errors import ModelError
 from polywalk.model import Constraint, Model, Objective
-from polywalk.reading.assembly import limit, sided_rows
+from polywalk.reading.assembly import limit
 from polywalk.reading.axis import Axis, Source, axis
 from polywalk.reading.grid import Column, Grid, column, grid, spread
 from polywalk.reading.limits import Pairs, between, bounded
 from polywalk.reading.matrix import exact_rows, exact_vector, integers, vector
+from polywalk.sides import sided_rows
 
 
 @dataclass(frozen=True)
