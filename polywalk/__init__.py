@@ -23,6 +23,7 @@ _ROOMS = {
     "Walk": "polywalk.walks",
     "bases": "polywalk.walks",
     "compare": "polywalk.walks",
+    "dual_walk": "polywalk.walks",
     "walk": "polywalk.walks",
     "cones": "polywalk.reviewing",
     "explain": "polywalk.reviewing",

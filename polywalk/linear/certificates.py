@@ -130,6 +130,22 @@ def farkas_of(solved: Solved) -> Farkas | None:
     return Farkas(now.slacks.model, primitive(constraint_weights(now, shares)))
 
 
+def impossible_row(now: Dictionary) -> int | None:
+    """The row that no point can meet: the auxiliary's; or a negative one that no slack can help; None without one."""
+    auxiliary, may = now.slacks.auxiliary, now.slacks.pivots
+    if auxiliary in now.basic:
+        return now.basic.index(auxiliary)
+    columns = [j for j, k in enumerate(now.nonbasic, 1) if may[k]]
+    for i, line in enumerate(now.rows):
+        entries = [line[j] for j in columns]
+        if now.slacks.items[now.basic[i]].kind == "equality":
+            if line[0] and not any(entries):
+                return i
+        elif now.slacks.blocks[now.basic[i]] and line[0] < 0 and all(entry <= 0 for entry in entries):
+            return i
+    return None
+
+
 def ray_of(solved: Solved) -> ImprovingRay | None:
     """The proof of an unbounded end."""
     if solved.outcome != "unbounded" or solved.place is None:

@@ -4,6 +4,8 @@ from polywalk.walks.bases import Bases, bases
 from polywalk.walks.basis import Basis, Exchange, Exit, basis_name
 from polywalk.walks.compare import compare
 from polywalk.walks.comparison import Comparison
+from polywalk.walks.dual import DUAL_LEAVING, dual_walk
+from polywalk.walks.dual_pivots import DualPivot, DualRatio
 from polywalk.walks.order import ORDERS
 from polywalk.walks.pivots import Pivot, Ratio
 from polywalk.walks.results import Walk
@@ -12,12 +14,15 @@ from polywalk.walks.rules import ENTERING, LEAVING
 from polywalk.walks.trace import walk
 
 __all__ = [
+    "DUAL_LEAVING",
     "ENTERING",
     "LEAVING",
     "ORDERS",
     "Bases",
     "Basis",
     "Comparison",
+    "DualPivot",
+    "DualRatio",
     "Exchange",
     "Exit",
     "Pivot",
@@ -27,5 +32,6 @@ __all__ = [
     "bases",
     "basis_name",
     "compare",
+    "dual_walk",
     "walk",
 ]

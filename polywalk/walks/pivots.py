@@ -71,6 +71,16 @@ class Pivot(Shown):
         return self.before.phase
 
     @property
+    def dual(self) -> bool:
+        """Whether it is a pivot of the dual simplex method."""
+        return False
+
+    @property
+    def outside(self) -> bool:
+        """Whether it starts outside the region: Phase I and dual pivots do."""
+        return self.phase == 1
+
+    @property
     def entering(self) -> str:
         """The name of the slack that leaves 0."""
         return self.before.slacks.names[self.before.nonbasic[self.column]]
@@ -91,7 +101,10 @@ class Pivot(Shown):
 
     @property
     def kind(self) -> Kind:
-        """ "ray" where nothing runs out, "degenerate" where the step length is 0, else "step"."""
+        """ "ray" where nothing runs out, "degenerate" where the step length is 0, else "step".
+
+        So "degenerate" always means that the point stays where it is.
+        """
         if self.row is None:
             return "ray"
         return "step" if self.before.rows[self.row][0] else "degenerate"

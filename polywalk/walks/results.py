@@ -9,7 +9,9 @@ from typing import Literal
 
 from polywalk.errors import WalkError
 from polywalk.exact import Row, primitive
-from polywalk.linear import Dictionary, Swap
+from polywalk.linear import Dictionary, Farkas, Swap
+from polywalk.linear.certificates import farkas_of, impossible_row
+from polywalk.linear.solve import Solved
 from polywalk.model import Model
 from polywalk.table import Shown, Table, cell
 from polywalk.walks.pivots import Pivot
@@ -84,6 +86,13 @@ class Walk(Shown):
         """The direction, in the smallest integers, along which an unbounded model improves for ever."""
         return primitive(self.pivots[-1].direction) if self.end == "unbounded" else None
 
+    @cached_property
+    def infeasibility(self) -> Farkas | None:
+        """The proof that no point satisfies the model, where the walk ended "infeasible"; else None."""
+        if self.end != "infeasible":
+            return None
+        return farkas_of(Solved("infeasible", self.last, impossible_row(self.last)))
+
     @property
     def stays(self) -> int:
         """The number of degenerate pivots: those that change the basis and not the point."""
@@ -99,7 +108,7 @@ class Walk(Shown):
         """The pivots, one row each."""
         columns = ("pivot", "phase", "entering", "leaving", "step", "kind", "objective", "point")
         rows = tuple(
-            (p.number, p.phase, p.entering, p.leaving, p.step, p.kind, p.objective_after, p.point_after)
+            (p.number, _part(p), p.entering, p.leaving, p.step, p.kind, p.objective_after, p.point_after)
             for p in self.pivots
         )
         return Table(self._title(), columns, rows, self._notes())
@@ -128,3 +137,10 @@ class Walk(Shown):
         if self.model.integers:
             notes.append(f"walked as the relaxation: {', '.join(self.model.integers)} marked integer")
         return tuple(notes)
+
+
+def _part(pivot: Pivot) -> object:
+    """The part of the walk a pivot belongs to: phase 1 or 2, and whether it is a dual pivot."""
+    if not pivot.dual:
+        return pivot.phase
+    return "1, dual" if pivot.phase == 1 else "dual"

@@ -151,6 +151,10 @@ def _refuse(name: str, answer: object, words: tuple[str, str], able: dict[int, s
     )
 
 
+PhaseOne = Literal["auxiliary", "dual"]
+PHASES_ONE: tuple[PhaseOne, ...] = ("auxiliary", "dual")
+
+
 @dataclass(frozen=True)
 class Rules:
     """The pair of rules of a walk, and what they were given.
@@ -164,6 +168,8 @@ class Rules:
         For rules that draw lots.
     start_objective : (n,) tuple of Fraction or None
         For the shadow-vertex rule.
+    phase_one : {"auxiliary", "dual"}
+        How Phase I is done.
     """
 
     entering: Rule
@@ -171,6 +177,7 @@ class Rules:
     rank: Sequence[int]
     seed: int = 0
     start_objective: Row | None = None
+    phase_one: PhaseOne = "auxiliary"
 
     @property
     def sees(self) -> Sees:

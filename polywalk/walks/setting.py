@@ -47,7 +47,7 @@ class Setting:
         Raises WalkError where it is not, for an objective that was asked for.
         """
         if self.start_objective is None or self.first.phase == 1:
-            return _least_of_those_held(self.first)
+            return least_of_those_held(self.first)[0]
         weights = _of_decisions(self.first, self.start_objective)
         gains = self.first.combination(weights)[1:]
         may = self.first.slacks.pivots
@@ -63,11 +63,11 @@ class Setting:
         return weights
 
 
-def _least_of_those_held(first: Dictionary) -> dict[int, int]:
-    """Minus the sum of the slacks held at 0, as typed: nothing improves it here."""
+def least_of_those_held(first: Dictionary) -> tuple[dict[int, int], int]:
+    """Minus the sum of the slacks held at 0, as typed: nothing improves it here. Its weights, and their scale."""
     scales, may = first.slacks.scales, first.slacks.pivots
     whole = lcm(*(scales[k] for k in first.nonbasic))
-    return {k: -whole // scales[k] for k in first.nonbasic if may[k]}
+    return {k: -whole // scales[k] for k in first.nonbasic if may[k]}, whole
 
 
 def _of_decisions(first: Dictionary, objective: Row) -> dict[int, int]:

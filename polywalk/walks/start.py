@@ -12,7 +12,7 @@ from polywalk.linear import Crash, Dictionary, crash, optimum
 from polywalk.model import Constraint, Model
 
 
-def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int]) -> Crash:
+def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int], inside: bool = True) -> Crash:
     """The dictionary a walk starts from, with the pivots that led there.
 
     Parameters
@@ -23,6 +23,8 @@ def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int]) -> 
         See ``walk``.
     rank : sequence of int
         The index order, by slack.
+    inside : bool, optional
+        Whether a basis must be feasible; a dual walk's need not.
 
     Raises
     ------
@@ -41,7 +43,7 @@ def first_dictionary(opened: Dictionary, start: object, rank: Sequence[int]) -> 
         return first
     names = _basis_names(model, first.dictionary, start)
     if names is not None:
-        return _at_basis(model, first, names)
+        return _at_basis(model, first, names, inside)
     return _at_vertex(model, first, _point(model, start), rank)
 
 
@@ -64,7 +66,7 @@ def _basis_names(model: Model, dictionary: Dictionary, start: object) -> list[st
     return list(start)
 
 
-def _at_basis(model: Model, first: Crash, names: list[str]) -> Crash:
+def _at_basis(model: Model, first: Crash, names: list[str], inside: bool) -> Crash:
     known = first.dictionary.slacks.of_constraint
     done, held = hold(first, [known[name] for name in names])
     for name in names:
@@ -74,7 +76,8 @@ def _at_basis(model: Model, first: Crash, names: list[str]) -> Crash:
                 f"not meet in one point; replace {name!r}.",
                 culprit=name,
             )
-    _check_inside(model, done.dictionary.point, f"the basis {', '.join(names)}")
+    if inside:
+        _check_inside(model, done.dictionary.point, f"the basis {', '.join(names)}")
     return done
 
 

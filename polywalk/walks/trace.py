@@ -5,15 +5,18 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any
 
-from polywalk.errors import WalkError
+from polywalk.errors import WalkError, unknown
 from polywalk.exact import Row
 from polywalk.linear import Dictionary, dictionary_of
 from polywalk.linear.phase_one import most_violated, relaxed, step
 from polywalk.model import Model
+from polywalk.walks.dual import DUAL_LEAVING, Way, follow_dual
+from polywalk.walks.dual_pivots import DualGoal
 from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import End, Walk
-from polywalk.walks.rules import Rule, Rules, entering_rule, leaving_rule
+from polywalk.walks.rules import PHASES_ONE, PhaseOne, Rule, Rules, entering_rule, leaving_rule
+from polywalk.walks.setting import least_of_those_held
 from polywalk.walks.start import first_dictionary
 
 
@@ -27,6 +30,7 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     limit: int = 10_000,
     *,
     start_objective: Sequence[object] | Mapping[str, object] | None = None,
+    phase_one: PhaseOne = "auxiliary",
 ) -> Walk:
     """Follow a pivot rule from a start to its end.
 
@@ -59,6 +63,10 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     start_objective : (n,) sequence or mapping, optional
         For the shadow-vertex rule: the coefficients of an objective, of the model's own sense, for which the start is
         optimal.
+    phase_one : {"auxiliary", "dual"}, optional
+        How a start outside the region is brought inside: by an auxiliary variable that is driven to 0, or by the dual
+        simplex method (``DualPivot``), lowest index first, with the objective if rest is dual feasible for it, else
+        with minus the sum of the slacks at rest in its place; the rule then goes on from there.
 
     Returns
     -------
@@ -84,7 +92,9 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     opened = dictionary_of(model)
     entering, tie = entering_rule(rule), leaving_rule(leaving)
     toward = _toward(model, entering, start_objective)
-    rules = Rules(entering, tie, ranks(opened.slacks, order), _whole(seed), toward)
+    if phase_one not in PHASES_ONE:
+        raise WalkError(str(unknown("Phase I", phase_one, PHASES_ONE, "polywalk")), culprit=phase_one)
+    rules = Rules(entering, tie, ranks(opened.slacks, order), _whole(seed), toward, phase_one)
     if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
         raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
     begun = first_dictionary(opened, start, rules.rank)
@@ -119,7 +129,12 @@ def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End,
     Between two steps the walk cycles exactly if a state that the pair of rules depends on comes back.
     """
     pivots, lots = list[Pivot](), rules.lots()
-    if not now.feasible:
+    if not now.feasible and rules.phase_one == "dual":
+        pivots, reached, cycle = follow_dual(now, Way(DUAL_LEAVING[1], rules.rank, limit, stage=1), _dual_goal(now))
+        if reached != "inside":
+            return pivots, reached, cycle
+        now = pivots[-1].after
+    elif not now.feasible:
         if limit == 0:
             return pivots, "stopped", ()
         pivots.append(_auxiliary_enters(now, rules))
@@ -142,6 +157,16 @@ def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End,
             return pivots, "cycling", tuple(pivots[met[state] :])
         met[state] = len(pivots)
     return pivots, "optimal" if now.phase == 2 else "infeasible", ()
+
+
+def _dual_goal(now: Dictionary) -> DualGoal:
+    """The model's own objective where it is dual feasible, else minus the sum of the slacks held at 0.
+
+    References
+    ----------
+    Vanderbei, Linear Programming: Foundations and Extensions, chapter 5 (another objective for Phase I; from memory).
+    """
+    return DualGoal(*least_of_those_held(now)) if now.improving() else DualGoal()
 
 
 Choices = tuple[Callable[..., int], Callable[..., int]]
