@@ -100,10 +100,10 @@ def explain(
     x : mapping or (n,) sequence of numbers, optional
         The whole plan, by variable or in the model's order.
     prices : mapping or sequence of numbers, optional
-        By constraint, or in the model's order: one a constraint, or one a constraint that is not a bound. Bounds of a
-        variable that are left out follow from its cost; other constraints that are left out have price 0. A price is
-        the change of the optimal value, in the objective's own sense, per unit of right-hand side; where the prices
-        are right in another sign convention only, the answer says in which.
+        By constraint, or in the model's order: one a constraint, or one a constraint that is not named as a bound is
+        ("pump upper"). Bounds of a variable that are left out follow from its cost; other constraints that are left
+        out have price 0. A price is the change of the optimal value, in the objective's own sense, per unit of
+        right-hand side; where the prices are right in another sign convention only, the answer says in which.
     basis : sequence of str, optional
         The n constraints held active, or the basic slacks as a walk names them (a variable's own slack by its name).
     versus : mapping, optional

@@ -71,9 +71,10 @@ def pricing(duals: OptimalDuals, given: object) -> Pricing:
     return Pricing(model, whole, derived, verdict, nearest, mix, convention, wrong)
 
 
-def is_bound(row: Constraint) -> bool:
-    """Whether the constraint is a bound of a single variable."""
-    return row.bounds() is not None
+def is_bound(model: Model, row: Constraint) -> bool:
+    """Whether the constraint was given as a bound, to go by its name ("pump upper"), and not as a row of the model."""
+    found = row.bounds()
+    return found is not None and row.name == f"{model.variables[found[0]]} {found[1]}"
 
 
 def _named(model: Model, given: object) -> dict[str, Fraction]:
@@ -86,7 +87,7 @@ def _named(model: Model, given: object) -> dict[str, Fraction]:
         )
     values = [exact(value) for value in given]
     rows = list(model.constraints)
-    plain = [row for row in rows if not is_bound(row)]
+    plain = [row for row in rows if not is_bound(model, row)]
     for names in (rows, plain):
         if len(values) == len(names):
             return {row.name: value for row, value in zip(names, values, strict=True)}
@@ -99,10 +100,9 @@ def _named(model: Model, given: object) -> dict[str, Fraction]:
 
 
 def _left_open(model: Model, named: Mapping[str, Fraction]) -> tuple[int, ...]:
-    """Places of the bounds of variables none of whose bounds has a price given: these prices follow from the costs."""
-    owners = [(row.bounds() or (None,))[0] for row in model.constraints]
-    settled = {owner for owner, row in zip(owners, model.constraints, strict=True) if row.name in named}
-    return tuple(i for i, owner in enumerate(owners) if owner is not None and owner not in settled)
+    """Places of the bounds, rows of a single variable among them, whose price was not given and follows."""
+    rows = enumerate(model.constraints)
+    return tuple(i for i, row in rows if row.bounds() is not None and row.name not in named)
 
 
 def _filled(model: Model, named: Mapping[str, Fraction], others: Mapping[int, Fraction]) -> Row:

@@ -172,9 +172,9 @@ def test_prices_are_the_slopes_that_brute_force_finds(make):
                     assert moved(model, price.constraint, past) != found.value + slope * past
                     met["ended"] += 1
                 met["pieces"] += 1
-    assert met["several"] >= 12, met
+    assert met["several"] >= 8, met
     assert met["ended"] >= 20, met
-    assert met["infinite"] >= 10, met
+    assert met["infinite"] >= 8, met
     assert make is random_degenerate or met["tied"] >= 8, met
 
 
