@@ -8,27 +8,28 @@ from math import dist
 from typing import Any
 
 from polywalk.errors import WalkError
-from polywalk.linear import Crash, dictionary_of
+from polywalk.linear import Crash, Dictionary, dictionary_of
 from polywalk.model import Model
 from polywalk.progress import progress
-from polywalk.region import region
+from polywalk.region import Region, region
 from polywalk.walks.comparison import Comparison
 from polywalk.walks.order import ranks
+from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import Walk
-from polywalk.walks.rules import ENTERING, Rules, entering_rule, leaving_rule
-from polywalk.walks.shared import shared
+from polywalk.walks.rules import ENTERING, Rule, Rules, entering_rule, leaving_rule
+from polywalk.walks.shared import looks_at_order, remembered, shared
 from polywalk.walks.standings import Pair, Tally
 from polywalk.walks.starts import Start, Starts, opened_at
-from polywalk.walks.trace import follow
+from polywalk.walks.trace import check_numbers, follow
 from polywalk.walks.yardsticks import Yardsticks, yardsticks
 
-Rule = Any
+Asked = Any
 """An entering rule as ``walk`` takes it, or a pair (entering, leaving)."""
 
 
 def compare(  # noqa: PLR0917 (the order of walk, as far as it goes)
     model: Model,
-    rules: Sequence[Rule] | Rule | None = None,
+    rules: Sequence[Asked] | Asked | None = None,
     starts: Starts = None,
     leaving: str = "lowest-index",
     order: str | Sequence[str] | None = None,
@@ -72,29 +73,41 @@ def compare(  # noqa: PLR0917 (the order of walk, as far as it goes)
     recommendation: bland needs 5 pivots from rest (V0), fewer than any other. It holds for this model and these \
 starts, and proves nothing for others.
     """
+    check_numbers(seed, limit)
     pairs = _pairs(rules, leaving)
-    first = shared(dictionary_of(model))
-    rank = ranks(first.slacks, order)
-    space = region(model)
-    begun = opened_at(first, space, starts, rank)
-    jobs = [(pair, start, opened) for start, opened in begun for pair in pairs]
-    tallies, complete = list[Tally](), True
-    measured = yardsticks(space)
+    first = dictionary_of(model)
+    rank, seen = ranks(first.slacks, order), region(model)
+    jobs, started = _jobs(first, seen, starts, rank, pairs)
+    rules_of = {pair: _rules(pair, rank, seed) for pair in pairs}
+    tallies, complete, measured = list[Tally](), True, yardsticks(seen)
     try:
         for pair, start, opened in progress(jobs, len(jobs), "walks"):
-            tallies.append(_tally(pair, start, _walked(model, pair, opened, _rules(pair, rank, seed), limit), measured))
+            tallies.append(_tally(pair, start, _walked(model, opened, rules_of[pair], limit), measured))
     except KeyboardInterrupt:
         if not tallies:
             raise
         complete = False
     named = tuple(first.slacks.names[k] for k in sorted(range(first.slacks.auxiliary), key=rank.__getitem__))
-    started = tuple(start for start, _ in begun)
     return Comparison(model, tuple(tallies), started, pairs, named, seed, limit, complete)
 
 
-def _pairs(rules: Sequence[Rule] | Rule | None, leaving: str) -> tuple[Pair, ...]:
+Job = tuple[Pair, Start, Crash]
+
+
+def _jobs(
+    first: Dictionary, seen: Region, starts: Starts, rank: Sequence[int], pairs: Sequence[Pair]
+) -> tuple[list[Job], tuple[Start, ...]]:
+    """Every pair from every start; pairs that look at the order of rows share dictionaries only with one another."""
+    arranged = [any(looks_at_order(rule) for rule in _pair_of_rules(pair)) for pair in pairs]
+    begun = {kind: opened_at(shared(first, kind), seen, starts, rank) for kind in sorted(set(arranged))}
+    count = len(begun[arranged[0]])
+    jobs = [(pair, *begun[kind][k]) for k in range(count) for pair, kind in zip(pairs, arranged, strict=True)]
+    return jobs, tuple(start for start, _ in begun[arranged[0]])
+
+
+def _pairs(rules: Sequence[Asked] | Asked | None, leaving: str) -> tuple[Pair, ...]:
     if rules is None:
-        listed: list[Rule] = [rule.name for rule in ENTERING]
+        listed: list[Asked] = [rule.name for rule in ENTERING]
     else:
         listed = [rules] if isinstance(rules, str) or not isinstance(rules, Sequence) else list(rules)
     if not listed:
@@ -103,33 +116,42 @@ def _pairs(rules: Sequence[Rule] | Rule | None, leaving: str) -> tuple[Pair, ...
     return tuple(Pair(entering_rule(one).name, leaving_rule(other).name, (one, other)) for one, other in given)
 
 
+def _pair_of_rules(pair: Pair) -> tuple[Rule, Rule]:
+    return entering_rule(pair.given[0]), leaving_rule(pair.given[1])
+
+
 def _rules(pair: Pair, rank: Sequence[int], seed: int) -> Rules:
-    return Rules(entering_rule(pair.given[0]), leaving_rule(pair.given[1]), rank, seed)
+    entering, leaving = _pair_of_rules(pair)
+    return Rules(remembered(entering), remembered(leaving), rank, seed)
 
 
-def _walked(model: Model, pair: Pair, opened: Crash, rules: Rules, limit: int) -> Walk:
-    first = opened.dictionary
+def _walked(model: Model, opened: Crash, rules: Rules, limit: int) -> Walk:
+    begun = (model, rules.entering.name, rules.leaving.name, (), opened.swaps, opened.dictionary)
     if opened.contradiction is not None:
-        return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, (), "infeasible")
-    pivots, end, cycle = follow(first, rules, limit)
-    return Walk(model, pair.rule, pair.leaving, (), opened.swaps, first, tuple(pivots), end, cycle)
+        return Walk(*begun, (), "infeasible")
+    pivots, end, cycle = follow(opened.dictionary, rules, limit)
+    return Walk(*begun, tuple(pivots), end, cycle)
 
 
 def _tally(pair: Pair, start: Start, walked: Walk, measured: Yardsticks) -> Tally:
     kinds = [pivot.kind for pivot in walked.pivots]
-    legs = [(pivot.point_before, pivot.point_after) for pivot in walked.pivots if pivot.kind == "step"]
-    moved = [(one, other) for one, other in legs if one != other]
+    moved = [pivot for pivot, kind in zip(walked.pivots, kinds, strict=True) if kind == "step" and _moves(pivot)]
     here = start.vertex
     return Tally(
         pair,
         start,
         pivots=len(kinds) - kinds.count("ray"),
         moves=len(moved),
-        stays=walked.stays,
+        stays=kinds.count("degenerate"),
         stall=max((len(list(run)) for kind, run in groupby(kinds) if kind == "degenerate"), default=0),
-        length=sum(dist(*leg) for leg in moved),
+        length=sum(dist(pivot.point_before, pivot.point_after) for pivot in moved),
         end=walked.end,
         value=walked.value,
         shortest=None if here is None else measured.shortest[here],
         improving=None if here is None else measured.improving[here],
     )
+
+
+def _moves(pivot: Pivot) -> bool:
+    """Whether a pivot of some length changes the point; in Phase I it may change the auxiliary alone."""
+    return pivot.phase == 2 or pivot.point_before != pivot.point_after

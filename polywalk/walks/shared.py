@@ -1,38 +1,43 @@
-"""Dictionaries that are pivoted once, however many walks pass through them."""
+"""Dictionaries that are pivoted once, however many walks pass through them, and choices made once."""
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field, fields
+from collections.abc import Callable, Hashable
+from dataclasses import dataclass, field, fields, replace
 
 from polywalk.linear import Dictionary
-from polywalk.linear.slacks import Integers
-
-Place = tuple[Integers, Integers, Integers]
-"""Basic, nonbasic and relaxed slacks, in order: what tells the dictionaries of one model apart."""
+from polywalk.walks.rules import Rule
 
 
 @dataclass(frozen=True, repr=False)
 class Shared(Dictionary):
     """A dictionary that keeps its neighbours and what it was asked.
 
-    All that come from one another share ``met``: a basis reached again with the same arrangement of rows and columns
-    is the same object, so that walks that meet share their work from there on. The entries of a dictionary follow from
-    its basis and arrangement alone, therefore a shared walk is the walk it would have been.
+    All that come from one another share ``met``: a dictionary met again is the same object, so that walks that come
+    together share their work from there on. Its entries follow from its basis alone, up to the order of rows and
+    columns. Where no rule looks at that order, ``arranged`` is False and any order is as good as any other; in Phase I
+    it is always kept, since the auxiliary's column is dropped by its place.
 
     Parameters
     ----------
+    arranged : bool
+        Whether two orders of one basis are told apart.
     met : dict
-        Every dictionary so far, by its place.
+        Every dictionary so far.
+    choices : dict
+        What rules have chosen here.
     """
 
-    met: dict[Place, Shared] = field(default_factory=dict, compare=False)
+    arranged: bool = True
+    met: dict[Hashable, Shared] = field(default_factory=dict, compare=False)
+    choices: dict[tuple[object, ...], int] = field(default_factory=dict, init=False, compare=False)
     _turns: dict[tuple[int, int], Shared] = field(default_factory=dict, init=False, compare=False)
     _ties: dict[int, list[int]] = field(default_factory=dict, init=False, compare=False)
 
     def pivot(self, row: int, column: int) -> Shared:
         """The dictionary after the pivot, made once."""
         if (row, column) not in self._turns:
-            self._turns[row, column] = shared(super().pivot(row, column), self.met)
+            self._turns[row, column] = shared(super().pivot(row, column), self.arranged, self.met)
         return self._turns[row, column]
 
     def first_to_run_out(self, column: int) -> list[int]:
@@ -45,10 +50,33 @@ class Shared(Dictionary):
 PLAIN = tuple(part.name for part in fields(Dictionary))
 
 
-def shared(now: Dictionary, met: dict[Place, Shared] | None = None) -> Shared:
+def shared(now: Dictionary, arranged: bool, met: dict[Hashable, Shared] | None = None) -> Shared:
     """The dictionary as one of those met; itself, from now on, if it was not met before."""
     known = {} if met is None else met
-    place = (now.basic, now.nonbasic, now.relaxed_slacks)
+    exact = arranged or bool(now.relaxed_slacks)
+    place = (now.basic, now.nonbasic, now.relaxed_slacks) if exact else frozenset(now.basic)
     if place not in known:
-        known[place] = Shared(**{name: getattr(now, name) for name in PLAIN}, met=known)
+        known[place] = Shared(**{name: getattr(now, name) for name in PLAIN}, arranged=arranged, met=known)
     return known[place]
+
+
+def looks_at_order(rule: Rule) -> bool:
+    """Whether the rule's choice may depend on the order of rows or columns."""
+    return rule.sees in {"rows", "arrangement"}
+
+
+def remembered(rule: Rule) -> Rule:
+    """The same rule, asked only once in each shared dictionary, where nothing else tells its choice."""
+    if rule.asks or rule.sees == "lots":
+        return rule
+    choose: Callable[..., int] = rule.choose
+
+    def once(dictionary: Dictionary, *given: int) -> int:
+        if not isinstance(dictionary, Shared):
+            return choose(dictionary, *given)
+        key = (choose, *given[:-1])  # the last is what may be chosen, which follows from the rest
+        if key not in dictionary.choices:
+            dictionary.choices[key] = choose(dictionary, *given)
+        return dictionary.choices[key]
+
+    return replace(rule, choose=once)

@@ -89,14 +89,13 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     1      2      x         labour   2     step  6          (2, 0)
     2      2      y         y upper  3     step  7.5        (0.5, 3)
     """
+    check_numbers(seed, limit)
     opened = dictionary_of(model)
     entering, tie = entering_rule(rule), leaving_rule(leaving)
     toward = _toward(model, entering, start_objective)
     if phase_one not in PHASES_ONE:
         raise WalkError(str(unknown("Phase I", phase_one, PHASES_ONE, "polywalk")), culprit=phase_one)
-    rules = Rules(entering, tie, ranks(opened.slacks, order), _whole(seed), toward, phase_one)
-    if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
-        raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
+    rules = Rules(entering, tie, ranks(opened.slacks, order), seed, toward, phase_one)
     begun = first_dictionary(opened, start, rules.rank)
     first = begun.dictionary
     pivots, end, cycle = ([], "infeasible", ()) if begun.contradiction is not None else follow(first, rules, limit)
@@ -117,10 +116,12 @@ def _toward(model: Model, entering: Rule, start_objective: Any) -> Row | None:
     return model.point(start_objective)
 
 
-def _whole(seed: object) -> int:
+def check_numbers(seed: object, limit: object) -> None:
+    """Raise WalkError where the seed is no whole number or the limit no number of pivots."""
     if isinstance(seed, bool) or not isinstance(seed, int):
         raise WalkError(f"expected as seed a whole number, got {seed!r}.", culprit=seed)
-    return seed
+    if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
+        raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
 
 
 def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End, tuple[Pivot, ...]]:
