@@ -35,7 +35,7 @@ def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
     seen, rows = subject.seen, []
     if found is not None:
         return _conflict(found)
-    rows += [KeyRow("optimum", _optimum(subject))] if subject.best else []
+    rows += [KeyRow("optimum", _optimum(subject))] if subject.optimal else []
     goal = seen.model.objective
     if goal is not None and any(goal.coefficients):
         verb = "falls" if goal.goal == "min" else "rises"
@@ -96,7 +96,8 @@ def _degenerate(subject: Subject) -> list[KeyRow]:
 
 
 def _optimum(subject: Subject) -> str:
-    places = [f"{vertex_name(k)} {coordinates(subject.seen.vertices[k].point)}" for k in subject.best]
+    names = {vertex.point: f"{vertex_name(k)} " for k, vertex in enumerate(subject.seen.vertices)}
+    places = [f"{names.get(point, 'the shadow ')}{coordinates(point)}" for point in subject.optimal]
     value = f"objective {short(subject.region.value)}" if subject.region.value is not None else ""
     face = subject.region.optimal
     if face is not None and (face.rays or face.lines):

@@ -103,6 +103,8 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
             marks.append(Mark(point, "degenerate"))
         marks.append(Mark(point, "vertex", text=vertex_name(k), hover=subject.hover(k), key=k))
     marks += [Mark(points[k], "optimum", text=vertex_name(k), hover=subject.hover(k)) for k in subject.best]
+    inside = [planar(floats(point)) for point in subject.optimal]
+    marks += [Mark(point, "optimum", hover="shadow of an optimal vertex") for point in inside if point not in points]
     if subject.view.vertex is not None:
         marks.append(Mark(points[subject.view.vertex], "selected"))
     if sheet is not None:

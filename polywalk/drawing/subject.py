@@ -9,7 +9,7 @@ from functools import cached_property
 
 from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
-from polywalk.exact import full, rounded, short
+from polywalk.exact import Row, full, rounded, short
 from polywalk.model import Model
 from polywalk.region import Region, Vertex, project, region, vertex_name
 
@@ -51,13 +51,18 @@ class Subject:
         return tuple(float(point[place]) for place in self._places)
 
     @cached_property
-    def best(self) -> tuple[int, ...]:
-        """Indices of the seen vertices that belong to the optimal face."""
+    def optimal(self) -> tuple[Row, ...]:
+        """The optimal vertices in the coordinates of the axes, exact; a shadow may hold them inside."""
         face = self.region.optimal
         if face is None or self.region.lines:  # a region with a line has no vertex
             return ()
-        best = {self.along(self.region.vertices[k].point) for k in face.vertices}
-        return tuple(k for k, vertex in enumerate(self.seen.vertices) if floats(vertex.point) in best)
+        found = (self.region.vertices[k].point for k in face.vertices)
+        return tuple(dict.fromkeys(tuple(point[place] for place in self._places) for point in found))
+
+    @cached_property
+    def best(self) -> tuple[int, ...]:
+        """Indices of the seen vertices that are optimal."""
+        return tuple(k for k, vertex in enumerate(self.seen.vertices) if vertex.point in self.optimal)
 
     def hover(self, index: int) -> str:
         """Everything about one seen vertex, as lines of plain text."""

@@ -221,3 +221,9 @@ def test_a_model_of_one_decision_is_drawn_on_a_line() -> None:
     drawn = scene(model)
     assert [mark.point for mark in marks(drawn, "vertex")] == [(0.5, 0.0)]
     assert drawn.axes[1].title == ""
+
+
+def test_an_optimum_inside_the_shadow_is_marked_there() -> None:
+    drawn = scene(harbour_row(), View(axes=("pump", "chips")))
+    assert [mark.point for mark in marks(drawn, "optimum")] == [(4.0, 4.0)]
+    assert "optimum: objective 292 at the shadow (4, 4)" in [row.text for part in drawn.key for row in part.rows]
