@@ -74,6 +74,10 @@ class ExpectationError(PolywalkError, AssertionError):
     """A stated expectation of a model that its review does not bear out; ``culprit`` holds the expectations' names."""
 
 
+class SolverError(PolywalkError, RuntimeError):
+    """HiGHS is missing, refused a model, or stopped without an answer."""
+
+
 class BudgetError(PolywalkError, RuntimeError):
     """Work that was ended because it passed its budget of seconds or memory."""
 
