@@ -10,6 +10,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
+from math import lcm
 from typing import Literal
 
 from polywalk.exact import dot, integer_row
@@ -81,6 +82,11 @@ class Slacks:
     def scales(self) -> Integers:
         """The scales, by index."""
         return tuple(item.scale for item in self.items)
+
+    @cached_property
+    def common_scale(self) -> int:
+        """The least common multiple of the scales."""
+        return lcm(*self.scales)
 
     @cached_property
     def pivots(self) -> tuple[bool, ...]:

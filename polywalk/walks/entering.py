@@ -48,16 +48,12 @@ def greatest_improvement(dictionary: Dictionary, columns: Sequence[int]) -> int:
     Dantzig, Linear Programming and Extensions, 1963; Jeroslow, The simplex algorithm with the pivot rule of maximizing
     criterion improvement, Discrete Math. 4, 1973.
     """
-    best, most = columns[0], Fraction(-1)
-    for column in columns:
-        rows = dictionary.first_to_run_out(column)
-        if not rows:
-            return column
-        line = dictionary.rows[rows[0]]
-        improvement = Fraction(dictionary.aim[column + 1] * line[0], -line[column + 1])
-        if improvement > most:
-            best, most = column, improvement
-    return best
+
+    def improvement(column: int) -> tuple[bool, Fraction]:
+        whole = whole_improvement(dictionary, column)
+        return whole is None, whole or Fraction(0)
+
+    return max(columns, key=improvement)
 
 
 def steepest_edge(dictionary: Dictionary, columns: Sequence[int]) -> int:
@@ -70,15 +66,7 @@ def steepest_edge(dictionary: Dictionary, columns: Sequence[int]) -> int:
     ----------
     Goldfarb & Reid, A practicable steepest-edge simplex algorithm, Math. Programming 12, 1977.
     """
-    slacks, whole = dictionary.slacks, dictionary.denominator
-    squares = dict.fromkeys(columns, Fraction(whole * whole))
-    for k, line in zip(dictionary.basic, dictionary.rows, strict=True):
-        if slacks.blocks[k]:
-            for column in columns:
-                if rate := line[column + 1]:
-                    rate *= slacks.scales[dictionary.nonbasic[column]]
-                    squares[column] += Fraction(rate * rate, slacks.scales[k] ** 2)
-    return max(columns, key=lambda column: dictionary.gain(column) ** 2 / squares[column])
+    return max(columns, key=lambda column: slope_squared(dictionary, column))
 
 
 def steepest_edge_decisions(dictionary: Dictionary, columns: Sequence[int]) -> int:
@@ -92,23 +80,7 @@ def steepest_edge_decisions(dictionary: Dictionary, columns: Sequence[int]) -> i
     Goldfarb & Reid, A practicable steepest-edge simplex algorithm, Math. Programming 12, 1977 (the norm is chosen
     here).
     """
-    return max(columns, key=lambda column: Fraction(dictionary.aim[column + 1] ** 2, _square(dictionary, column)))
-
-
-def _square(dictionary: Dictionary, column: int) -> int:
-    """The square of how far the decisions move, in the units of the column's entries; own slacks have scale 1."""
-    n, place = dictionary.slacks.model.n, column + 1
-    moves = [0] * n
-    if dictionary.nonbasic[column] < n:
-        moves[dictionary.nonbasic[column]] = dictionary.denominator
-    short = 0
-    for k, line in zip(dictionary.basic, dictionary.rows, strict=True):
-        if k < n:
-            moves[k] = line[place]
-        elif k == dictionary.slacks.auxiliary:
-            short = line[place]
-    eased = dictionary.relaxed_slacks
-    return sum((move - short if k in eased else move) ** 2 for k, move in enumerate(moves))
+    return max(columns, key=lambda column: slope_squared_of_decisions(dictionary, column))
 
 
 def random_edge(dictionary: Dictionary, columns: Sequence[int], setting: Setting) -> int:
@@ -140,3 +112,44 @@ def shadow_vertex(dictionary: Dictionary, columns: Sequence[int], setting: Setti
     """
     loss = dictionary.combination(setting.start_weights)
     return max(columns, key=lambda column: Fraction(loss[column + 1], dictionary.aim[column + 1]))
+
+
+# what the rules compare, in the units of the model
+
+
+def slope(dictionary: Dictionary, column: int) -> Fraction:
+    """How fast the objective (in Phase I the auxiliary) improves per unit of the column's slack."""
+    unit = dictionary.slacks.cost[1] if dictionary.phase == 2 else 1
+    return Fraction(dictionary.gain(column), dictionary.denominator * unit)
+
+
+def whole_improvement(dictionary: Dictionary, column: int) -> Fraction | None:
+    """How much the column's whole step improves the objective; None where nothing stops it."""
+    rows = dictionary.first_to_run_out(column)
+    if not rows:
+        return None
+    line = dictionary.rows[rows[0]]
+    step = Fraction(line[0], -line[column + 1] * dictionary.slacks.scales[dictionary.nonbasic[column]])
+    return slope(dictionary, column) * step
+
+
+def slope_squared(dictionary: Dictionary, column: int) -> Fraction:
+    """The square of the improvement per unit of length over all slacks; the auxiliary counts as one."""
+    slacks, place = dictionary.slacks, column + 1
+    unit, common = slacks.scales[dictionary.nonbasic[column]], slacks.common_scale
+    whole, moved = dictionary.denominator * common, 0  # the entering slack moves by whole, in these units
+    for k, line in zip(dictionary.basic, dictionary.rows, strict=True):
+        if line[place] and slacks.blocks[k]:
+            moved += (line[place] * unit * (common // slacks.scales[k])) ** 2
+    return slope(dictionary, column) ** 2 * Fraction(whole**2, whole**2 + moved)
+
+
+def slope_squared_of_decisions(dictionary: Dictionary, column: int) -> Fraction:
+    """The square of the improvement per unit of length over the decisions, whose own slacks have scale 1."""
+    n, place, eased = dictionary.slacks.model.n, column + 1, dictionary.relaxed_slacks
+    own = dict.fromkeys(eased, 0) | {dictionary.nonbasic[column]: dictionary.denominator}
+    own |= {k: line[place] for k, line in zip(dictionary.basic, dictionary.rows, strict=True)}
+    short = own.get(dictionary.slacks.auxiliary, 0)
+    moved = sum((move - short if k in eased else move) ** 2 for k, move in own.items() if k < n)
+    unit = dictionary.slacks.cost[1] if dictionary.phase == 2 else 1
+    return Fraction(dictionary.aim[place] ** 2, moved * unit**2)

@@ -72,8 +72,12 @@ def largest_pivot(dictionary: Dictionary, column: int, rows: Sequence[int]) -> i
     Chvátal, Linear Programming, 1983, chapter 24; that it may cycle: Kuhn's example in Balinski & Tucker, SIAM
     Review 11, 1969.
     """
-    scales, place = dictionary.slacks.scales, column + 1
-    return max(rows, key=lambda i: Fraction(-dictionary.rows[i][place], scales[dictionary.basic[i]]))
+    return max(rows, key=lambda row: fall(dictionary, column, row))
+
+
+def fall(dictionary: Dictionary, column: int, row: int) -> Fraction:
+    """How fast the row's slack falls per unit of the column's, both as typed."""
+    return -dictionary.rate(row, column)
 
 
 def random(dictionary: Dictionary, column: int, rows: Sequence[int], setting: Setting) -> int:

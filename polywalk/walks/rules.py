@@ -17,6 +17,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass
+from fractions import Fraction
 from operator import index
 from random import Random
 from typing import Any, Literal, NoReturn
@@ -44,11 +45,14 @@ class Rule:
     choose : function
         (dictionary, columns) -> column, or (dictionary, column, rows) -> row; with the setting after them if ``asks``.
     reason : str
-        Why it chose what it chose, to follow "because it"; empty for a rule of the user's own.
+        What is special about its choice, as the end of a sentence; empty for a rule of the user's own.
     sees : {"basis", "rows", "arrangement", "lots"}
         What the choice depends on.
     asks : bool
         Whether it needs the setting.
+    measure : function or None
+        What it compares, where that is one number: (dictionary, column) or (dictionary, column, row) -> Fraction, None
+        for without end.
     """
 
     name: str
@@ -56,6 +60,7 @@ class Rule:
     reason: str = ""
     sees: Sees = "basis"
     asks: bool = False
+    measure: Callable[..., Fraction | None] | None = None
 
     def bound(self, setting: Setting) -> Callable[..., int]:
         """The rule as a function of the dictionary and the choices alone."""
@@ -65,23 +70,39 @@ class Rule:
 
 
 ENTERING = (
-    Rule("dantzig", entering.dantzig, "has the largest reduced cost"),
+    Rule("dantzig", entering.dantzig, "has the largest reduced cost", measure=entering.slope),
     Rule("bland", entering.bland, "has the lowest index"),
-    Rule("greatest-improvement", entering.greatest_improvement, "improves the most over its whole step"),
-    Rule("steepest-edge", entering.steepest_edge, "improves the most per unit of length over all slacks"),
+    Rule(
+        "greatest-improvement",
+        entering.greatest_improvement,
+        "improves the most over its whole step",
+        measure=entering.whole_improvement,
+    ),
+    Rule(
+        "steepest-edge",
+        entering.steepest_edge,
+        "has the largest squared slope over all slacks",
+        measure=entering.slope_squared,
+    ),
     Rule(
         "steepest-edge-decisions",
         entering.steepest_edge_decisions,
-        "improves the most per unit of length over the decisions",
+        "has the largest squared slope over the decisions",
+        measure=entering.slope_squared_of_decisions,
     ),
     Rule("random-edge", entering.random_edge, "was drawn by lot", sees="lots", asks=True),
-    Rule("shadow-vertex", entering.shadow_vertex, "costs the least start objective for what it gains", asks=True),
+    Rule(
+        "shadow-vertex",
+        entering.shadow_vertex,
+        "is the first to improve as the objective turns from the start objective to its own",
+        asks=True,
+    ),
 )
 LEAVING = (
     Rule("lowest-index", leaving.lowest_index, "has the lowest index"),
-    Rule("lexicographic", leaving.lexicographic, "is lexicographically first", asks=True),
-    Rule("first-row", leaving.first_row, "stands in the first row", sees="rows"),
-    Rule("largest-pivot", leaving.largest_pivot, "falls the fastest"),
+    Rule("lexicographic", leaving.lexicographic, "has the lexicographically smallest ratios", asks=True),
+    Rule("first-row", leaving.first_row, "stands in the first of their rows", sees="rows"),
+    Rule("largest-pivot", leaving.largest_pivot, "falls the fastest", measure=leaving.fall),
     Rule("random", leaving.random, "was drawn by lot", sees="lots", asks=True),
 )
 
