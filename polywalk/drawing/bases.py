@@ -92,10 +92,9 @@ class Chart:
                 heights.setdefault(route.target, []).append(self.centres[route.places[-1]][1])
         return paper.spread({name: sum(found) / len(found) for name, found in heights.items()})
 
-    @property
-    def pivot_role(self) -> str:
-        """Faint where there are many, so that walks stand out."""
-        return "pivot" if len(self.shown) <= FEW else "faint pivot"
+    def role(self, role: str) -> str:
+        """The role of an arrow that no walk takes: faint where there are many, so that walks stand out."""
+        return role if len(self.shown) <= FEW else f"faint {role}"
 
     def bulge(self, start: int, end: int) -> float:
         """How an arrow between two bases bends, the same for a walk's and for the plain one."""
@@ -178,8 +177,8 @@ def _arrows(chart: Chart) -> list[Line]:
     lines = [
         Line(between(chart.ties), "exchange", name="exchange that no pivot makes"),
         Line(out(False), "other exit", name="edge that does not improve", arrow="end"),
-        Line(between(chart.pivots), chart.pivot_role, name="degenerate pivot", arrow="end"),
-        Line(out(True), "exit", name="edge that improves", arrow="end"),
+        Line(between(chart.pivots), chart.role("pivot"), name="degenerate pivot", arrow="end"),
+        Line(out(True), chart.role("exit"), name="edge that improves", arrow="end"),
     ]
     return [line for line in lines if line.parts]
 

@@ -64,7 +64,7 @@ def _marks(bases: Bases, routes: tuple[Route, ...], few: bool) -> list[KeyRow]:
     if few and not all(pivot.improves for pivot in bases.pivots):
         rows.append(KeyRow("exchange", "one constraint apart, but no simplex pivot leads from one to the other"))
     if any(found.improves for found in bases.exits):
-        rows.append(KeyRow("exit", f"an edge that leaves {name} and improves the objective"))
+        rows.append(KeyRow("exit" if few else "faint exit", f"an edge that leaves {name} and improves the objective"))
     if few and not all(found.improves for found in bases.exits):
         rows.append(KeyRow("other exit", f"an edge that leaves {name} without improving it"))
     return rows

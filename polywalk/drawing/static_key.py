@@ -60,21 +60,23 @@ def _sample(axes: Any, row: KeyRow | None, theme: Theme, top: float) -> None:
         if row.role in {"constraint", "conflict line"}:
             axes.plot((0, 10), (top, top), color=style.colour, linewidth=points(3), linestyle=DASH[style.dash])
         return
-    if row.role in {"optimum", "degenerate", "vertex", "moved", "stayed"}:
+    if row.role in {"optimum", "degenerate", "vertex", "moved", "stayed", "breakpoint", "now"}:
         mark(axes, Mark((14.0, top), row.role), theme)
     elif row.role in {"basis", "optimal basis", "first basis"}:
         mark(axes, Mark((14.0, top), row.role), theme, shrink=0.24 if row.role == "first basis" else 0.34)
-    elif row.role in {"objective", "open edge", "pivot", "faint pivot", "exit", "other exit"}:
+    elif row.role in {"objective", "open edge", "pivot", "faint pivot", "exit", "faint exit", "other exit"}:
         line(axes, Line((((0.0, top), (30.0, top)),), row.role, row.index, arrow="end"), theme)
-    elif row.role == "rest":
-        axes.fill((4, 26, 26, 4), (top - 5, top - 5, top + 5, top + 5), facecolor=style.fill, edgecolor=style.colour)
+    elif row.role in {"rest", "beyond"}:
+        corners = (4, 26, 26, 4), (top - 5, top - 5, top + 5, top + 5)
+        alpha = 1.0 if row.role == "rest" else style.opacity
+        axes.fill(*corners, facecolor=style.fill, edgecolor=style.colour, alpha=alpha)
     elif row.role == "hatch":
         for k in range(4):
             axes.plot((4 + 6 * k, 8 + 6 * k), (top + 1, top - 4), color=theme.text, linewidth=0.7)
         axes.plot((2, 28), (top + 1, top + 1), color=theme.text, linewidth=1.2)
     elif row.role == "start":
         mark(axes, Mark((14.0, top), row.role), theme, shrink=0.75)
-    elif row.role == "walk":  # without a head, so that its dash is seen
+    elif row.role in {"walk", "curve"}:  # without a head, so that its dash is seen
         line(axes, Line((((0.0, top), (33.0, top)),), row.role, row.index), theme)
     elif row.role in {"constraint", "conflict line", "level line", "hidden edge", "short", "exchange", "phase 1"}:
         line(axes, Line((((2.0, top), (26.0, top)),), row.role, row.index), theme)

@@ -17,11 +17,14 @@ LISTED = {
     "optimum": "optimum",
     "start": "start of the walk",
     "selected": "selected",
+    "evidence": "findings",
     "first basis": "where a walk starts or arrives",
     "basis": "basis",
     "optimal basis": "optimal basis",
     "moved": "pivot that moves",
     "stayed": "stay",
+    "breakpoint": "breakpoint",
+    "now": "the model as it is",
 }
 """Marks by role, as the legend calls them."""
 
@@ -29,7 +32,7 @@ OF_WALK = ("moved", "stayed")
 """Marks in the look of their walk, switched off and on with it."""
 
 IN_LEGEND = {"constraint", "conflict line", "open edge", "level line", "objective", "walk", "phase 1", "optimal face"}
-IN_LEGEND |= {"pivot", "faint pivot", "exchange", "exit", "other exit", "letter"}
+IN_LEGEND |= {"curve", "pivot", "faint pivot", "exchange", "exit", "faint exit", "other exit", "letter"}
 
 
 IN_SPACE = 0.55
@@ -65,7 +68,7 @@ def _polygons(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
         drawn.polygons, key=lambda item: (item.role, item.name if drawn.solid and item.role != "facet" else "")
     ):
         group = list(items)
-        traces.append(_mesh(drawn, role, group, theme) if drawn.solid else _fill(drawn, group[0], theme))
+        traces += [_mesh(drawn, role, group, theme)] if drawn.solid else [_fill(drawn, item, theme) for item in group]
     return traces
 
 
@@ -152,7 +155,7 @@ def _mark_trace(drawn: Scene, role: str, found: list[Mark], theme: Theme) -> dic
     look: dict[str, Any] = {"mode": "markers", "marker": marker, "name": LISTED[role], "showlegend": role != "vertex"}
     if role in OF_WALK:
         look |= {"showlegend": False, "legendgroup": f"walk {found[0].index}"}
-    if role in {"vertex", "optimum", "basis", "optimal basis", *OF_WALK}:
+    if role in {"vertex", "evidence", "optimum", "basis", "optimal basis", "breakpoint", "now", *OF_WALK}:
         look |= {"hoverinfo": "text", "hovertext": [html(mark.hover) for mark in found]}
     else:
         look |= {"hoverinfo": "skip"}
