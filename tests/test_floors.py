@@ -125,7 +125,7 @@ def test_rooms_load_on_first_use():
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios", "walk"}
-NAMES |= {"review"}
+NAMES |= {"probe", "review", "suspects"}
 NAMES |= {"cones", "explain", "sensitivity", "value_function"}
 
 

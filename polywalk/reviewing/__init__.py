@@ -6,8 +6,10 @@ from polywalk.reviewing.expectations import EXPECTATIONS
 from polywalk.reviewing.explain import Explanation, explain
 from polywalk.reviewing.findings import Finding, Proof, Review
 from polywalk.reviewing.limits import Limits
+from polywalk.reviewing.probe import Probe, probe
 from polywalk.reviewing.review import CHECKS, review
 from polywalk.reviewing.sensitivity import Sensitivity, sensitivity
+from polywalk.reviewing.suspects import Suspect, Suspects, suspects
 from polywalk.reviewing.value import ValueFunction, value_function
 
 __all__ = [
@@ -18,13 +20,18 @@ __all__ = [
     "Explanation",
     "Finding",
     "Limits",
+    "Probe",
     "Proof",
     "Review",
     "Sensitivity",
+    "Suspect",
+    "Suspects",
     "ValueFunction",
     "cones",
     "explain",
+    "probe",
     "review",
     "sensitivity",
+    "suspects",
     "value_function",
 ]
