@@ -108,11 +108,11 @@ def _drawn(courses: list[Course], sheet: Sheet, course: Course) -> tuple[Point, 
 
 
 def _lines(course: Course, spots: tuple[Point, ...], window: Window) -> list[Line]:
-    """Phase I dotted, the rest in the walk's own dash, and an arrow where it never ends."""
+    """The part outside the region dotted, the rest in the walk's own dash, and an arrow where it never ends."""
     first, index = course.outside, course.index
     found = [Line((spots[: first + 1],), "phase 1", index)] if first else []
-    if len(spots) > first + 1 or not first:
-        found.append(Line((spots[first:],) if len(spots) > first + 1 else (), "walk", index, course.text))
+    rest = (spots[first:],) if len(spots) > first + 1 else ()  # without any it still has its place in the legend
+    found.append(Line(rest, "walk", index, course.text))
     onward = _onward(course, spots[-1], window)
     return [*found, Line((onward,), "onward", index, arrow="end")] if onward else found
 

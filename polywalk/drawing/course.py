@@ -41,8 +41,8 @@ class Course:
 
     @property
     def outside(self) -> int:
-        """The number of pivots in Phase I."""
-        return sum(pivot.phase == 1 for pivot in self.pivots)
+        """The number of pivots outside the region: those of Phase I and of the dual method, which come first."""
+        return sum(pivot.outside for pivot in self.pivots)
 
     @property
     def text(self) -> str:
@@ -84,13 +84,14 @@ def reading(courses: list[Course]) -> str:
     begun = f"from {coordinates(courses[0].walk.start)}; " if len(starts) == 1 else ""
     if any(course.walk.stays for course in courses):
         return f"{begun}flat pieces with hollow marks are stays: the basis changes, the point does not"
-    return f"{begun}no stay: every pivot{' of Phase II' if any(course.outside for course in courses) else ''} moves"
+    inside = " inside the region" if any(course.outside for course in courses) else ""
+    return f"{begun}no stay: every pivot{inside} moves"
 
 
 def key(courses: list[Course]) -> tuple[KeyPart, ...]:
     rows = [KeyRow("moved", "after a pivot"), KeyRow("stayed", "after a stay: a degenerate pivot, no move")]
     if any(course.outside for course in courses):
-        rows.append(KeyRow("phase 1", "Phase I: the plan is still outside the region, its objective does not count"))
+        rows.append(KeyRow("phase 1", "outside the region (Phase I, dual method): the objective does not count yet"))
     if any(course.walk.end == "optimal" for course in courses):
         rows.append(KeyRow("level line", "the optimal objective"))
     if len({spot for course in courses for spot in course.spots}) < sum(len(course.spots) for course in courses):
@@ -101,6 +102,6 @@ def key(courses: list[Course]) -> tuple[KeyPart, ...]:
 
 def _told(course: Course) -> str:
     walk, count = course.walk, len(course.pivots)
-    phase = f", {course.outside} of them Phase I" if course.outside else ""
+    phase = f", {course.outside} of them outside the region" if course.outside else ""
     stays = f"{walk.stays} {'stay' if walk.stays == 1 else 'stays'}" if walk.stays else "no stay"
     return f"{course.name}: {count} {'pivot' if count == 1 else 'pivots'}{phase}, {stays}, {walk.end}"
