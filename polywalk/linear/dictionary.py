@@ -84,8 +84,10 @@ class Dictionary:
         lines = []
         for line in (*self.rows, self.cost):
             rate = line[place]
-            if rate:
-                pairs = zip(line, added, strict=True)
+            pairs = zip(line, added, strict=True)
+            if new == old == 1:  # as so often: nothing to multiply by or to divide by
+                lines.append(tuple([value + rate * other for value, other in pairs]) if rate else line)
+            elif rate:
                 lines.append(tuple([(value * new + rate * other) // old for value, other in pairs]))
             else:
                 lines.append(line if new == old else tuple([value * new // old for value in line]))

@@ -98,7 +98,7 @@ class Slacks:
         """Which slacks may not fall below zero, by index."""
         return tuple(item.kind in {"slack", "auxiliary"} for item in self.items)
 
-    @property
+    @cached_property
     def auxiliary(self) -> int:
         """The index of the auxiliary variable of Phase I."""
         return len(self.items) - 1
@@ -109,7 +109,7 @@ class Slacks:
         rows = self.model.constraints
         return {rows[item.constraint].name: k for k, item in enumerate(self.items) if item.constraint is not None}
 
-    @property
+    @cached_property
     def maximizes(self) -> bool:
         """Whether the objective is maximized (a model without an objective maximizes 0)."""
         return self.model.objective is None or self.model.objective.goal == "max"

@@ -146,13 +146,13 @@ def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End,
         if len(pivots) == limit:
             return pivots, "stopped", ()
         pivots.append(pivot)
-        if pivot.kind == "ray":
+        if pivot.row is None:
             return pivots, "unbounded", ()
-        if pivot.after.phase != now.phase:
+        if len(pivot.after.nonbasic) < len(now.nonbasic):  # the auxiliary's column is gone: Phase II begins
             choose = rules.begin(pivot.after, lots)
-        now = pivot.after
-        if pivot.kind == "step":
+        if now.rows[pivot.row][0]:
             met.clear()  # nothing met before a step comes back: the objective has changed for good
+        now = pivot.after
         state = rules.state(now)
         if state is not None and state in met:
             return pivots, "cycling", tuple(pivots[met[state] :])
