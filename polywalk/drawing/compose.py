@@ -16,15 +16,17 @@ from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import Axis, KeyPart, Label, Layer, Line, Point, Polygon, Scene
 from polywalk.drawing.shape import Shape, Side, shape
 from polywalk.drawing.subject import Subject, coordinates, floats, planar, subject
+from polywalk.drawing.valuechart import value_chart
 from polywalk.drawing.view import View
 from polywalk.drawing.window import Window, around, square
 from polywalk.exact import short
 from polywalk.model import Model
 from polywalk.region import Region
+from polywalk.reviewing import ValueFunction
 from polywalk.walks import Bases, Comparison, Walk
 
-Source = Model | Region | Bases | Comparison | Walk | Sequence[Walk]
-"""What can be drawn: a region, the bases of a vertex, or walks as a chart of the objective by pivot."""
+Source = Model | Region | Bases | Comparison | Walk | Sequence[Walk] | ValueFunction
+"""What can be drawn: a region, the bases of a vertex, walks as a chart of the objective by pivot, a value function."""
 
 
 def scene(source: Source, view: View | None = None) -> Scene:
@@ -32,7 +34,7 @@ def scene(source: Source, view: View | None = None) -> Scene:
 
     Parameters
     ----------
-    source : Model, Region, Bases, Comparison, Walk or sequence of Walk
+    source : Model, Region, Bases, Comparison, Walk or sequence of Walk, ValueFunction
         A Region saves enumerating again. Bases give the picture of one vertex's bases. Walks give the chart of the
         objective by pivot, a comparison that of its walks from the first start.
     view : View, optional
@@ -56,6 +58,8 @@ def scene(source: Source, view: View | None = None) -> Scene:
     """
     if isinstance(source, Bases):
         return bases_scene(source, view or View())
+    if isinstance(source, ValueFunction):
+        return value_chart(source)
     if isinstance(source, Walk | Comparison | Sequence):
         return chart(source)
     looked = subject(source, view or View())
