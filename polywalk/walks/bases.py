@@ -12,7 +12,7 @@ from polywalk.linear import dictionary_of
 from polywalk.model import Model
 from polywalk.region import Region, Vertex, region, vertex_name
 from polywalk.table import Shown, Table
-from polywalk.walks.basis import Basis, Exchange, Exit, basis_name, exits_from, gather, pivots_among
+from polywalk.walks.basis import Basis, Exchange, Exit, basis_name, exits_from, gather, pivots_among, vertex_number
 from polywalk.walks.order import ranks
 from polywalk.walks.results import Walk
 from polywalk.walks.routes import Route, route
@@ -201,6 +201,8 @@ def bases(model: Model, vertex: object, limit: int = 5_000) -> Bases:
     ------
     WalkError
         No such vertex; a region without vertices.
+    UnknownName, NumberError
+        A point that is no point of the model's decisions.
 
     Examples
     --------
@@ -217,14 +219,10 @@ def bases(model: Model, vertex: object, limit: int = 5_000) -> Bases:
     >>> print(found.route(pw.walk(model)))
     dantzig with lowest-index: B1 (0 stays), optimal here
     """
-    if vertex is None or isinstance(limit, bool) or not isinstance(limit, int) or limit < 1:
-        raise WalkError(
-            "expected a vertex (its number, the vertex itself, or its point) and a limit of at least 1, "
-            f"got {vertex!r} and {limit!r}.",
-            culprit=vertex if vertex is None else limit,
-        )
-    opened = dictionary_of(model)
-    first = first_dictionary(opened, vertex, ranks(opened.slacks, None)).dictionary
+    if isinstance(limit, bool) or not isinstance(limit, int) or limit < 1:
+        raise WalkError(f"expected as limit a number of bases, 1 or more, got {limit!r}.", culprit=limit)
     seen = region(model)
-    number = [corner.point for corner in seen.vertices].index(first.point)
+    number = vertex_number(seen, vertex)
+    opened = dictionary_of(model)
+    first = first_dictionary(opened, seen.vertices[number].point, ranks(opened.slacks, None)).dictionary
     return Bases(seen, number, *gather(first, limit))

@@ -2,13 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 from fractions import Fraction
+from numbers import Integral
 
-from polywalk.exact import Row, primitive
+from polywalk.errors import WalkError
+from polywalk.exact import Row, primitive, short
 from polywalk.linear import Dictionary
-from polywalk.region import Region, vertex_name
+from polywalk.region import Region, Vertex, vertex_name
 from polywalk.table import Shown, Table
 
 
@@ -206,3 +208,26 @@ def constraint_name(now: Dictionary, index: int) -> str:
     """The constraint a slack belongs to."""
     place = now.slacks.items[index].constraint
     return now.slacks.names[index] if place is None else now.slacks.model.constraints[place].name
+
+
+def vertex_number(seen: Region, vertex: object) -> int:
+    """A vertex's number, from the number itself, the vertex, or its point."""
+    count = len(seen.vertices)
+    if count == 0:
+        why = "it is empty" if seen.status == "empty" else "it contains a line"
+        raise WalkError(f"the region has no vertex, so there are no bases of one: {why}.", culprit=vertex)
+    if isinstance(vertex, Integral) and not isinstance(vertex, bool):
+        number = int(vertex)
+        if not 0 <= number < count:
+            raise WalkError(
+                f"expected the number of one of the {count} vertices, from 0, got {number}.", culprit=vertex
+            )
+        return number
+    if isinstance(vertex, str) or not isinstance(vertex, Vertex | Sequence | Mapping):
+        raise WalkError(f"expected a vertex (its number, the vertex, or its point), got {vertex!r}.", culprit=vertex)
+    point = vertex.point if isinstance(vertex, Vertex) else seen.model.point(vertex)
+    found = [number for number, corner in enumerate(seen.vertices) if corner.point == point]
+    if not found:
+        told = ", ".join(map(short, point))
+        raise WalkError(f"({told}) is none of the {count} vertices; see region(model).vertices.", culprit=vertex)
+    return found[0]

@@ -256,10 +256,13 @@ def test_vertex_number_point_and_vertex_are_the_same() -> None:
     ("vertex", "words"),
     [
         (None, "expected a vertex"),
-        (99, "13 vertices"),
-        ((1, 1, 1), "is no vertex"),
-        ((99, 0, 0), "not feasible"),
-        ("V10", "expected as start a vertex"),
+        (True, "expected a vertex"),
+        ("V10", "expected a vertex"),
+        (99, "one of the 13 vertices"),
+        (-1, "one of the 13 vertices"),
+        ((1, 1, 1), "is none of the 13 vertices"),
+        ((1, 1), "3"),
+        ({"pump": 5, "chip": 1, "tank": 3}, "chip"),
     ],
 )
 def test_what_is_no_vertex_is_refused(vertex: object, words: str) -> None:
@@ -275,7 +278,9 @@ def test_other_refusals() -> None:
         found.walk(4)
     with pytest.raises(WalkError, match="one of the 4 bases of V10"):
         found.reachable(-1)
-    with pytest.raises(WalkError, match="limit of at least 1"):
+    with pytest.raises(WalkError, match="1 or more"):
         pw.bases(harbour_row(), 10, limit=0)
     with pytest.raises(WalkError, match="contains a line"):
         pw.bases(ZOO["strip with a line"][0], (0, 0))
+    with pytest.raises(WalkError, match="it is empty"):
+        pw.bases(ZOO["empty"][0], 0)
