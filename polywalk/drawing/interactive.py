@@ -4,27 +4,24 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from polywalk.drawing.compose import scene
+from polywalk.drawing.compose import Source, scene
 from polywalk.drawing.layout import layout
 from polywalk.drawing.scene import Scene
 from polywalk.drawing.theme import THEMES, Theme
 from polywalk.drawing.traces import traces
 from polywalk.drawing.view import View, viewed
-from polywalk.model import Model
-from polywalk.region import Region
-from polywalk.walks import Bases
 
 if TYPE_CHECKING:
     import plotly.graph_objects as go
 
 
-def draw(source: Model | Region | Bases, view: View | None = None, **changes: Any) -> go.Figure:
+def draw(source: Source, view: View | None = None, **changes: Any) -> go.Figure:
     """Draw a region as an interactive plotly figure: constraints, vertices, optimum, walks.
 
     Parameters
     ----------
-    source : Model, Region or Bases
-        A Region saves enumerating again. Bases give the picture of one vertex's bases.
+    source : Model, Region, Bases, Comparison, Walk or sequence of Walk, ValueFunction
+        As for ``polywalk.drawing.scene``; a Region saves enumerating again.
     view : View, optional
     **changes
         Fields of View, for short: ``walks=[...]``, ``axes=("pump", "tank")``, ``mode="dark"``.
@@ -52,7 +49,7 @@ def draw(source: Model | Region | Bases, view: View | None = None, **changes: An
     return go.Figure(figure(source, viewed(view, changes)))
 
 
-def figure(source: Model | Region | Bases, view: View | None = None) -> dict[str, Any]:
+def figure(source: Source, view: View | None = None) -> dict[str, Any]:
     """The same figure as plain dicts: ``data`` and ``layout``, ready for plotly.js.
 
     All vertices are one trace named "vertices", whose ``customdata`` holds their indices.

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
-from polywalk.drawing.compose import scene
+from polywalk.drawing.compose import Source, scene
 from polywalk.drawing.projection import laid_flat
 from polywalk.drawing.scene import Scene
 from polywalk.drawing.static_key import KEY, ROW, TOP, key_lines, paint_key
@@ -18,9 +18,6 @@ from polywalk.drawing.theme import THEMES, Theme
 from polywalk.drawing.view import View, viewed
 from polywalk.drawing.window import PAPER
 from polywalk.errors import DrawingError
-from polywalk.model import Model
-from polywalk.region import Region
-from polywalk.walks import Bases
 
 LEFT, BOTTOM = 64.0, 54.0
 """Pixels beside and below the picture for the axes' numbers."""
@@ -65,13 +62,13 @@ class Picture:
 
 
 def picture(
-    source: Model | Region | Bases, path: str | os.PathLike[str] | None = None, view: View | None = None, **changes: Any
+    source: Source, path: str | os.PathLike[str] | None = None, view: View | None = None, **changes: Any
 ) -> Picture:
     """Paint a static picture of a region with its key: SVG, PNG or PDF, without a browser.
 
     Parameters
     ----------
-    source : Model, Region or Bases
+    source : Model, Region, Bases, Comparison, Walk or sequence of Walk, ValueFunction
     path : str or path-like, optional
         Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete. Without a path
         the picture is an SVG that only shows itself, with its letters as text, which keeps notebooks small.
