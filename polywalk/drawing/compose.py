@@ -7,7 +7,7 @@ from itertools import count
 from string import ascii_lowercase
 
 from polywalk.drawing import conflict as conflicts
-from polywalk.drawing import goal, paths, plane
+from polywalk.drawing import evidence, goal, paths, plane
 from polywalk.drawing.bases import bases_scene
 from polywalk.drawing.camera import USUAL, best_eye
 from polywalk.drawing.chart import chart
@@ -108,7 +108,8 @@ def _flat(looked: Subject, frame: Window, drawn: Shape) -> Scene:
     points = plane.vertices(looked, sheet)
     aim = goal.layer(looked, frame, sheet)
     borders, absent = plane.constraints(looked, sheet)
-    layers = (body, borders, aim, _optimal_face(looked), walks, points)
+    proofs = evidence.layer(looked, frame, sheet)
+    layers = (body, borders, aim, _optimal_face(looked), walks, points, proofs)
     return _assembled(looked, frame, layers, rows=key(looked, {}, absent, None), status=_status(looked))
 
 
@@ -121,6 +122,7 @@ def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
         _optimal_face(looked),
         paths.layer(looked, frame, None, middle),
         plane.vertices(looked, None),
+        evidence.layer(looked, frame, None, drawn),
         tagged,
     )
     return _assembled(looked, frame, layers, rows=key(looked, tags, (), None), status=_status(looked), drawn=drawn)
@@ -179,7 +181,8 @@ def _empty(looked: Subject) -> Scene:
         tags, tagged = _tags(looked, rest) if rest else ({}, Layer())
         body = plane.region(rest, "rest") if rest else Layer()
         planes = (conflicts.faces(model, found, rest), conflicts.borders(model, found, frame))
-        layers = (body, *planes, conflicts.shortfall(found, None), tagged)
+        proofs = evidence.layer(looked, frame, None, rest)
+        layers = (body, *planes, conflicts.shortfall(found, None), proofs, tagged)
         return _assembled(looked, frame, layers, rows=key(looked, tags, (), found), status=words, drawn=rest)
     if model.n == 1:
         frame, rest = _lifted_window(frame), _lifted_shape(rest) if rest else None
@@ -188,7 +191,8 @@ def _empty(looked: Subject) -> Scene:
     conflicts.keep_names_clear(body, sheet)
     gap = conflicts.shortfall(found, sheet)
     lines, absent = plane.constraints(looked, sheet, found.names)
-    return _assembled(looked, frame, (body, lines, gap), rows=key(looked, {}, absent, found), status=words)
+    flat = (body, lines, gap, evidence.layer(looked, frame, sheet))
+    return _assembled(looked, frame, flat, rows=key(looked, {}, absent, found), status=words)
 
 
 def _status(looked: Subject) -> str:
@@ -236,6 +240,6 @@ def _assembled(
         lines=tuple(item for layer in layers for item in layer.lines),
         marks=tuple(item for layer in layers for item in layer.marks),
         labels=tuple(item for layer in layers for item in layer.labels),
-        key=rows,
+        key=evidence.part(looked) + rows,
         camera=looked.view.camera or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
     )

@@ -28,6 +28,9 @@ LISTED = {
 }
 """Marks by role, as the legend calls them."""
 
+PLACED = {"stay": "bottom center", "evidence name": "bottom right"}
+"""Where a text stands beside its point in space; others stand on it."""
+
 OF_WALK = ("moved", "stayed")
 """Marks in the look of their walk, switched off and on with it."""
 
@@ -179,7 +182,7 @@ def _labels(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
         text = [f"<b>{html(label.text)}</b>" if bold else html(label.text) for label in group]
         look: dict[str, Any] = {"mode": "text", "text": text, "hoverinfo": "skip", "showlegend": False}
         look["textfont"] = {"size": 12, "color": theme.text if role == "tag" else style.colour, "family": FONT}
-        look["textposition"] = "bottom center" if role == "stay" else "middle center"
+        look["textposition"] = PLACED.get(role, "middle center")
         if role == "tag":
             name = f"{group[0].text}  {group[0].hover.partition(':')[0]}"
             look |= {"hoverinfo": "text", "hovertext": [html(label.hover) for label in group]}

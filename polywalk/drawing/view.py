@@ -7,6 +7,7 @@ from dataclasses import dataclass, fields, replace
 from typing import Any, Literal
 
 from polywalk.errors import DrawingError
+from polywalk.reviewing import Finding, Review
 from polywalk.walks import Walk
 
 Mode = Literal["light", "dark", "grey"]
@@ -29,6 +30,8 @@ class View:
     camera : (3,) tuple of float or None, optional
         Direction from the solid to the eye, z upward; None chooses the direction that keeps vertices apart.
     mode : {"light", "dark", "grey"}, optional
+    findings : tuple of Finding, optional
+        Findings whose evidence is marked; ``draw(model, findings=review)`` takes a whole Review.
 
     Examples
     --------
@@ -43,6 +46,7 @@ class View:
     step: int | None = None
     camera: tuple[float, float, float] | None = None
     mode: Mode = "light"
+    findings: tuple[Finding, ...] = ()
 
 
 def viewed(view: View | None, changes: Mapping[str, Any]) -> View:
@@ -62,9 +66,20 @@ def viewed(view: View | None, changes: Mapping[str, Any]) -> View:
     changed["walks"] = (walks,) if isinstance(walks, Walk) else tuple(walks)
     if "walks" not in changes:
         del changed["walks"]
+    if "findings" in changes:
+        changed["findings"] = _findings(changes["findings"])
     if changed.get("axes") is not None:
         changed["axes"] = tuple(changed["axes"])
     found = replace(view or View(), **changed)
     if found.mode not in ("light", "dark", "grey"):
         raise DrawingError(f"expected the mode light, dark or grey, got {found.mode!r}.", culprit=found.mode)
+    return found
+
+
+def _findings(given: Any) -> tuple[Finding, ...]:
+    """A review, a finding or several findings as a tuple of findings."""
+    found = given.findings if isinstance(given, Review) else (given,) if isinstance(given, Finding) else tuple(given)
+    for item in found:
+        if not isinstance(item, Finding):
+            raise DrawingError(f"expected a review or findings of one, got {item!r}.", culprit=item)
     return found
