@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from polywalk.drawing import basis_places as paper
-from polywalk.drawing.basis_key import hover, key, letters_of
+from polywalk.drawing.basis_key import hover, key, lettered, letters_of
 from polywalk.drawing.paths import APART
 from polywalk.drawing.scene import Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.view import View
@@ -224,12 +224,12 @@ def _discs(chart: Chart) -> tuple[Mark, ...]:
 
 
 def _names(chart: Chart) -> list[Label]:
-    letters = letters_of(chart.bases)
+    letters, fits = letters_of(chart.bases), lettered(chart.bases)
     found = []
     for number in chart.shown:
         basis = chart.bases.members[number]
         held = "".join(letters[name] for name in basis.held if name in letters)
-        text = f"{basis.name}\n{held}" if 0 < len(held) <= 4 else basis.name
+        text = f"{basis.name}\n{held}" if held and fits else basis.name
         role = "optimal basis name" if basis.optimal else "basis name"
         found.append(Label(text, chart.centres[number], role))
     found += [Label(name, place, "target") for name, place in chart.targets.items()]

@@ -9,8 +9,14 @@ from polywalk.drawing.scene import KeyPart, KeyRow
 from polywalk.region import vertex_name
 from polywalk.walks import Bases, Route, basis_name
 
+MOST_LETTERS = 4
+"""The most letters that a disc has room for; past this bases are drawn with their number alone."""
+
 MOST_LISTED = 24
-"""Past this many bases the key leaves their list out: their letters say what they hold."""
+"""Past this many bases the key does not list them by name: their letters say what they hold."""
+
+ABREAST = 4
+"""How many bases a line of the key tells by letters."""
 
 
 def letters_of(bases: Bases) -> dict[str, str]:
@@ -22,6 +28,12 @@ def letters_of(bases: Bases) -> dict[str, str]:
 
 def _held(bases: Bases, name: str) -> bool:
     return any(name in basis.held for basis in bases.members)
+
+
+def lettered(bases: Bases) -> bool:
+    """Whether discs have room for the letters of the constraints held."""
+    letters = letters_of(bases)
+    return max(sum(name in letters for name in basis.held) for basis in bases.members) <= MOST_LETTERS
 
 
 def hover(bases: Bases, number: int) -> str:
@@ -49,7 +61,8 @@ def _marks(bases: Bases, routes: tuple[Route, ...], few: bool) -> list[KeyRow]:
     name = vertex_name(bases.number)
     rows = []
     if len(bases.optimal) < len(bases.members):
-        rows.append(KeyRow("basis", f"a basis of {name}: the constraints held active, by letter"))
+        how = "the constraints held active, by letter" if lettered(bases) else "its number; the list says what it holds"
+        rows.append(KeyRow("basis", f"a basis of {name}: {how}"))
     if bases.optimal:
         rows.append(KeyRow("optimal basis", "an optimal basis: no slack improves the objective"))
     if any(route.places for route in routes):
@@ -81,6 +94,13 @@ def _constraints(bases: Bases) -> list[KeyRow]:
 
 
 def _listed(bases: Bases, shown: tuple[int, ...]) -> tuple[KeyRow, ...]:
-    if len(shown) > MOST_LISTED:
+    """What each basis holds: by name, or where there are many by letters, unless they stand in the discs."""
+    if len(shown) <= MOST_LISTED:
+        return tuple(KeyRow("point", ", ".join(bases.members[k].held), tag=basis_name(k)) for k in shown)
+    if lettered(bases):
         return (KeyRow("point", f"{len(shown)} bases, each named by its letters; pw.bases(...) prints them all"),)
-    return tuple(KeyRow("point", ", ".join(bases.members[k].held), tag=basis_name(k)) for k in shown)
+    letters = letters_of(bases)
+    texts = [
+        f"{basis_name(k)} {''.join(letters[name] for name in bases.members[k].held if name in letters)}" for k in shown
+    ]
+    return tuple(KeyRow("point", "   ".join(texts[k : k + ABREAST])) for k in range(0, len(texts), ABREAST))

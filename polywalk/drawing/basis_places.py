@@ -75,7 +75,7 @@ def places(found: Sequence[Band]) -> tuple[dict[int, Point], dict[int, float]]:
     count = sum(band.columns for band in found) + gap * (len(found) - 1)
     pitch = min(WIDEST, (PAPER[0] - LEFT - RIGHT) / max(count - 0.4, 1))
     low, high = BOTTOM, PAPER[1] - TOP
-    left = LEFT + (PAPER[0] - LEFT - RIGHT - pitch * (count - 1)) / 2 if len(found) > 1 else PAPER[0] * 0.3
+    left = LEFT + (PAPER[0] - LEFT - RIGHT - pitch * (count - 1)) / 2
     centres: dict[int, Point] = {}
     middles: dict[int, float] = {}
     for band in found:

@@ -36,6 +36,7 @@ CASES = {
     "optimal tip": (tent(6, "0*x + 0*y + z"), (0, 0, 1)),
     "56 bases": (tent(8), (0, 0, 1)),
     "84 bases": (tent(9), (0, 0, 1)),
+    "56 optimal bases": (tent(8, "0*x + 0*y + 0*z"), (0, 0, 1)),
     "beale": (beale(), (0, 0, 0, 0)),
     "chvatal": (chvatal(), (0, 0, 0, 0)),
     "a ray": (pw.from_algebra(maximize="x", constraints={"a": "x >= y", "b": "x + y >= 0", "c": "x >= 0"}), (0, 0)),
@@ -180,6 +181,21 @@ def test_both_painters_paint_it(mode: str) -> None:
     hovers = [text for trace in figure.data if trace.name == "optimal basis" for text in trace.hovertext]
     assert len(hovers) == 2
     assert "V8" in figure.layout.title.text
+
+
+def test_bases_of_five_decisions_are_told_by_letters_in_the_key() -> None:
+    """Five letters do not fit into a disc: eight constraints through one point, any five of them a basis."""
+    sums = {f"sum {k}": " + ".join(f"{j**k}*x{j}" for j in range(1, 6)) + " <= 0" for k in range(3)}
+    bounds = {f"x{j}": (None, 0) for j in range(1, 6)}
+    found = pw.bases(pw.from_algebra(maximize="x1 + x2 - x3", constraints=sums, bounds=bounds), (0,) * 5)
+    drawn = scene(found)
+    assert {label.text for label in drawn.labels if "basis name" in label.role} == {b.name for b in found.members}
+    (part,) = (part for part in drawn.key if part.heading.startswith("Bases"))
+    told = dict(item.split(" ") for row in part.rows for item in row.text.split("   "))
+    letters = dict(zip("ABCDEFGH", found.vertex.active, strict=True))
+    held = {name: [letters[letter] for letter in text] for name, text in told.items()}
+    assert held == {basis.name: list(basis.held) for basis in found.members}
+    assert len(held) == 56
 
 
 def test_a_model_without_objective_is_drawn_too() -> None:
