@@ -20,6 +20,7 @@ from polywalk.exact import Row, dot
 from polywalk.linear import optimum
 from polywalk.model import Constraint, Goal, Model, Objective, Sense
 from polywalk.region import Region, region
+from polywalk.region.engine import SMALL_WORK, work
 from polywalk.region.spans import rank
 from polywalk.reviewing.extended import INFINITY, Extended
 
@@ -96,8 +97,14 @@ class OptimalDuals:
         place = next(i for i, row in enumerate(self.model.constraints) if row.name == name)
         return self._ends(place) if place in self.tight else (ZERO, ZERO)
 
+    @cached_property
+    def _known(self) -> dict[int, tuple[Extended, Extended]]:
+        return {}
+
     def _ends(self, place: int) -> tuple[Extended, Extended]:
-        return self.reach({place: ONE})
+        if place not in self._known:
+            self._known[place] = self.reach({place: ONE})
+        return self._known[place]
 
     def reach(self, shares: Mapping[int, Fraction]) -> tuple[Extended, Extended]:
         """The least and the greatest of a sum of multiples of multipliers, given by place of the constraint."""
@@ -106,6 +113,11 @@ class OptimalDuals:
             return value, value
         costs = tuple(shares.get(i, ZERO) for i in self.tight)
         return tuple(_end(self.face, goal, costs) for goal in ("min", "max"))  # type: ignore[return-value]
+
+    @property
+    def listable(self) -> bool:
+        """Whether the corners are few enough to be listed at once."""
+        return self._independent or work(len(self.tight), len(self.face.constraints)) <= SMALL_WORK
 
     @cached_property
     def corners(self) -> tuple[Row, ...]:

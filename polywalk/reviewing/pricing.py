@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from fractions import Fraction
 from typing import cast
 
 from polywalk.errors import ModelError
-from polywalk.exact import Row, dot, exact
+from polywalk.exact import Row, exact
 from polywalk.linear import optimum
 from polywalk.model import Constraint, Model, Objective
 from polywalk.reviewing.duals import OptimalDuals, keeps_sign
@@ -35,7 +35,7 @@ class Pricing:
         That dual.
     mix : tuple of (int, Fraction)
         It as a mix of the extreme optimal duals: numbers in ``OptimalDuals.corners``, and shares that add up to 1 (more
-        may be added along ``OptimalDuals.directions``).
+        may be added along ``OptimalDuals.directions``). Empty where the extreme ones are too many to list.
     convention : str
         "" where the prices are right as they are, or wrong anyhow; else in which sign convention they are right.
     wrong_signs : tuple of str
@@ -62,7 +62,8 @@ def pricing(duals: OptimalDuals, given: object) -> Pricing:
     model = duals.model
     named = _named(model, given)
     open_ = _left_open(model, named)
-    verdict, nearest, mix = _nearest(duals, named, open_)
+    verdict, nearest = _nearest(duals, named, open_)
+    mix = _mixed(duals, nearest)
     whole = _filled(model, named, dict(zip(open_, (nearest[i] for i in open_), strict=True)))
     derived = tuple(model.constraints[i].name for i in open_ if nearest[i]) if verdict.right else ()
     goal = duals.goal.goal
@@ -110,34 +111,45 @@ def _filled(model: Model, named: Mapping[str, Fraction], others: Mapping[int, Fr
     return tuple(named.get(row.name, others.get(i, ZERO)) for i, row in enumerate(model.constraints))
 
 
-def _nearest(
-    duals: OptimalDuals, named: Mapping[str, Fraction], open_: tuple[int, ...]
-) -> tuple[Verdict, Row, tuple[tuple[int, Fraction], ...]]:
+def _nearest(duals: OptimalDuals, named: Mapping[str, Fraction], open_: tuple[int, ...]) -> tuple[Verdict, Row]:
     """The optimal dual whose largest difference, each relative to its price, is least: a linear program."""
     prices = {i: price for i, price in enumerate(_filled(duals.model, named, {})) if i not in open_}
-    made = [*duals.corners, *duals.directions]
-    found = optimum(_distance(len(duals.corners), made, prices)).point
+    found = optimum(_distance(duals, prices)).point
     if found is None:
-        raise AssertionError("some mix of the extreme duals is nearest")
-    shares = found[: len(made)]
-    nearest = tuple(dot(shares, [row[i] for row in made]) for i in range(len(duals.model.constraints)))
-    offs = [judged(price - nearest[i], price, TOLERANCES.price) for i, price in prices.items()]
-    mix = tuple((k, share) for k, share in enumerate(shares[: len(duals.corners)]) if share)
-    return worst(offs), nearest, mix
+        raise AssertionError("some optimal dual is nearest")
+    values = dict(zip(duals.tight, found, strict=False))
+    nearest = tuple(values.get(i, ZERO) for i in range(len(duals.model.constraints)))
+    return worst([judged(price - nearest[i], price, TOLERANCES.price) for i, price in prices.items()]), nearest
 
 
-def _distance(corners: int, made: list[Row], prices: Mapping[int, Fraction]) -> Model:
-    """Minimize the relative distance between the prices and a mix of what the optimal duals are made of."""
-    count = len(made)
-    unit = [tuple(Fraction(int(i == k)) for i in range(count + 1)) for k in range(count + 1)]
-    rows = [Constraint(f"share {k}", unit[k], ">=", ZERO) for k in range(count + 1)]
-    rows.append(Constraint("whole", tuple(Fraction(int(k < corners)) for k in range(count + 1)), "==", ONE))
+def _distance(duals: OptimalDuals, prices: Mapping[int, Fraction]) -> Model:
+    """Minimize the relative distance, a last variable, between the prices and an optimal dual."""
+    face = duals.face
+    rows = [replace(row, coefficients=(*row.coefficients, ZERO)) for row in face.constraints]
     for i, price in prices.items():
         size = max(ONE, abs(price))
-        parts = tuple(row[i] for row in made)
-        rows.append(Constraint(f"above {i}", (*parts, size), ">=", price))
-        rows.append(Constraint(f"below {i}", (*parts, -size), "<=", price))
-    return Model(tuple(f"v{k}" for k in range(count + 1)), tuple(rows), Objective("min", unit[count]))
+        part = tuple(Fraction(int(place == i)) for place in duals.tight) or (ZERO,)
+        rows.append(Constraint(f"above {i}", (*part, size), ">=", price))
+        rows.append(Constraint(f"below {i}", (*part, -size), "<=", price))
+    distance = (*(ZERO,) * face.n, ONE)
+    rows.append(Constraint("distance", distance, ">=", ZERO))
+    return Model((*face.variables, "distance"), tuple(rows), Objective("min", distance))
+
+
+def _mixed(duals: OptimalDuals, dual: Row) -> tuple[tuple[int, Fraction], ...]:
+    """An optimal dual as a mix of the extreme ones; empty where these are too many to list."""
+    if not duals.listable:
+        return ()
+    made = [*duals.corners, *duals.directions]
+    count, corners = len(made), len(duals.corners)
+    unit = [tuple(Fraction(int(i == k)) for i in range(count)) for k in range(count)]
+    rows = [Constraint(f"share {k}", unit[k], ">=", ZERO) for k in range(count)]
+    rows.append(Constraint("whole", tuple(Fraction(int(k < corners)) for k in range(count)), "==", ONE))
+    rows += [Constraint(f"price {i}", tuple(row[i] for row in made), "==", dual[i]) for i in duals.tight]
+    found = optimum(Model(tuple(f"v{k}" for k in range(count)), tuple(rows))).point
+    if found is None:
+        raise AssertionError("every optimal dual is a mix of the extreme ones")
+    return tuple((k, share) for k, share in enumerate(found[:corners]) if share)
 
 
 def _convention(duals: OptimalDuals, named: Mapping[str, Fraction], open_: tuple[int, ...]) -> str:

@@ -82,6 +82,8 @@ def which(best: Sensitivity, priced: Pricing) -> str:
     shown = prices_text(best.model, priced.nearest)
     if best.unique_prices:
         return f"{near}the only optimal ones: {shown}"
+    if not priced.mix:
+        return f"{near}one of very many optimal lists: {shown}"
     if len(priced.mix) == 1 and best.duals is not None and best.duals.corners[priced.mix[0][0]] == priced.nearest:
         return f"{near}extreme dual D{priced.mix[0][0]}: {shown}"
     mixed = listed(f"{short(share)} of D{k}" for k, share in priced.mix)

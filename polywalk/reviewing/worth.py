@@ -43,7 +43,9 @@ def _prices(found: Sensitivity) -> Table:
     )
     columns = ("constraint", "right-hand side", "left price", "down to", "right price", "up to")
     endless = any(not isinstance(end, Fraction) for price in found.prices for end in (price.left, price.right))
-    notes = (SIGN, *([ENDLESS] if endless else []), *found.why)
+    marked = found.model.integers
+    relaxed = [f"integer marks are not applied here: {listed(marked)} may take any value between"] if marked else []
+    notes = (SIGN, *([ENDLESS] if endless else []), *found.why, *relaxed)
     return Table(f"optimal value {told(found.value or Fraction(0))} at {where(found)}", columns, rows, notes)
 
 

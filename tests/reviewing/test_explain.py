@@ -253,3 +253,22 @@ def test_a_free_variable_must_be_basic():
     model = typed("max", [1, 1], [([1, 1], "<=", 2), ([1, -1], "<=", 0)])
     with pytest.raises(ModelError, match="'x1' is free"):
         pw.explain(model, basis=["r1", "x2"])
+
+
+def test_an_optimum_with_very_many_extreme_prices():
+    """Thirty rows through one vertex in three variables: the prices are judged without listing all extreme ones."""
+    draw = Random(3)
+    rows = [([draw.randint(1, 9) for _ in range(3)], "<=", 0) for _ in range(30)]
+    model = typed("max", [5, 5, 5], [(row, sense, sum(row)) for row, sense, _ in rows])
+    best = pw.sensitivity(model)
+    found = pw.explain(model, x=[1, 1, 1], prices=best.duals.weights)
+    assert (found.point.words, found.prices.verdict.word, found.prices.mix) == ("V0", "exact", ())
+    assert "one of very many optimal lists" in str(found)
+    assert not best.all_bases
+
+
+def test_a_model_without_constraints_and_one_that_is_marked_integer():
+    assert pw.explain(typed("max", [0, 0], []), x=[1, 2], prices=[]).answer.right
+    marked = pw.Model(("x",), (pw.Constraint("cap", (Fraction(1),), "<=", Fraction(3, 2)),), None, integers=("x",))
+    model = marked.with_objective({"x": 1}, "max")
+    assert "integer marks are not applied" in str(pw.sensitivity(model))
