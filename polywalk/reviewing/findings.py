@@ -173,8 +173,9 @@ class Review(Shown):
         if failed:
             against = [finding for finding in self.findings if any(finding in self._broken(name) for name in failed)]
             said = ", ".join(repr(name) for name in failed)
+            ended = "" if all(map(self._can_hold, failed)) else f"; the model is {self.outcome}"
             because = telling.review_table(replace(self, findings=tuple(against), accepted=()))
-            raise ExpectationError(f"expected {said}, but the model is {self.outcome}.\n{because}", culprit=failed)
+            raise ExpectationError(f"expected {said}, which does not hold{ended}.\n{because}", culprit=failed)
         return self
 
     def _broken(self, expectation: str) -> tuple[Finding, ...]:

@@ -47,7 +47,8 @@ def _objective(case: Case) -> Finding:
     stops = stopping_bounds(case, found.point, found.direction)
     verb = "grows" if found.change > 0 else "falls"
     along = f" It slides along {listed(level)}, which do not change." if level else " No constraint holds it."
-    halted = f"A single bound would stop it: {' or '.join(stops)}." if stops else "No single bound would stop it."
+    named = " or ".join(stop for stop, _ in stops)
+    halted = f"One bound would stop it: {named}." if stops else "No single bound would stop it."
     return Finding(
         "unbounded-objective",
         f"the objective {verb} without end along {_steps(case, found.direction)}",
@@ -59,23 +60,23 @@ def _objective(case: Case) -> Finding:
         _moved(case, found.direction),
         points=(found.point,),
         rays=(found.direction,),
-        amounts=(("change", found.change), *((stop, Fraction(1)) for stop in stops)),
+        amounts=(("change", found.change), *stops),
     )
 
 
-def stopping_bounds(case: Case, point: Row, direction: Row) -> list[str]:
-    """Which bounds of one variable alone, in the ray's direction, make the objective bounded; as "chips has an upper
-    bound"."""
-    model, stops = case.model, []
+def stopping_bounds(case: Case, point: Row, direction: Row) -> list[tuple[str, Fraction]]:
+    """Which bounds of one variable alone make the objective bounded, as "upper bound on chips" and a value that "
+    "does."""
+    model, stops = case.model, list[tuple[str, Fraction]]()
     for j, step in enumerate(direction):
         if step:
-            name, side = model.variables[j], "an upper" if step > 0 else "a lower"
+            name, side = model.variables[j], "upper" if step > 0 else "lower"
             fresh = "bound"
             while any(row.name == fresh for row in model.constraints):
                 fresh += " added"
             held = model.with_constraint(fresh, {name: 1}, "<=" if step > 0 else ">=", point[j])
             if optimum(held).outcome == "optimal":
-                stops.append(f"{side} bound on {name}")
+                stops.append((f"{side} bound on {name}", point[j]))
     return stops
 
 

@@ -182,7 +182,7 @@ def test_unbounded_names_the_ray_what_it_slides_along_and_what_would_stop_it():
     found = only(TRIPLES["unbounded-objective"][0], "unbounded-objective")
     assert found.rays == ((1, 1),)
     assert found.constraints == ("gap",)
-    assert "an upper bound on x or an upper bound on y" in found.explanation
+    assert "upper bound on x or upper bound on y" in found.explanation
 
 
 def test_an_objective_that_no_single_bound_stops():

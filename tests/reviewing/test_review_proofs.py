@@ -114,7 +114,7 @@ def test_the_bounds_said_to_stop_an_objective_do_and_no_other(reviews):
             said = {name for name, _ in finding.amounts} - {"change"}
             for name, step in zip(told.model.variables, finding.rays[0], strict=True):
                 if step:
-                    side, sense = ("an upper", "<=") if step > 0 else ("a lower", ">=")
+                    side, sense = ("upper", "<=") if step > 0 else ("lower", ">=")
                     start = finding.points[0][told.model.index(name)]
                     bounded = region(told.model.with_constraint("stop", {name: 1}, sense, start)).outcome == "optimal"
                     assert (f"{side} bound on {name}" in said) is bounded
