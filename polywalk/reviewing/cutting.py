@@ -16,6 +16,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
+from itertools import combinations, product
 
 from polywalk.exact import Row, dot
 from polywalk.model import Constraint, Objective
@@ -39,6 +40,21 @@ class Ground:
             *lines,
             *(tuple(-value for value in line) for line in lines),
         )
+
+    @cached_property
+    def edges(self) -> tuple[tuple[int, int], ...]:
+        """Pairs of points whose connection may meet a cut first: the edges, or every pair where there is a line."""
+        count = len(self.region.base)
+        if self.region.lines:
+            return tuple(combinations(range(count), 2))
+        return tuple((edge.start, edge.end) for edge in self.region.edges if edge.end is not None)
+
+    @cached_property
+    def open_edges(self) -> tuple[tuple[int, int], ...]:
+        """Pairs of a point and a ray, likewise."""
+        if self.region.lines:
+            return tuple(product(range(len(self.region.base)), range(len(self.ways))))
+        return tuple((edge.start, edge.ray) for edge in self.region.edges if edge.ray is not None)
 
     @cached_property
     def faces(self) -> tuple[tuple[str, tuple[int, ...], tuple[int, ...]], ...]:
@@ -122,27 +138,42 @@ class Cut:
 
         Neither is defined where nothing is left, or where the function climbs.
         """
-        points = list(zip(self.heights[0], self.ground.region.base, strict=True))
-        ways = list(zip(self.heights[1], self.ground.ways, strict=True))
-        kept = [(dot(upward, p), p) for h, p in points if (h == 0 if self._equal else h >= 0)]
-        scored = [(h, dot(upward, p), p) for h, p in points if h]
-        moves = [(h, dot(upward, d), d) for h, d in ways if h]
-        above, below = [one for one in scored if one[0] > 0], [one for one in scored if one[0] < 0]
-        found = [(value, point, point, Fraction(0)) for value, point in kept]
-        for h, value, point in above:
-            for g, other, end in below:
-                step = h / (h - g)
-                found.append((value + step * (other - value), point, _minus(end, point), step))
-        for h, value, point in scored:
-            found += [(value - h / g * gain, point, way, -h / g) for g, gain, way in moves if (g < 0) == (h > 0)]
-        value, point, way, step = max(found, key=lambda one: one[0])
-        return value, tuple(p + step * d for p, d in zip(point, way, strict=True))
+        values = [dot(upward, point) for point in self.ground.region.base]
+        gains = [dot(upward, way) for way in self.ground.ways]
+        points, ways = self.heights
+        found: list[tuple[Fraction, int, int, Fraction]] = [
+            (value, k, -1, Fraction(0))
+            for k, (h, value) in enumerate(zip(points, values, strict=True))
+            if (h == 0 if self._equal else h >= 0)
+        ]
+        for k, end in self.ground.edges:
+            if points[k] * points[end] < 0:
+                step = points[k] / (points[k] - points[end])
+                found.append((values[k] + step * (values[end] - values[k]), k, end, step))
+        for k, way in self.ground.open_edges:
+            if points[k] * ways[way] < 0:
+                step = -points[k] / ways[way]
+                found.append((values[k] + step * gains[way], k, len(points) + way, step))
+        value, k, end, step = max(found, key=lambda one: one[0])
+        return value, self._between(k, end, step)
+
+    def _between(self, start: int, end: int, step: Fraction) -> Row:
+        base = self.ground.region.base
+        if end < 0:
+            return base[start]
+        way = self.ground.ways[end - len(base)] if end >= len(base) else _minus(base[end], base[start])
+        return tuple(p + step * d for p, d in zip(base[start], way, strict=True))
 
     def negative(self) -> int:
         """How many variables can be negative in what is left."""
         return sum(self._falls_below_zero(j) for j in range(self.ground.region.model.n))
 
     def _falls_below_zero(self, j: int) -> bool:
+        base, ways = self.ground.region.base, self.ground.ways
+        if all(point[j] >= 0 for point in base) and all(way[j] >= 0 for way in ways):
+            return False
+        if any(h >= 0 and point[j] < 0 for h, point in zip(self.heights[0], base, strict=True)) and not self._equal:
+            return True
         down = tuple(Fraction(-int(i == j)) for i in range(self.ground.region.model.n))
         return self.climbs(down) or self.best(down)[0] > 0
 

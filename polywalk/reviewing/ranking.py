@@ -12,7 +12,7 @@ McFadden, Conditional logit analysis of qualitative choice behavior, Frontiers i
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, fields
 from fractions import Fraction
 from math import log2, log10
@@ -87,51 +87,71 @@ class Doubts:
         return float(sum(getattr(self, field.name) for field in fields(self)))
 
 
-def slip_doubts(model: Model, slip: Slip, cut: Cut, best: Row | None, *, ways: int, spoken: Sequence[Row]) -> Doubts:
-    """The doubts about an undone slip.
+class Ranking:
+    """What the doubts of all suspects of a model have in common.
 
     Parameters
     ----------
     model : Model
         As typed.
-    slip : Slip
-    cut : Cut
-        The corrected model's region.
-    best : (n,) tuple of Fraction or None
-        Its best plan.
-    ways : int
-        How many slips of its kind the catalogue has for the model.
+    ways : mapping of str to int
+        How many slips of each kind the catalogue has for the model.
     spoken : sequence of (n,) tuple of Fraction
         The plans that are said to be allowed, forbidden or optimal.
     """
-    now = None if slip.place == OBJECTIVE else model.constraint(slip.place)
-    routine = slip.kind != "max for min" if now is None else now.bounds() is not None and not now.rhs
-    gone = slip.place if slip.row is None else ""
-    return Doubts(
-        kind=log2(ways) / 2 + RARE.get(slip.kind, 0.0),
-        digits=0.0 if slip.numbers is None else 1.5 * (_length(slip.numbers[1]) - _length(slip.numbers[0])),
-        scale=_out_of_scale(model, slip.row) - _out_of_scale(model, now),
-        margin=3.0 * _margin(slip.row, spoken),
-        idle=1.0 * _idle([row for row in model.constraints if row.name != gone], cut),
-        nothing=3.0 * (best is not None and not any(best)),
-        negative=4.0 * cut.negative(),
-        place=1.0 * routine,
-    )
 
+    def __init__(self, model: Model, ways: Mapping[str, int], spoken: Sequence[Row]) -> None:
+        self.model, self.ways, self.spoken = model, ways, spoken
+        places = range(model.n)
+        self._reaches = [{row.name: _reach(row, j) for row in model.constraints} for j in places]
 
-def gap_doubts(model: Model, gap: Gap, cut: Cut, *, ways: int) -> Doubts:
-    """The doubts about missing information; ``cut`` is today's region with one of the values that would do."""
-    found = [j for j, value in enumerate(gap.direction) if value]
-    side = "lower" if gap.turned else "upper"
-    known = len(found) == 1 and any(row.bounds() == (found[0], side) for row in model.constraints)
-    against = len({value > 0 for value in gap.direction if value}) > 1
-    return Doubts(
-        kind=log2(ways) / 2 + RARE[gap.kind],
-        idle=1.0 * _idle(model.constraints, Cut(cut.ground, None)),
-        negative=4.0 * cut.negative(),
-        shape=2.5 * (1 - _survival(gap, cut)),
-        known=3.5 * known + 3.0 * against,
-    )
+    def of_slip(self, slip: Slip, cut: Cut, best: Row | None) -> Doubts:
+        """The doubts about an undone slip; ``cut`` is the corrected model's region, ``best`` its best plan."""
+        now = None if slip.place == OBJECTIVE else self.model.constraint(slip.place)
+        routine = slip.kind != "max for min" if now is None else now.bounds() is not None and not now.rhs
+        gone = slip.place if slip.row is None else ""
+        return Doubts(
+            kind=self._kind(slip.kind),
+            digits=0.0 if slip.numbers is None else 1.5 * (_length(slip.numbers[1]) - _length(slip.numbers[0])),
+            scale=self._out_of_scale(slip.row) - self._out_of_scale(now),
+            margin=3.0 * _margin(slip.row, self.spoken),
+            idle=1.0 * _idle([row for row in self.model.constraints if row.name != gone], cut),
+            nothing=3.0 * (best is not None and not any(best)),
+            negative=4.0 * cut.negative(),
+            place=1.0 * routine,
+        )
+
+    def of_gap(self, gap: Gap, cut: Cut) -> Doubts:
+        """The doubts about missing information; ``cut`` is today's region with one of the values that would do."""
+        found = [j for j, value in enumerate(gap.direction) if value]
+        side = "lower" if gap.turned else "upper"
+        known = len(found) == 1 and any(row.bounds() == (found[0], side) for row in self.model.constraints)
+        against = len({value > 0 for value in gap.direction if value}) > 1
+        return Doubts(
+            kind=self._kind(gap.kind),
+            idle=1.0 * _idle(self.model.constraints, Cut(cut.ground, None)),
+            negative=4.0 * cut.negative(),
+            shape=2.5 * (1 - _survival(gap, cut)),
+            known=3.5 * known + 3.0 * against,
+        )
+
+    def _kind(self, kind: str) -> float:
+        return log2(self.ways[kind]) / 2 + RARE.get(kind, 0.0)
+
+    def _out_of_scale(self, row: Constraint | None) -> float:
+        if row is None:
+            return 0.0
+        sizes = [log10(abs(value)) for value in row.coefficients if value]
+        apart = max(sizes, default=0.0) - min(sizes, default=0.0)
+        return 2.0 * max(self._off(row, j) for j in range(self.model.n)) + 1.5 * apart
+
+    def _off(self, row: Constraint, j: int) -> float:
+        """Powers of ten between where the row meets an axis and where, in the middle, the others do."""
+        mine = _reach(row, j)
+        if mine is None:
+            return 0.0
+        others = [reach for name, reach in self._reaches[j].items() if reach is not None and name != row.name]
+        return abs(mine - median(others)) if others else 0.0
 
 
 def _idle(rows: Sequence[Constraint], cut: Cut) -> int:
@@ -144,22 +164,6 @@ def _length(value: Fraction) -> int:
     """Digits that have to be typed, zeros at either end not counted; a ratio costs two more."""
     text = full(abs(value))
     return len(text.replace(".", "").replace("/", "").strip("0")) + (2 if "/" in text else 0)
-
-
-def _out_of_scale(model: Model, row: Constraint | None) -> float:
-    if row is None:
-        return 0.0
-    sizes = [log10(abs(value)) for value in row.coefficients if value]
-    apart = max(sizes, default=0.0) - min(sizes, default=0.0)
-    return 2.0 * max(_off(model, row, j) for j in range(model.n)) + 1.5 * apart
-
-
-def _off(model: Model, row: Constraint, j: int) -> float:
-    """Powers of ten between where the row meets an axis and where, in the middle, the others do."""
-    mine = _reach(row, j)
-    reaches = (_reach(other, j) for other in model.constraints if other.name != row.name)
-    others = [reach for reach in reaches if reach is not None]
-    return abs(mine - median(others)) if mine is not None and others else 0.0
 
 
 def _reach(row: Constraint, j: int) -> float | None:

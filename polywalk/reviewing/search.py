@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import replace
 from fractions import Fraction
 from functools import partial
@@ -15,10 +15,11 @@ from polywalk.exact import Row, dot, primitive
 from polywalk.linear import optimum
 from polywalk.model import Constraint, Model
 from polywalk.region import region
+from polywalk.region.engine import SMALL_WORK, work
 from polywalk.reviewing.catalogue import CATALOGUE, OBJECTIVE, Slip
 from polywalk.reviewing.cutting import Cut, Ground
 from polywalk.reviewing.missing import Gap, Interval, directions, lowest, stops
-from polywalk.reviewing.ranking import Doubts, gap_doubts, slip_doubts
+from polywalk.reviewing.ranking import Doubts, Ranking
 from polywalk.reviewing.symptoms import Symptom
 
 Found = tuple[Slip | Gap, Doubts, Fraction | None, Row | None, tuple[str, ...]]
@@ -39,10 +40,11 @@ class Search:
         self.refusing = {row.name for row in model.constraints for point in self.must if not row.holds(point)}
         proof = self.now.infeasibility
         self.contradicting = None if proof is None else set(proof.multipliers)
+        self.ranking = Ranking(model, self.ways, (*self.must, *seen.forbidden))
+        self.end = monotonic() + budget.seconds
 
     def run(self) -> list[Found]:
         """Every slip that cures."""
-        end = monotonic() + self.budget.seconds
         places = self._by_place()
         found: list[Found] = []
         steps: list[tuple[str, Callable[[], Iterator[Found]]]] = [
@@ -50,7 +52,7 @@ class Search:
         ]
         steps.append((MISSING, self._gaps))
         for done, (name, step) in enumerate(steps):
-            if monotonic() > end:
+            if monotonic() >= self.end:
                 self.unreached = (*self.unreached, name)
                 continue
             try:
@@ -77,10 +79,11 @@ class Search:
         if self.refusing - {place} or (self.contradicting is not None and place not in self.contradicting):
             return
         others = self.model.without(place)
-        able = [slip for slip in slips if self._may_cure(slip, others)]
+        let_through = [point for point in self.seen.forbidden if _allows(others, point)]
+        able = [slip for slip in slips if self._may_cure(slip, let_through)]
         if not able:
             return
-        ground = Ground(region(others))
+        ground = self._ground(others)
         if ground.region.status == "empty":
             return
         merged: dict[object, Found | None] = {_meaning(self.model.constraint(place)): None}
@@ -98,20 +101,19 @@ class Search:
         at = goal.at(wanted) if goal is not None and wanted is not None else None
         if outcome != "optimal" or not self.seen.admits(at, value):
             return None
-        spoken = (*self.must, *self.seen.forbidden)
-        return (
-            slip,
-            slip_doubts(self.model, slip, cut, point, ways=self.ways[slip.kind], spoken=spoken),
-            value,
-            point,
-            (),
-        )
+        return slip, self.ranking.of_slip(slip, cut, point), value, point, ()
 
-    def _may_cure(self, slip: Slip, others: Model) -> bool:
+    def _ground(self, model: Model) -> Ground:
+        """The region of a model; where that is much work, in a child process that ends with the budget."""
+        if work(model.n, len(model.constraints)) <= SMALL_WORK:
+            return Ground(region(model))
+        return Ground(region(model, replace(self.budget, seconds=max(self.end - monotonic(), 0.01))))
+
+    def _may_cure(self, slip: Slip, let_through: Sequence[Row]) -> bool:
         row = slip.row
         if row is not None and not all(row.holds(point) for point in self.must):
             return False
-        if any((row is None or row.holds(p)) and _allows(others, p) for p in self.seen.forbidden):
+        if any(row is None or row.holds(point) for point in let_through):
             return False
         ray = self.now.ray
         return ray is None or (row is not None and not _goes(row, ray.direction))
@@ -119,7 +121,7 @@ class Search:
     def _objective(self, slips: list[Slip]) -> Iterator[Found]:
         if not self._bare() or any(_allows(self.model, point) for point in self.seen.forbidden):
             return
-        cut = Cut(Ground(region(self.model)), None)
+        cut = Cut(self._ground(self.model), None)
         found = (self._cured(slip, cut) for slip in slips)
         yield from (one for one in found if one is not None)
 
@@ -130,7 +132,7 @@ class Search:
     def _gaps(self) -> Iterator[Found]:
         if not self._bare():
             return
-        ground, goal, wanted = Ground(region(self.model)), self.model.objective, self.seen.point
+        ground, goal, wanted = self._ground(self.model), self.model.objective, self.seen.point
         for kind, direction in directions(self.model.n):
             values = self._values(ground, direction)
             if values is None or values.empty:
@@ -140,7 +142,7 @@ class Search:
             outcome, value, point = cut.outcome(goal)
             at = goal.at(wanted) if goal is not None and wanted is not None else None
             if outcome == "optimal" and self.seen.admits(at, value):
-                yield gap, gap_doubts(self.model, gap, cut, ways=self.ways[kind]), value, point, ()
+                yield gap, self.ranking.of_gap(gap, cut), value, point, ()
 
     def _values(self, ground: Ground, direction: Row) -> Interval | None:
         goal = self.model.objective

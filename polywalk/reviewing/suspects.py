@@ -114,10 +114,12 @@ class Suspects(Shown):
         listed = self.found[:count]
         rows = tuple((k + 1, s.kind, s.place, s.typed, s.meant, s.value, s.point) for k, s in enumerate(listed))
         columns = ("", "slip", "where", "as typed", "as meant", "optimum", "at")
-        return Table(f"wrong: {self.symptom.told()}" if self.symptom.told() else "", columns, rows, self._notes(count))
+        return Table(f"symptom: {self.symptom.told()}", columns if rows else (), rows, self._notes(count))
 
     def _notes(self, count: int) -> tuple[str, ...]:
         notes = []
+        if not self.searched and not self.unreached:
+            return ("the model already does what is said: nothing to explain",)
         if len(self.found) > count:
             notes.append(f"and {len(self.found) - count} more that would cure it: .found has all")
         if not self.found and not self.unreached:
