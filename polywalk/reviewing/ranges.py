@@ -145,7 +145,7 @@ def _with_ranges(model: Model, rows: list[Constraint], inverse: list[Row], point
     feasible = all(row.holds(point) for row in model.constraints)
     right = all(keeps_sign(row.sense, goal.goal, own[row.name]) for row in rows)
     rhs = tuple(_rhs_range(model, row, point, ways.get(row.name)) if feasible else None for row in model.constraints)
-    costs = tuple(_cost_range(rows, goal, own, inverse[j], j) if right else None for j in range(model.n))
+    costs = tuple(_basis_cost_range(rows, goal, own, inverse[j], j) if right else None for j in range(model.n))
     return BasisRanges(model, tuple(row.name for row in rows), point, prices, rhs, costs)
 
 
@@ -163,7 +163,7 @@ def _rhs_range(model: Model, row: Constraint, point: Row, way: Row | None) -> tu
     return _room(row.rhs, limits)
 
 
-def _cost_range(
+def _basis_cost_range(
     rows: list[Constraint], goal: Objective, own: dict[str, Fraction], line: Row, j: int
 ) -> tuple[Extended, Extended]:
     """The prices move along a row of the inverse while one cost changes."""
@@ -201,22 +201,25 @@ def _optimal_among(model: Model, subsets: Iterator[tuple[Constraint, ...]]) -> I
 
 def cost_ranges(model: Model, point: Row) -> tuple[tuple[Extended, Extended], ...]:
     """For each variable, between which costs an optimal point stays optimal, all other costs as they are."""
-    return tuple(_kept_optimal(model, point, j) for j in range(model.n))
+    return tuple(cost_range(model, point, j) for j in range(model.n))
 
 
-def _kept_optimal(model: Model, point: Row, j: int) -> tuple[Extended, Extended]:
-    """The costs whose objective is still made up of the constraints active at the point."""
+def cost_range(model: Model, point: Row, place: int) -> tuple[Extended, Extended]:
+    """Between which costs of one variable an optimal point stays optimal, all other costs as they are.
+
+    These are the costs whose objective is still made up of the constraints active at the point.
+    """
     goal = model.objective
     if goal is None:
         raise ValueError("only a model with an objective has cost ranges")
     active = [row for row in model.constraints if row.slack(point) == 0]
     duals = dual_rows(model, active, [f"y{i}" for i in range(len(active))])
     rows = tuple(
-        replace(row, coefficients=(*row.coefficients, -Fraction(row.name == f"c{j}"))) for row in duals.constraints
+        replace(row, coefficients=(*row.coefficients, -Fraction(row.name == f"c{place}"))) for row in duals.constraints
     )
     wide = Model((*duals.variables, "change"), rows)
     low, high = (_last(wide, way) for way in ("min", "max"))
-    return goal.coefficients[j] + low, goal.coefficients[j] + high
+    return goal.coefficients[place] + low, goal.coefficients[place] + high
 
 
 def _last(wide: Model, goal: Goal) -> Extended:

@@ -14,12 +14,13 @@ from dataclasses import dataclass, field
 from fractions import Fraction
 from functools import cached_property
 
+from polywalk.exact import dot
 from polywalk.linear import Optimum, optimum
-from polywalk.model import Model
+from polywalk.model import Constraint, Model
 from polywalk.region import Region
 from polywalk.reviewing.best import BestPoint, best_points
 from polywalk.reviewing.duals import OptimalDuals
-from polywalk.reviewing.extended import Extended
+from polywalk.reviewing.extended import INFINITY, Extended
 from polywalk.reviewing.pieces import Parameter
 from polywalk.reviewing.ranges import BasisRanges, cost_ranges, optimal_bases
 from polywalk.reviewing.value import Outcome
@@ -130,11 +131,23 @@ class Sensitivity(Shown):
 
     def _price(self, name: str) -> Price:
         assert self.duals is not None
-        parameter, rhs = Parameter(self.model, name), self.model.constraint(name).rhs
+        row = self.model.constraint(name)
+        if row.slack(self.duals.point) != 0:
+            return self._idle(row)
+        parameter, rhs = Parameter(self.model, name), row.rhs
         left, right = parameter.slope(self.duals, -1), parameter.slope(self.duals, 1)
         first = parameter.piece(self.duals, left) if isinstance(left, Fraction) else None
         last = first if left == right else parameter.piece(self.duals, right) if isinstance(right, Fraction) else None
         return Price(name, rhs, left, right, first.low if first else rhs, last.high if last else rhs)
+
+    def _idle(self, row: Constraint) -> Price:
+        """Of a constraint with slack: worth nothing until it has cut off every optimal point."""
+        reached = [dot(row.coefficients, corner.point) for corner in self.best]
+        ways = [dot(row.coefficients, way) for way in self.directions]
+        low: Extended = -INFINITY if any(way < 0 for way in ways) else min(reached)
+        high: Extended = INFINITY if any(way > 0 for way in ways) else max(reached)
+        low, high = (low, INFINITY) if row.sense == "<=" else (-INFINITY, high)
+        return Price(row.name, row.rhs, Fraction(0), Fraction(0), low, high)
 
     @cached_property
     def reduced_costs(self) -> tuple[ReducedCost, ...]:

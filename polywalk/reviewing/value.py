@@ -1,7 +1,5 @@
 """The optimal value as an exact piecewise-linear function of one right-hand side or of one cost.
 
-A cost of the model is a right-hand side of its dual, so that one walk along the pieces answers both.
-
 References
 ----------
 Gal, Postoptimal Analyses, Parametric Programming, and Related Topics, 1979.
@@ -18,7 +16,7 @@ from polywalk.errors import ModelError
 from polywalk.exact import exact
 from polywalk.linear import optimum
 from polywalk.model import Model
-from polywalk.reviewing.duals import dual_model
+from polywalk.reviewing.costs import Cost
 from polywalk.reviewing.extended import INFINITY, Extended, shown, told
 from polywalk.reviewing.pieces import Parameter, Piece
 from polywalk.table import Shown, Table
@@ -170,36 +168,43 @@ def value_function(model: Model, *, rhs: str | None = None, cost: str | None = N
 
 def _of_rhs(model: Model, name: str) -> ValueFunction:
     blank = ValueFunction(model, "right-hand side", name, "no objective")
-    return blank if model.objective is None else _walked(blank, model, name)
+    if model.objective is None:
+        return blank
+    parameter = Parameter(model, name)
+    if parameter.ends is None:
+        return replace(blank, outcome="infeasible")
+    start = min(max(blank.current, parameter.ends[0]), parameter.ends[1])
+    assert isinstance(start, Fraction)
+    first = parameter.duals(start)
+    if first is None:  # then it is unbounded for every right-hand side
+        return replace(blank, outcome="unbounded")
+    return _joined(blank, parameter.side(first, -1), parameter.side(first, 1), (start, first.value))
 
 
 def _of_cost(model: Model, name: str, place: int) -> ValueFunction:
-    """By the dual, whose right-hand side the cost is; where the dual is infeasible the model is unbounded."""
     blank = ValueFunction(model, "cost", name, "no objective")
     if model.objective is None:
         return blank
     if optimum(model.without_objective()).outcome == "infeasible":
         return replace(blank, outcome="infeasible")
-    found = _walked(blank, dual_model(model), f"c{place}")
-    return found if found.outcome == "optimal" else replace(found, outcome="unbounded")
-
-
-def _walked(blank: ValueFunction, model: Model, name: str) -> ValueFunction:
-    """The function of the right-hand side of a constraint of this model (which may be the dual of the asked one)."""
-    parameter = Parameter(model, name)
-    ends = parameter.ends
-    if ends is None:
-        return replace(blank, outcome="infeasible")
-    low, high = ends
-    start = min(max(model.constraint(name).rhs, low), high)
-    assert isinstance(start, Fraction)
-    first = parameter.duals(start)
-    if first is None:
+    cost = Cost(model, place)
+    start = cost.start(blank.current)
+    if start is None:
         return replace(blank, outcome="unbounded")
-    lower, upper = parameter.side(first, -1), parameter.side(first, 1)
+    value = cost.best(start).value
+    assert value is not None
+    return _joined(blank, cost.side(start, -1), cost.side(start, 1), (start, value))
+
+
+def _joined(
+    blank: ValueFunction, lower: tuple[Piece, ...], upper: tuple[Piece, ...], start: tuple[Fraction, Fraction]
+) -> ValueFunction:
+    """The pieces to both sides of a start, of which the piece through it may be in both."""
     pieces = (*lower, *(upper[1:] if lower and upper and lower[-1] == upper[0] else upper))
-    corners = _corners(pieces) or (() if pieces else ((start, first.value),))
-    return replace(blank, outcome="optimal", low=low, high=high, pieces=pieces, corners=corners)
+    if not pieces:
+        return replace(blank, outcome="optimal", low=start[0], high=start[0], corners=(start,))
+    low, high = pieces[0].low, pieces[-1].high
+    return replace(blank, outcome="optimal", low=low, high=high, pieces=pieces, corners=_corners(pieces))
 
 
 def _corners(pieces: tuple[Piece, ...]) -> tuple[tuple[Fraction, Fraction], ...]:
