@@ -119,8 +119,8 @@ class Dictionary:
 
     def improving(self) -> list[int]:
         """The columns that may enter: their slack improves the objective as it grows."""
-        may = self.slacks.pivots
-        return [j for j, (k, gain) in enumerate(zip(self.nonbasic, self.aim[1:], strict=True)) if gain > 0 and may[k]]
+        may, aim = self.slacks.pivots, self.aim
+        return [j for j, k in enumerate(self.nonbasic) if aim[j + 1] > 0 and may[k]]
 
     def gain(self, column: int) -> int:
         """How fast the objective improves per unit of the column's slack, times a positive number common to all."""

@@ -18,6 +18,9 @@ from polywalk.walks.pivots import Pivot
 
 End = Literal["optimal", "unbounded", "infeasible", "cycling", "stopped"]
 
+MOST_BASES = 12
+"""So many bases of a cycle are named below the table of a walk."""
+
 
 @dataclass(frozen=True, repr=False)
 class Walk(Shown):
@@ -98,6 +101,11 @@ class Walk(Shown):
         """The number of degenerate pivots: those that change the basis and not the point."""
         return sum(pivot.kind == "degenerate" for pivot in self.pivots)
 
+    @property
+    def cycle_bases(self) -> tuple[tuple[str, ...], ...]:
+        """The bases of one round, each by the slacks it holds at 0; empty where the walk does not cycle."""
+        return tuple(pivot.active_before for pivot in self.cycle)
+
     def explain(self, number: int) -> str:
         """A pivot, counted from 1, in a few plain sentences; raises WalkError where there is no such pivot."""
         if not 1 <= number <= len(self.pivots):
@@ -131,7 +139,10 @@ class Walk(Shown):
             notes.append(f"unbounded along {cell(self.ray)}")
         if self.cycle:
             first, last = self.cycle[0].number, self.cycle[-1].number
-            notes.append(f"cycling: pivots {first} to {last} lead back to where pivot {first} started, for ever")
+            rounds = f"cycling: pivots {first} to {last} lead back to where pivot {first} started, for ever"
+            held = "; ".join(", ".join(names) for names in self.cycle_bases[:MOST_BASES])
+            more = f"; and {len(self.cycle) - MOST_BASES} more" if len(self.cycle) > MOST_BASES else ""
+            notes.append(f"{rounds}: {len(self.cycle)} bases at {cell(self.point)}, which hold {held}{more}")
         if self.end == "stopped":
             notes.append("stopped at the limit; ask for more with limit=...")
         if self.model.integers:

@@ -18,6 +18,7 @@ from __future__ import annotations
 from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import cached_property
 from operator import index
 from random import Random
 from typing import Any, Literal, NoReturn
@@ -200,7 +201,7 @@ class Rules:
     start_objective: Row | None = None
     phase_one: PhaseOne = "auxiliary"
 
-    @property
+    @cached_property
     def sees(self) -> Sees:
         """What the choices of the pair depend on."""
         return max(self.entering.sees, self.leaving.sees, key=SEES.index)
@@ -209,7 +210,9 @@ class Rules:
         """What makes the walk go on as before when it comes back; None where lots are drawn."""
         if self.sees == "basis":
             return frozenset(now.basic)
-        return {"rows": now.basic, "arrangement": (now.basic, now.nonbasic), "lots": None}[self.sees]
+        if self.sees == "lots":
+            return None
+        return now.basic if self.sees == "rows" else (now.basic, now.nonbasic)
 
     def lots(self) -> Random:
         """The generator of one walk."""

@@ -177,14 +177,17 @@ def _next(now: Dictionary, number: int, rules: Rules, choose: Choices) -> Pivot 
     """The pivot the rules choose; None where no slack improves the objective."""
     enter, leave = choose
     rank = rules.rank
-    columns = sorted(now.improving(), key=lambda j: rank[now.nonbasic[j]])
+    columns = now.improving()
     if not columns:
         return None
+    columns.sort(key=lambda j: rank[now.nonbasic[j]])
     column = enter(now, columns)
     rows = now.first_to_run_out(column)
     if not rows:
         return Pivot(number, now, now, column, None, rules)
-    row = leave(now, column, sorted(rows, key=lambda i: rank[now.basic[i]]))
+    row = rows[0]
+    if len(rows) > 1:
+        row = leave(now, column, sorted(rows, key=lambda i: rank[now.basic[i]]))
     return Pivot(number, now, step(now, row, column), column, row, rules)
 
 
