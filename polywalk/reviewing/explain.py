@@ -17,12 +17,13 @@ from polywalk.reviewing.pricing import Pricing, pricing
 from polywalk.reviewing.ranges import BasisRanges, basis_ranges
 from polywalk.reviewing.recounting import answer_rows, heading
 from polywalk.reviewing.sensitivity import Sensitivity, sensitivity
+from polywalk.reviewing.tolerances import STATED
 from polywalk.table import Shown, Table
 
 PARTS = ("x", "prices", "basis")
 
 
-@dataclass(frozen=True, repr=False)
+@dataclass(frozen=True)
 class Answer:
     """What one run of a solver gave, judged; None for what was not given, or has nothing to be judged by."""
 
@@ -81,7 +82,9 @@ class Explanation(Shown):
         """A row a question, a column an answer; the reasons as notes."""
         answers = [self.answer] if self.versus is None else [self.answer, self.versus]
         columns = ("question", "answer") if self.versus is None else ("question", "first", "second")
-        return Table(heading(self.best), columns, answer_rows(self.best, answers), self.why)
+        rows = answer_rows(self.best, answers)
+        tolerances = [STATED] if any("solver tolerance" in str(text) for row in rows for text in row[1:]) else []
+        return Table(heading(self.best), columns, rows, (*self.why, *tolerances))
 
 
 def explain(
@@ -134,6 +137,7 @@ def explain(
     prices        wrong by 3; right with all signs turned round
     which prices  nearest are the only optimal ones: doors 1.5, hours 1
     signs         no optimum gives doors and hours a price of this sign
+    solver tolerance: 1e-06 of a right-hand side, 1e-06 of the optimal value, 1e-06 of a price (below size 1, as of 1)
     """
     model = source.model if isinstance(source, Region) else source
     whole = source if isinstance(source, Region) else region(model) if is_small(model) else None

@@ -44,6 +44,13 @@ TOLERANCES = Tolerances()
 """Those that are used."""
 
 
+STATED = (
+    f"solver tolerance: {float(TOLERANCES.feasibility):g} of a right-hand side, {float(TOLERANCES.objective):g} of the "
+    f"optimal value, {float(TOLERANCES.price):g} of a price (below size 1, as of 1)"
+)
+"""The same in words."""
+
+
 def within(off: Fraction, size: Fraction, tolerance: Fraction) -> bool:
     """Whether a number is off by no more than the tolerance allows at this size."""
     return abs(off) <= tolerance * max(Fraction(1), abs(size))

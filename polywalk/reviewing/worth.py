@@ -15,8 +15,8 @@ if TYPE_CHECKING:
     from polywalk.reviewing.sensitivity import Sensitivity
 
 SIGN = (
-    "a price is the change of the optimal value, in the objective's own sense, per unit of right-hand side: left of it "
-    "for less, right of it for more"
+    "a price is the change of the optimal value, in the objective's own sense, per unit of right-hand side: the left "
+    "one for a smaller right-hand side, the right one for a larger"
 )
 ENDLESS = "∞ or -∞: any step to that side leaves no feasible plan"
 

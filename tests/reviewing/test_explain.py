@@ -272,3 +272,23 @@ def test_a_model_without_constraints_and_one_that_is_marked_integer():
     marked = pw.Model(("x",), (pw.Constraint("cap", (Fraction(1),), "<=", Fraction(3, 2)),), None, integers=("x",))
     model = marked.with_objective({"x": 1}, "max")
     assert "integer marks are not applied" in str(pw.sensitivity(model))
+
+
+def test_what_linprog_returns_goes_in_as_it_is():
+    """scipy's own names: marginals of A_ub, then of A_eq; its bounds are left out and follow."""
+    arrays = {"c": [-1, 4], "A_ub": [[-3, 1], [1, 2]], "b_ub": [6, 4], "A_eq": [[1, -1]], "b_eq": [11]}
+    bounds = [(None, None), (-3, None)]
+    peer = linprog(**arrays, bounds=bounds)
+    found = pw.explain(
+        pw.from_arrays(*arrays.values(), bounds=bounds),
+        x=peer.x,
+        prices=[*peer.ineqlin.marginals, *peer.eqlin.marginals],
+    )
+    assert found.answer.right
+    assert found.prices.derived == ("x2 lower",)
+
+
+def test_tolerances_are_stated_where_they_were_used():
+    assert "1e-06 of a right-hand side" in str(pw.explain(wyndor(), x=[2, 6.0000001]))
+    assert "1e-06" not in str(pw.explain(wyndor(), x=[2, 6]))
+    assert "object at 0x" not in repr(pw.explain(wyndor(), x=[2, 6], prices=[0, 1.5, 1]).answer)
