@@ -1,0 +1,117 @@
+"""The hull of points and rays, kept up to date while they come in one by one. Exact, in integers.
+
+A point p is the generator (1, p), a ray r is (0, r), each times a positive number; a facet (b, a) says b + a.x >= 0.
+The facets are the extreme rays of the cone of all rows that no generator violates, and the double description
+method keeps exactly those.
+
+References
+----------
+Motzkin, Raiffa, Thompson & Thrall, The double description method, Contributions to the Theory of Games II, 1953.
+Fukuda & Prodon, Double description method revisited, LNCS 1120, 1996.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from fractions import Fraction
+from math import gcd
+
+from polywalk.exact import integer_row
+from polywalk.region.spans import echelon
+
+Integers = tuple[int, ...]
+
+
+class Hull:
+    """The facets of what generators span.
+
+    Parameters
+    ----------
+    generators : sequence of (d,) tuple of int
+        d independent ones to begin with.
+
+    Examples
+    --------
+    >>> from polywalk.narrowing.hull import Hull
+    >>> triangle = Hull([(1, 0, 0), (1, 1, 0), (1, 0, 1)])
+    >>> triangle.add((1, 1, 1))
+    >>> sorted(triangle.facets)
+    [(0, 0, 1), (0, 1, 0), (1, -1, 0), (1, 0, -1)]
+    """
+
+    def __init__(self, generators: Sequence[Integers]) -> None:
+        self.generators = list(generators)
+        self.size = len(generators)
+        whole = (1 << self.size) - 1
+        self.facets: dict[Integers, int] = {
+            facet: whole ^ (1 << k) for k, facet in enumerate(_opposite(self.generators))
+        }
+        """Each facet with the generators on it, as a bit mask."""
+
+    def add(self, generator: Integers) -> None:
+        """Take one more generator in; facets that it lies beyond give way to new ones through it."""
+        bit = 1 << len(self.generators)
+        self.generators.append(generator)
+        values = {facet: product(facet, generator) for facet in self.facets}
+        beyond = [facet for facet, value in values.items() if value < 0]
+        inside = [facet for facet, value in values.items() if value > 0]
+        made = {
+            _between(low, values[low], high, values[high]): (self.facets[low] & self.facets[high]) | bit
+            for low in beyond
+            for high in inside
+            if self._meet(low, high)
+        }
+        for facet in beyond:
+            del self.facets[facet]
+        for facet in self.facets:
+            if values[facet] == 0:
+                self.facets[facet] |= bit
+        self.facets.update(made)
+
+    def _meet(self, low: Integers, high: Integers) -> bool:
+        """Whether two facets share a ridge: no third one has all the generators they share."""
+        shared = self.facets[low] & self.facets[high]
+        if shared.bit_count() < self.size - 2:
+            return False
+        return not any(
+            mask & shared == shared for facet, mask in self.facets.items() if facet is not low and facet is not high
+        )
+
+    def on(self, facet: Integers) -> list[Integers]:
+        """The generators on a facet."""
+        return [self.generators[k] for k in members(self.facets[facet])]
+
+
+def members(mask: int) -> list[int]:
+    """The places of the bits of a mask."""
+    return [k for k in range(mask.bit_length()) if mask >> k & 1]
+
+
+def product(left: Iterable[int], right: Iterable[int]) -> int:
+    """The inner product of two rows of integers."""
+    return sum([a * b for a, b in zip(left, right, strict=True)])
+
+
+def whole(values: Sequence[Fraction]) -> Integers:
+    """The same direction in the smallest integers."""
+    return smallest(integer_row(values)[0])
+
+
+def smallest(values: Sequence[int]) -> Integers:
+    """Integers without their common divisor."""
+    divisor = gcd(*values) or 1
+    return tuple([value // divisor for value in values])
+
+
+def _between(low: Integers, under: int, high: Integers, over: int) -> Integers:
+    return smallest([over * a - under * b for a, b in zip(low, high, strict=True)])
+
+
+def _opposite(generators: list[Integers]) -> list[Integers]:
+    """For each of d independent generators the facet through all others."""
+    d = len(generators)
+    table = [(*map(Fraction, row), *(Fraction(int(i == k)) for k in range(d))) for i, row in enumerate(generators)]
+    basis, pivots = echelon(table)
+    if pivots[:d] != list(range(d)):
+        raise ValueError("expected independent generators to begin with")
+    return [whole([basis[j][d + k] for j in range(d)]) for k in range(d)]

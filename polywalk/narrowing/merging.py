@@ -1,0 +1,76 @@
+"""A float shadow's combinatorics made right: facets that differ by rounding are one, points between vertices are none.
+
+What the hull holds after rounding has facets in several pieces and vertices that are none. A facet keeps the points
+that lie on it within the tolerance; one whose points all lie on another is dropped; a point stays a vertex where no
+other point lies on all its facets and more.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from fractions import Fraction
+
+from polywalk.exact import Row, integer_row
+from polywalk.narrowing.hull import Integers, smallest
+from polywalk.narrowing.outline import Edge, Outline
+from polywalk.region.spans import echelon
+
+
+def merged(found: Outline) -> list[Edge]:
+    """The facets that remain, each through its vertices where these lie exactly on one plane."""
+    edges = list(dict.fromkeys(found.edges))
+    on = [_on(found, edge) for edge in edges]
+    largest = [
+        k
+        for k, points in enumerate(on)
+        if not any(points < other or (points == other and j < k) for j, other in enumerate(on))
+    ]
+    corners = _corners([on[k] for k in largest], found.generators)
+    return [_refitted(edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest]
+
+
+def _on(found: Outline, edge: Edge) -> frozenset[int]:
+    return frozenset(k for k, generator in enumerate(found.generators) if found.lies_on(edge, generator))
+
+
+def _corners(on: Sequence[frozenset[int]], generators: Sequence[Integers]) -> set[int]:
+    """The generators that lie on more facets than any other that shares them."""
+    of = [frozenset(j for j, points in enumerate(on) if k in points) for k in range(len(generators))]
+    kinds = [bool(generator[0]) for generator in generators]
+    return {
+        k
+        for k, mine in enumerate(of)
+        if not any(kinds[j] == kinds[k] and (mine < other or (mine == other and j < k)) for j, other in enumerate(of))
+    }
+
+
+def _refitted(edge: Edge, corners: list[Integers], found: Outline) -> Edge:
+    """The same facet through its vertices, if one plane in the columns of the hull holds them all exactly."""
+    rows = [tuple(Fraction(corner[k]) for k in found.chosen) for corner in corners]
+    basis, pivots = echelon(rows)
+    free = [k for k in range(len(found.chosen)) if k not in pivots]
+    if len(free) != 1:
+        return edge
+    row = [Fraction(0)] * (found.size + 1)
+    row[found.chosen[free[0]]] = Fraction(1)
+    for lead, pivot in zip(basis, pivots, strict=True):
+        row[found.chosen[pivot]] = -lead[free[0]]
+    scale = _matching(row[1:], edge.direction)
+    if scale is None:
+        return edge
+    return _turned(edge, tuple(value * scale for value in row[1:]), -row[0] * scale)
+
+
+def _matching(row: Sequence[Fraction], direction: Integers) -> Fraction | None:
+    """What to multiply the row with so that it points the way of the direction; None where it is a constant."""
+    length = sum([a * b for a, b in zip(row, direction, strict=True)], Fraction(0))
+    return None if not length else Fraction(sum(v * v for v in direction)) / length
+
+
+def _turned(edge: Edge, row: Row, limit: Fraction) -> Edge:
+    """The facet with other coefficients, in the smallest integers; its multipliers are scaled along."""
+    whole, _ = integer_row((limit, *row))
+    small = smallest(whole)
+    factor = next(a / b for a, b in zip(small[1:], row, strict=True) if b)
+    multipliers = tuple((name, value * factor) for name, value in edge.multipliers)
+    return Edge(small[1:], Fraction(small[0]), multipliers, edge.backward)

@@ -1,0 +1,146 @@
+"""The shadow of a big model: its outline in a few variables, every facet with the constraints that stop it there."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from fractions import Fraction
+
+from polywalk.bigmodel import BigModel
+from polywalk.exact import exact as number
+from polywalk.model import Constraint, Model, Objective
+from polywalk.narrowing import building
+from polywalk.narrowing.best import costs
+from polywalk.narrowing.merging import merged
+from polywalk.narrowing.outline import Edge, Outline
+from polywalk.narrowing.program import Program
+from polywalk.narrowing.results import Shadow
+from polywalk.narrowing.support import EmptyModelError, ExactReach, FloatReach, InexactError, Multipliers
+from polywalk.narrowing.tolerances import TOLERANCES
+from polywalk.narrowing.widening import OBJECTIVE, Widened, widened
+
+
+def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, exact: bool | None = None) -> Shadow:
+    """The outline, in one to three variables, of everything a big model allows.
+
+    Support points are found by linear programs (HiGHS, warm-started) in the directions of the facets' normals, until
+    every facet is proved. Integer marks are relaxed. Ctrl-C returns the outline found so far, marked partial.
+
+    Parameters
+    ----------
+    big : BigModel or Model
+    onto : sequence of str
+        One to three variables; "objective" stands for the objective's value. The shadow has an objective where it
+        is one of these, or depends on these alone.
+    within : number or str, optional
+        Only plans whose objective is at most so far from the optimum: 20 in the objective's unit, or "5%" of it.
+    exact : bool, optional
+        Whether every vertex and facet is rebuilt and proved in fractions; by default up to
+        ``TOLERANCES.nonzeros`` nonzeros. Else floats are used, with the tolerance the result states.
+
+    Returns
+    -------
+    Shadow
+        Empty, flat and unbounded shadows are ordinary results.
+
+    Raises
+    ------
+    UnknownName, DuplicateName, ModelError, NumberError
+        A name that is not there or given twice, none or more than three, an objective that is not there.
+    SolverError
+        HiGHS is missing, or stopped without an answer.
+
+    Examples
+    --------
+    >>> from polywalk.bigmodel import BigModel
+    >>> from polywalk.narrowing import shadow
+    >>> from polywalk.scenarios import harbour_row
+    >>> big = BigModel.from_model(harbour_row())
+    >>> found = shadow(big, onto=("pump", "objective"))
+    >>> found.tolerance is None, len(found.region.vertices)
+    (True, 6)
+
+    References
+    ----------
+    Lassez & Lassez, Quantifier elimination for conjunctions of linear constraints via a convex hull algorithm, in
+    Symbolic and Numerical Computation for Artificial Intelligence, 1992.
+    """
+    wide = widened(big if isinstance(big, BigModel) else BigModel.from_model(big), onto, within)
+    program = Program(wide.big, wide.keep, dict(wide.held))
+    if exact is None:
+        exact = wide.big.nonzeros <= TOLERANCES.nonzeros
+    if exact:
+        try:
+            return _searched(wide, ExactReach(program), 0.0)
+        except InexactError:
+            said = "exact claims are withheld: HiGHS's basis could not be proved in fractions"
+            wide = Widened(wide.big, wide.keep, wide.held, (*wide.notes, said))
+    return _searched(wide, FloatReach(program), TOLERANCES.touch)
+
+
+def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Shadow:
+    found = Outline(asks, len(wide.keep), touch)
+    try:
+        found.search()
+    except EmptyModelError as empty:
+        return _empty(wide, asks.runs, touch, empty.multipliers)
+    except KeyboardInterrupt:
+        if not found.generators:
+            raise
+        found.wrap()
+    rows = _complete(found) if found.is_complete else _partial(found)
+    return _shadow(wide, list(rows), asks.runs, touch, found.is_complete)
+
+
+def _complete(found: Outline) -> Iterable[building.Row]:
+    edges = merged(found) if found.touch else found.edges
+    return [building.row_of(edge, not found.touch) for edge in (*edges, *found.equalities)]
+
+
+def _partial(found: Outline) -> Iterable[building.Row]:
+    """The facets of the hull so far, proved or not."""
+    proved = {edge.direction: edge for edge in found.edges}
+    for direction, limit, is_equality in found.faces():
+        edge = proved.get(direction)
+        if edge is None or edge.limit != limit:
+            edge = Edge(direction, limit, (), () if is_equality else None)
+        yield building.row_of(edge, not found.touch)
+
+
+def _shadow(wide: Widened, rows: list[building.Row], runs: int, touch: float, complete: bool) -> Shadow:
+    big = wide.big
+    names = tuple(big.variables[j] for j in wide.keep)
+    constraints, facets = building.built(rows, names, not touch)
+    notes = list(wide.notes)
+    if not complete:
+        notes.append("interrupted: the plans inside are allowed, and there may be more outside")
+    if touch:
+        notes.append("made in floats: whether vertices are degenerate or tied is not claimed")
+    model = Model(
+        variables=names,
+        constraints=tuple(constraints),
+        objective=_objective(big, wide.keep),
+        units=tuple(pair for pair in big.units if pair[0] in names),
+        integers=tuple(name for name in big.integers if name in names),
+        name=f"{big.name or 'shadow'} onto {', '.join(names)}",
+    )
+    return Shadow(model, tuple(facets), touch or None, big, wide.held, runs, not complete, tuple(notes))
+
+
+def _objective(big: BigModel, keep: tuple[int, ...]) -> Objective | None:
+    """The objective, where it is an axis or depends on the kept variables alone."""
+    if big.goal is None:
+        return None
+    if OBJECTIVE in [big.variables[j] for j in keep]:
+        return Objective(big.goal, tuple(Fraction(int(big.variables[j] == OBJECTIVE)) for j in keep))
+    cost = costs(big)
+    if any(value and j not in keep for j, value in enumerate(cost)):
+        return None
+    return Objective(big.goal, tuple(number(cost[j]) for j in keep), number(big.constant))
+
+
+def _empty(wide: Widened, runs: int, touch: float, multipliers: Multipliers) -> Shadow:
+    """The shadow of a model that allows nothing: one constraint that no plan keeps."""
+    nothing = Constraint("empty region", (Fraction(0),) * len(wide.keep), "<=", Fraction(-1))
+    told = _shadow(wide, [building.Row(nothing, multipliers)], runs, touch, True)
+    said = "the model allows no plan at all; conflict(big) shows which constraints contradict each other"
+    return Shadow(told.model, told.facets, told.tolerance, told.whole, told.held, runs, False, (*told.notes, said))

@@ -1,0 +1,185 @@
+"""HiGHS, silent and warm: one object that keeps its basis while only the costs change.
+
+Changed costs leave a basis feasible, so the primal simplex method goes on from where it stood.
+
+References
+----------
+Huangfu & Hall, Parallelizing the dual revised simplex method, Math. Prog. Comp. 10, 2018 (HiGHS).
+"""
+
+from __future__ import annotations
+
+import os
+from collections.abc import Sequence
+from threading import Event, Thread
+from typing import Any, Literal
+
+import numpy as np
+
+from polywalk.bigmodel import BigModel
+from polywalk.errors import SolverError
+
+Status = Literal["optimal", "infeasible", "unbounded", "unclear"]
+
+DIRECT = 2_000
+"""Nonzeros up to which HiGHS runs in this thread: it is done before anyone could press Ctrl-C."""
+
+PATIENCE = 0.7
+"""Seconds an interrupted HiGHS may take to stop before it is left alone: Ctrl-C answers within a second."""
+
+
+def highspy() -> Any:
+    """The module, or the error that says how to get it."""
+    try:
+        import highspy as found
+    except ImportError as missing:
+        raise SolverError(
+            "expected the package highspy, which solves large models, and it is not installed; "
+            'install it with: pip install "polywalk[large]".'
+        ) from missing
+    return found
+
+
+def quiet_solver() -> Any:
+    """A Highs object that writes nothing; the first one of a process would print a banner from C."""
+    module = highspy()
+    try:
+        kept = os.dup(1)
+    except OSError:  # no standard output to keep quiet
+        kept = None
+    try:
+        if kept is not None:
+            with open(os.devnull, "wb") as nowhere:
+                os.dup2(nowhere.fileno(), 1)
+        found = module.Highs()
+    finally:
+        if kept is not None:
+            os.dup2(kept, 1)
+            os.close(kept)
+    found.setOptionValue("output_flag", False)
+    return found
+
+
+class Solver:
+    """A linear program in HiGHS; integer marks are left out (the relaxation).
+
+    Parameters
+    ----------
+    big : BigModel
+        Its own objective is not taken over; costs are set by `aim`.
+
+    Examples
+    --------
+    >>> from polywalk.bigmodel import BigModel
+    >>> from polywalk.narrowing.solver import Solver
+    >>> solver = Solver(BigModel(("x", "y"), ("sum",), [0, 2], [0, 1], [1, 1], [1], [4], [0, 0], [3, 3]))
+    >>> solver.aim([0, 1], [2, 1])
+    >>> solver.run(), solver.point().tolist(), solver.runs
+    ('optimal', [3.0, 1.0], 1)
+    """
+
+    def __init__(self, big: BigModel) -> None:
+        self.big, self.runs = big, 0
+        self._module = highspy()
+        self._solver = quiet_solver()
+        self._load()
+
+    def _load(self) -> None:
+        big, program = self.big, self._module.HighsLp()
+        program.num_col_, program.num_row_ = big.n, big.m
+        program.col_cost_ = np.zeros(big.n)
+        program.col_lower_, program.col_upper_ = big.lower, big.upper
+        program.row_lower_, program.row_upper_ = big.row_lower, big.row_upper
+        program.a_matrix_.format_ = self._module.MatrixFormat.kRowwise
+        program.a_matrix_.start_, program.a_matrix_.index_ = big.indptr, big.indices
+        program.a_matrix_.value_ = big.data
+        program.sense_ = self._module.ObjSense.kMaximize
+        if self._solver.passModel(program) == self._module.HighsStatus.kError:
+            raise SolverError("HiGHS refused the model; look for coefficients beyond 1e15.", big.name)
+
+    def aim(self, places: Sequence[int], values: Sequence[float]) -> None:
+        """What to maximize: the costs of these columns; the others keep theirs."""
+        columns = np.array(places, dtype=np.int32)
+        self._solver.changeColsCost(len(columns), columns, np.array(values, dtype=np.float64))
+
+    def bound(self, places: Sequence[int], lower: Sequence[float], upper: Sequence[float]) -> None:
+        """Other bounds for these columns."""
+        columns = np.array(places, dtype=np.int32)
+        self._solver.changeColsBounds(len(columns), columns, np.array(lower, float), np.array(upper, float))
+
+    def run(self) -> Status:
+        """Solve, from the last basis if there is one.
+
+        Raises
+        ------
+        KeyboardInterrupt
+            Within a second after Ctrl-C; the solver must not be used again.
+        """
+        self.runs += 1
+        if self.big.nonzeros <= DIRECT:
+            self._solver.run()
+        else:
+            self._run_apart()
+        status, names = self._solver.getModelStatus(), self._module.HighsModelStatus
+        self._solver.setOptionValue("simplex_strategy", 4)  # the first basis is there: primal from now on
+        told: dict[Any, Status] = {
+            names.kOptimal: "optimal",
+            names.kModelEmpty: "optimal",
+            names.kInfeasible: "infeasible",
+            names.kUnbounded: "unbounded",
+        }
+        return told.get(status, "unclear")
+
+    def _run_apart(self) -> None:
+        done = Event()
+        self._solver.HandleUserInterrupt = True
+
+        def work() -> None:
+            try:
+                self._solver.run()
+            finally:
+                done.set()
+
+        Thread(target=work, daemon=True).start()
+        try:
+            done.wait()
+        except KeyboardInterrupt:
+            self._solver.cancelSolve()
+            done.wait(PATIENCE)
+            raise
+
+    def forget(self) -> None:
+        """Drop the basis: the next run starts cold."""
+        self._solver.clearSolver()
+        self._solver.setOptionValue("simplex_strategy", 1)
+
+    @property
+    def value(self) -> float:
+        """The value of the aim at the last point."""
+        return float(self._solver.getInfoValue("objective_function_value")[1])
+
+    def point(self) -> Any:
+        """The last point, (n,) floats."""
+        return np.array(self._solver.getSolution().col_value)
+
+    def duals(self) -> tuple[Any, Any]:
+        """The last multipliers of rows and reduced costs of columns, (m,) and (n,) floats."""
+        found = self._solver.getSolution()
+        return np.array(found.row_dual), np.array(found.col_dual)
+
+    def ray(self) -> Any | None:
+        """The ray along which the last run found no end, (n,) floats; None where HiGHS keeps none."""
+        _, there, values = self._solver.getPrimalRay()
+        return np.array(values) if there else None
+
+    def basis(self) -> tuple[list[int], list[int]] | None:
+        """The last basis, of columns and of rows: 0 at the lower side, 1 basic, 2 at the upper side, 3 at zero."""
+        found = self._solver.getBasis()
+        if not found.valid:
+            return None
+        return [int(one) for one in found.col_status], [int(one) for one in found.row_status]
+
+    @property
+    def status_text(self) -> str:
+        """HiGHS's own word for how the last run ended."""
+        return str(self._solver.modelStatusToString(self._solver.getModelStatus()))

@@ -1,0 +1,82 @@
+"""The only tolerances and sizes of the room, each with its reason."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from fractions import Fraction
+
+
+@dataclass(frozen=True)
+class Tolerances:
+    """How far floats may be off, and up to which size everything is exact.
+
+    Parameters
+    ----------
+    nonzeros : int
+        Up to so many nonzeros a shadow is rebuilt in rational arithmetic. A basis of a model of this size took 10 to
+        60 milliseconds to solve exactly, a hundred vertices a few seconds: what people wait for.
+    cells : int
+        Variables times constraints up to which the dense exact simplex mends what HiGHS got wrong within its
+        tolerance; it keeps every zero and pivots in Python, about a second at this size.
+    touch : float
+        A facet of a float shadow counts as proved where the model reaches no further beyond it than this share of the
+        shadow's size. HiGHS itself stops at 1e-7 (``primal_feasibility_tolerance``, ``dual_feasibility_tolerance``).
+    snap : float
+        How far, relative to its size (absolute below 1), a solver's number may be moved to a simple fraction: a
+        hundred times less than HiGHS's feasibility tolerance, so that a snapped point is as feasible as HiGHS's own.
+    simple : int
+        The largest denominator of a simple fraction.
+    lucky : float
+        How rarely a number may look like a simple fraction by chance.
+    digits : int
+        Significant decimal digits of a number that is near no simple fraction: a double has 16, a solver's answer
+        about ten.
+    violation : Fraction
+        A constraint violated by no more than this, relative to the size of its right-hand side, is "within solver
+        tolerance": ten times HiGHS's 1e-7, since HiGHS tests the model it has scaled.
+    zero : float
+        A multiplier below this share of the largest one is rounding, not an answer.
+    """
+
+    nonzeros: int = 12_000
+    cells: int = 40_000
+    touch: float = 1e-7
+    snap: float = 1e-9
+    simple: int = 100_000
+    lucky: float = 1e-3
+    digits: int = 11
+    violation: Fraction = Fraction(1, 10**6)
+    zero: float = 1e-9
+
+
+TOLERANCES = Tolerances()
+"""Those that are used."""
+
+
+def snapped(value: float) -> Fraction:
+    """The simple fraction a solver's number stands for; a decimal of few digits where there is none near.
+
+    A fraction p/q counts as meant where it is closer than chance: numbers come within ``lucky``/q^2 of a fraction of
+    denominator q about that rarely (continued fractions).
+
+    Examples
+    --------
+    >>> from fractions import Fraction
+    >>> from polywalk.narrowing.tolerances import snapped
+    >>> snapped(0.333333333341), snapped(3.14159265358979) == Fraction("3.1415926536")
+    (Fraction(1, 3), True)
+    """
+    room = TOLERANCES.snap * max(1.0, abs(value))
+    given = Fraction(value)
+    up, down = given.numerator, given.denominator
+    top, above, now, before = 1, 0, 0, 1
+    while down:
+        part = up // down
+        up, down = down, up % down
+        top, above, now, before = part * top + above, top, part * now + before, now
+        if now > TOLERANCES.simple:
+            break
+        error = abs(float(given - Fraction(top, now)))
+        if error <= room and error * now * now <= TOLERANCES.lucky:
+            return Fraction(top, now)
+    return Fraction(f"{value:.{TOLERANCES.digits - 1}e}")

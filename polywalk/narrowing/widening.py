@@ -1,0 +1,107 @@
+"""The big model made ready for a shadow: the objective's value as a variable, or held near its optimum."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from fractions import Fraction
+
+import numpy as np
+
+from polywalk.bigmodel import BigModel
+from polywalk.errors import DuplicateName, ModelError, NumberError
+from polywalk.exact import exact, short
+from polywalk.narrowing.adding import with_row, with_variable
+from polywalk.narrowing.best import Best, best
+
+OBJECTIVE = "objective"
+"""What the objective's value is called as an axis."""
+
+VALUE = "objective's value"
+"""The row that says what it is."""
+
+
+@dataclass(frozen=True)
+class Widened:
+    """The model to take the shadow of, the kept columns, exact sides, and what to tell."""
+
+    big: BigModel
+    keep: tuple[int, ...]
+    held: tuple[tuple[str, Fraction], ...]
+    notes: tuple[str, ...]
+
+
+def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
+    """The big model with what the question adds to it.
+
+    Raises
+    ------
+    ModelError, UnknownName, DuplicateName, NumberError
+        No names or more than three, one that is not there or is given twice, an objective that is not there.
+    """
+    _check(onto)
+    names = list(onto)
+    wide, held, notes = big, list[tuple[str, Fraction]](), list[str]()
+    if within is not None:
+        wide, held, notes = _near(big, within)
+    if OBJECTIVE in names and OBJECTIVE not in big.variables:
+        wide = _with_value(wide)
+    keep = tuple(wide.index(name) for name in names)
+    marked = [name for name in names if name in big.integers]
+    others = len(big.integers) - len(marked)
+    if big.integers:
+        what = " and ".join([*marked, *([f"{others} other variables"] if others else [])])
+        notes.append(f"integer marks are relaxed: {what}")
+    return Widened(wide, keep, tuple(held), tuple(notes))
+
+
+def _check(onto: Sequence[str]) -> None:
+    if isinstance(onto, str) or not 1 <= len(onto) <= 3:
+        raise ModelError(f"expected the names of one to three variables to keep, as a list, got {onto!r}.", onto)
+    for name in onto:
+        if list(onto).count(name) > 1:
+            raise DuplicateName(f"the variable {name!r} is given twice; name each one once.", name)
+
+
+def _with_value(big: BigModel) -> BigModel:
+    """One more variable that equals the objective, with the row that says so."""
+    if big.goal is None or big.cost is None:
+        raise ModelError(f"expected a model with an objective for the axis {OBJECTIVE!r}; it has none.", OBJECTIVE)
+    used = np.flatnonzero(big.cost)
+    entries = [*used.tolist(), big.n], [*(-big.cost[used]).tolist(), 1.0]
+    return with_row(with_variable(big, OBJECTIVE), VALUE, entries, big.constant, big.constant)
+
+
+def _near(big: BigModel, within: object) -> tuple[BigModel, list[tuple[str, Fraction]], list[str]]:
+    """One more row that keeps the objective near its optimum."""
+    found = best(big)
+    if found.outcome == "infeasible":
+        return big, [], []
+    if found.outcome == "unbounded" or found.value is None:
+        raise ModelError(
+            "expected a model with an optimum to stay near, got an unbounded one; see escape(big) for why.", big.name
+        )
+    distance, said = _distance(within, found.value)
+    better = 1 if big.goal == "min" else -1
+    side = found.value + better * distance - exact(big.constant)
+    name = f"objective within {said}"
+    ends = (-np.inf, float(side)) if better > 0 else (float(side), np.inf)
+    assert big.cost is not None
+    used = np.flatnonzero(big.cost)
+    wide = with_row(big, name, (used.tolist(), big.cost[used].tolist()), *ends)
+    return wide, [(wide.rows[-1], side)], _told(found, said)
+
+
+def _told(found: Best, said: str) -> list[str]:
+    assert found.value is not None
+    rebuilt = "" if found.is_exact else " (HiGHS's, not proved exactly)"
+    return [f"plans whose objective is within {said} of the optimum {short(found.value)}{rebuilt}"]
+
+
+def _distance(within: object, value: Fraction) -> tuple[Fraction, str]:
+    """How far from the optimum, and the same in words; "5%" is a share of it, a number is in its own unit."""
+    text = str(within).strip()
+    distance = exact(text[:-1].strip()) / 100 * abs(value) if text.endswith("%") else exact(within)
+    if distance < 0:
+        raise NumberError(f"within: expected a distance of at least 0 from the optimum, got {within!r}.", within)
+    return distance, text if text.endswith("%") else short(distance)
