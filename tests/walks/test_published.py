@@ -1,19 +1,23 @@
-"""Published walks: cycling examples (CHECKS part B) and pivot counts on cubes (part C), each beside its source."""
+"""Published models that cycle (CHECKS part B), each beside its source."""
 
 from __future__ import annotations
 
 import json
 from fractions import Fraction
+from itertools import product
+from math import cos, pi, sin
 from pathlib import Path
 
 import pytest
-from small import klee_minty, le, typed
+from small import le, typed
 
 from polywalk.linear import optimum
-from polywalk.walks import walk
+from polywalk.scenarios import kuhn
+from polywalk.walks import ENTERING, walk
+from polywalk.walks.rules import Rules, entering_rule, leaving_rule
 
 DATA = Path(__file__).parents[2].parent / "shared" / "data" / "cycling.json"
-LOWEST = "decisions_first|dantzig|enter_tie=low|leave_tie=low"
+TIES = {"lowest-index": "low", "first-row": "first_row", "largest-pivot": "big_pivot"}
 
 BEALE = le(  # Beale 1955, Naval Res. Logist. Quart. 2 (coefficients from memory)
     "min",
@@ -51,6 +55,76 @@ def test_three_decisions_take_the_computed_routes():
     assert pairs == [("x1", "r1"), ("x2", "r2"), ("x3", "r3"), ("r1", "x1"), ("r2", "x2"), ("r3", "x3")]
     ended = walk(THREE, rule="bland")
     assert (len(ended.pivots), ended.stays, ended.point) == (7, 6, (2, 1, 0))
+
+
+@pytest.mark.parametrize("model", [BEALE, CHVATAL, THREE], ids=["B", "C", "3"])
+@pytest.mark.parametrize("rule", [rule.name for rule in ENTERING])
+def test_lexicographic_leaving_ends_whatever_enters(model, rule):
+    """CHECKS part B; Dantzig, Orden & Wolfe 1955."""
+    assert walk(model, rule, "lexicographic").value == optimum(model).value
+    assert len(walk(THREE, rule, "lexicographic").pivots) <= 3
+    assert len(walk(THREE, "dantzig", "lexicographic").pivots) == 2
+
+
+def test_kuhn_cycles_when_ties_go_to_the_first_row_or_the_largest_pivot():
+    """Balinski & Tucker 1969, who credit Kuhn (coefficients from memory)."""
+    model = kuhn()
+    for leaving in ("first-row", "largest-pivot"):
+        stalled = walk(model, leaving=leaving)
+        assert (stalled.end, len(stalled.pivots), len(stalled.cycle)) == ("cycling", 6, 6)
+    assert [walk(model, leaving=leaving).value for leaving in ("lowest-index", "lexicographic")] == [-2, -2]
+
+
+def circle(k: int = 5) -> tuple:
+    """Columns turned by 2 pi / k, every other one on a smaller circle, rounded; and the basis it starts from.
+
+    After Hoffman 1953 and Lee 1997 (computed, no source): min c x, A x = 0, x >= 0; even columns are a tenth of
+    (cos, sin), odd ones half of (-sin, cos), entries rounded to denominators of at most 10, c = 1 - (1, 2) A.
+    """
+    columns, costs = [], []
+    for j in range(k):
+        turn = 2 * pi * j / k
+        for size, (a, b) in ((Fraction(1, 10), (cos(turn), sin(turn))), (1, (-sin(turn) / 2, cos(turn) / 2))):
+            x, y = Fraction(a).limit_denominator(10), Fraction(b).limit_denominator(10)
+            columns.append((size * x, size * y))
+            costs.append(size * (1 - x - 2 * y))
+    rows = [([column[i] for column in columns], "==", 0) for i in range(2)]
+    return typed("min", costs, rows, lower=0), ("r1", "r2", *(f"x{j} lower" for j in range(3, 2 * k + 1)))
+
+
+def test_the_circle_construction_goes_round_by_two_columns_at_a_time():
+    model, start = circle()
+    stalled = walk(model, start=start)
+    assert (stalled.end, len(stalled.pivots), len(stalled.cycle)) == ("cycling", 10, 10)
+    names = [f"x{j}" for j in range(1, 11)]
+    pairs = [(pivot.entering, pivot.leaving) for pivot in stalled.cycle]
+    assert pairs == [(names[(j + 2) % 10], names[j]) for j in range(10)]
+    assert walk(model, "bland", start=start).value == walk(model, leaving="lexicographic", start=start).value == 0
+
+
+def test_a_cycle_is_reported_with_its_length_bases_and_vertex():
+    stalled = walk(THREE)
+    assert stalled.point == (0, 0, 0)
+    assert stalled.cycle_bases[:2] == (("x1", "x2", "x3"), ("r1", "x2", "x3"))
+    assert len(set(map(frozenset, stalled.cycle_bases))) == 6
+    assert "6 bases at (0, 0, 0), which hold x1, x2, x3; r1, x2, x3; r1, r2, x3; " in stalled.table().notes[-1]
+    assert walk(THREE, rule="bland").cycle_bases == ()
+
+
+def test_the_order_of_the_rows_is_part_of_the_state_for_first_row_only():
+    first = walk(THREE, limit=0).first
+    one, other = first.pivot(0, 0).pivot(1, 1), first.pivot(0, 1).pivot(1, 0)
+    assert set(one.basic) == set(other.basic)
+    assert one.basic != other.basic
+
+    def states(leaving):
+        rules = Rules(entering_rule("dantzig"), leaving_rule(leaving), range(9))
+        return rules.state(one), rules.state(other)
+
+    for leaving in ("lowest-index", "largest-pivot", "lexicographic"):
+        assert len(set(states(leaving))) == 1
+    assert len(set(states("first-row"))) == 2
+    assert states("random") == (None, None)
 
 
 def test_the_scale_of_a_row_as_typed_decides_whether_it_cycles():
@@ -93,12 +167,26 @@ def test_collection_of_cycling_models():
         if entry["form"] == "eq":
             assert_sequence(entry, model, stalled)
         elif "verified_cycles" in entry:
-            assert (stalled.end == "cycling") == (LOWEST in entry["verified_cycles"]), entry["name"]
+            assert_ties(entry, model)
         pivots = [pivot for pivot in ended.pivots if pivot.kind != "ray"]
         assert (ended.end, len(pivots)) == (entry["bland"]["status"], entry["bland"]["pivots"]), entry["name"]
+        for rule in ENTERING:
+            assert walk(model, rule.name, "lexicographic", start=start).end == entry["lex"]["status"]
+        counted = [
+            pivot for pivot in walk(model, "dantzig", "lexicographic", start=start).pivots if pivot.kind != "ray"
+        ]
+        assert len(counted) == entry["lex"]["pivots"], entry["name"]
         if entry["lp_exact"]["optimum"] is not None:
             assert ended.value == Fraction(entry["lp_exact"]["optimum"])
     assert irrational <= 1
+
+
+def assert_ties(entry, model):
+    """Who cycles under which ties of the ratio test, with the index order either way round."""
+    for order, (leaving, told) in product(("decisions first", "slacks first"), TIES.items()):
+        name = f"{order.replace(' ', '_')}|dantzig|enter_tie=low|leave_tie={told}"
+        end = walk(model, "dantzig", leaving, order).end
+        assert (end == "cycling") == (name in entry["verified_cycles"]), (entry["name"], name)
 
 
 def model_of(entry):
@@ -119,45 +207,3 @@ def assert_sequence(entry, model, stalled):
     names = [[model.variables[index] for index in pair] for pair in told["sequence_enter_leave"]]
     assert (stalled.end, len(stalled.cycle)) == ("cycling", told["cycle_length"]), entry["name"]
     assert [[pivot.entering, pivot.leaving] for pivot in stalled.cycle] == names, entry["name"]
-
-
-@pytest.mark.parametrize("n", range(2, 9))
-@pytest.mark.parametrize(("base", "growth"), [(2, 5), (10, 100)], ids=["2/5", "10/100"])
-def test_klee_minty_counts(n, base, growth):
-    """Klee & Minty 1972; Bland with decisions first: Avis & Chvátal 1978; other orders: computed, no source."""
-    model = klee_minty(n, base, growth)
-
-    def pivots(rule, order):
-        ended = walk(model, rule=rule, order=order)
-        assert (ended.end, ended.value) == ("optimal", 5**n if growth == 5 else 100 ** (n - 1))
-        return len(ended.pivots)
-
-    orders = ("decisions first", "slacks first", "interleaved")
-    assert [pivots("dantzig", order) for order in orders] == [2**n - 1] * 3
-    assert [pivots("bland", order) for order in orders] == [avis_chvatal(n), 2 * n - 1, 2**n - 1]
-
-
-def avis_chvatal(n: int) -> int:
-    """3, 5, 9, 15, 25, 41, 67 for n = 2..8: a_n = a_(n-1) + a_(n-2) + 1."""
-    return {1: 1, 2: 3}.get(n) or avis_chvatal(n - 1) + avis_chvatal(n - 2) + 1
-
-
-@pytest.mark.parametrize("n", range(2, 9))
-def test_unit_cube_form_is_no_stress_for_dantzig(n):
-    """CHECKS part C: max x_n on the cube squashed by epsilon takes Dantzig's rule one pivot."""
-    epsilon = Fraction(1, 3)
-    rows = []
-    for j in range(1, n):
-        rows.append(([*[0] * (j - 1), epsilon, -1, *[0] * (n - j - 1)], "<=", 0))
-        rows.append(([*[0] * (j - 1), epsilon, 1, *[0] * (n - j - 1)], "<=", 1))
-    model = typed("max", [*[0] * (n - 1), 1], rows, lower=[0] + [None] * (n - 1), upper=[1])
-    model = model.with_constraint("x lower", {f"x{n}": 1}, ">=", 0)
-    cube = typed("max", [*[0] * (n - 1), 1], rows, lower=0, upper=[1])
-    assert (walk(cube).end, walk(cube).value, len(walk(cube).pivots)) == ("optimal", 1, 1)
-    assert walk(model).value == 1
-
-
-@pytest.mark.parametrize("n", range(2, 6))
-def test_dantzig_visits_every_vertex_of_the_klee_minty_cube(n):
-    found = walk(klee_minty(n))
-    assert len(set(found.points)) == len(found.points) == 2**n
