@@ -145,12 +145,12 @@ def cones(source: Model | Region) -> Cones:
     Parameters
     ----------
     source : Model or Region
-        Without an objective, or with one, that only its goal counts of; without, "max".
+        Of an objective only the goal counts; without one it is "max".
 
     Returns
     -------
     Cones
-        None in an empty region.
+        Without members where the region is empty.
 
     Examples
     --------

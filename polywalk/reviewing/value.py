@@ -16,6 +16,7 @@ from polywalk.errors import ModelError
 from polywalk.exact import exact
 from polywalk.linear import optimum
 from polywalk.model import Model
+from polywalk.region import Region
 from polywalk.reviewing.costs import Cost
 from polywalk.reviewing.extended import INFINITY, Extended, shown, told
 from polywalk.reviewing.pieces import Parameter, Piece
@@ -112,12 +113,12 @@ class ValueFunction(Shown):
         )
 
 
-def value_function(model: Model, *, rhs: str | None = None, cost: str | None = None) -> ValueFunction:
+def value_function(source: Model | Region, *, rhs: str | None = None, cost: str | None = None) -> ValueFunction:
     """The optimal value as an exact piecewise-linear function of one right-hand side or one cost.
 
     Parameters
     ----------
-    model : Model
+    source : Model or Region
     rhs : str, optional
         The constraint whose right-hand side varies.
     cost : str, optional
@@ -153,6 +154,7 @@ def value_function(model: Model, *, rhs: str | None = None, cost: str | None = N
     below 0 the model is infeasible
     now 18: optimal value 36
     """
+    model = source.model if isinstance(source, Region) else source
     if (rhs is None) == (cost is None):
         got = "both" if rhs is not None else "neither"
         raise ModelError(

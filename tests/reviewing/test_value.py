@@ -137,6 +137,11 @@ def test_a_model_without_constraints():
     assert (found.low, found.high, found.corners) == (0, 0, ((0, 0),))
 
 
+def test_a_region_will_do():
+    model = le("max", [1], [[1]], [5])
+    assert pw.value_function(pw.region(model), rhs="r1") == pw.value_function(model, rhs="r1")
+
+
 def test_bad_parameters_are_told():
     model = le("max", [1], [[1]], [5])
     with pytest.raises(ModelError, match=r"expected rhs=.* or cost=.*, got neither"):
