@@ -9,6 +9,9 @@ from typing import Any
 
 from polywalk.exact import full, short
 
+MARKUP = frozenset("\\|`*_~<>[]#&$@!")
+"""What Markdown, HTML in it, or a tracker (mentions, issue numbers, TeX) would not show as it stands."""
+
 
 @dataclass(frozen=True, repr=False)
 class Table:
@@ -58,6 +61,29 @@ class Table:
             f"<thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>{notes}"
         )
 
+    def markdown(self) -> str:
+        """The table for a ticket: a bold title, a pipe table and the notes; every name stays text.
+
+        Whatever Markdown would read as markup is written so that it shows as typed, and wakes no mention or link.
+
+        Examples
+        --------
+        >>> from polywalk import Table
+        >>> print(Table("plans", ("plan", "cost"), (("a|b", 9),)).markdown())
+        **plans**
+        <BLANKLINE>
+        | plan | cost |
+        | :--- | ---: |
+        | a&#124;b | 9 |
+        """
+        sides = [all(_is_number(row[k]) for row in self.rows if row[k] is not None) for k in range(len(self.columns))]
+        lines = [self.columns, *((cell(value) for value in row) for row in self.rows)] if self.columns else []
+        body = [f"| {' | '.join(map(_markdown, line))} |" for line in lines]
+        if body:
+            body.insert(1, f"| {' | '.join('---:' if right and self.rows else ':---' for right in sides)} |")
+        notes = [f"\n{_markdown(note)}" for note in self.notes]
+        return "\n".join([f"**{_markdown(self.title)}**", *(["", *body] if body else []), *notes])
+
     def frame(self) -> Any:
         """The rows as a pandas DataFrame; numbers stay exact fractions.
 
@@ -88,6 +114,10 @@ class Shown:
         """The result as a table."""
         raise NotImplementedError
 
+    def markdown(self) -> str:
+        """The table as Markdown, for a ticket."""
+        return self.table().markdown()
+
     def frame(self) -> Any:
         """The table as a pandas DataFrame; numbers stay exact fractions."""
         return self.table().frame()
@@ -117,9 +147,19 @@ def cell(value: object) -> str:
     return str(value)
 
 
+def _is_number(value: object) -> bool:
+    return isinstance(value, Fraction | int) and not isinstance(value, bool)
+
+
+def _markdown(text: str) -> str:
+    """Text as Markdown shows it literally: what could be markup, HTML or a mention becomes a character reference."""
+    flat = " ".join(text.split())
+    return "".join(f"&#{ord(letter)};" if letter in MARKUP else letter for letter in flat)
+
+
 def _html_cell(value: object) -> str:
     hover = f' title="{escape(_exact_text(value))}"' if _exact_text(value) != cell(value) else ""
-    side = "right" if isinstance(value, Fraction | int) and not isinstance(value, bool) else "left"
+    side = "right" if _is_number(value) else "left"
     return f'<td style="text-align:{side}"{hover}>{escape(cell(value))}</td>'
 
 

@@ -108,3 +108,26 @@ def test_shown_shows_its_table():
     assert result.frame().equals(sample().frame())
     with pytest.raises(NotImplementedError):
         Shown().table()
+
+
+def test_markdown_keeps_every_name_as_text():
+    table = Table(
+        "a | b", ("name", "cost"), (("x|y <img src=x> @you #7 $z$ `c` _u_\nnext", THIRD), ("", None)), ("1*2",)
+    )
+    title, blank, head, rule, first, second, gap, note = table.markdown().split("\n")
+    assert (title, blank, gap, note) == ("**a &#124; b**", "", "", "1&#42;2")
+    assert (head, rule, second) == ("| name | cost |", "| :--- | ---: |", "|  |  |")
+    assert first.count("|") == 3
+    assert not set("<>@#$`_*") & set(first.replace("&#", ""))
+    assert "next" in first
+
+
+def test_markdown_of_a_table_without_columns_and_of_a_result():
+    assert Table("nothing", (), ()).markdown() == "**nothing**"
+    assert Table("none yet", ("a",), ()).markdown() == "**none yet**\n\n| a |\n| :--- |"
+
+    class Result(Shown):
+        def table(self):
+            return Table("plans", ("plan",), (("a",),))
+
+    assert Result().markdown() == "**plans**\n\n| plan |\n| :--- |\n| a |"
