@@ -14,7 +14,7 @@ PACKAGE = Path(polywalk.__file__).parent
 
 FLOORS = {
     7: ("__main__", "explorer"),
-    6: ("sheet",),
+    6: ("sheets",),
     5: ("drawing", "sweep"),
     4: ("reviewing", "scenarios"),
     3: ("walks", "narrowing"),
@@ -125,8 +125,8 @@ def test_rooms_load_on_first_use():
 NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region", "Table", "View", "Walk", "draw"}
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios", "walk"}
-NAMES |= {"probe", "review", "suspects"}
-NAMES |= {"cones", "explain", "sensitivity", "value_function"}
+NAMES |= {"before_after", "probe", "review", "suspects"}
+NAMES |= {"cones", "difference", "explain", "sensitivity", "value_function", "versions"}
 
 
 def test_public_names_are_pinned():

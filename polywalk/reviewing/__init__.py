@@ -2,6 +2,7 @@
 
 from polywalk.reviewing.codes import CODES
 from polywalk.reviewing.cones import Cones, cones
+from polywalk.reviewing.difference import Difference, Versions, difference, versions
 from polywalk.reviewing.expectations import EXPECTATIONS
 from polywalk.reviewing.explain import Explanation, explain
 from polywalk.reviewing.findings import Finding, Proof, Review
@@ -17,6 +18,7 @@ __all__ = [
     "CODES",
     "EXPECTATIONS",
     "Cones",
+    "Difference",
     "Explanation",
     "Finding",
     "Limits",
@@ -27,11 +29,14 @@ __all__ = [
     "Suspect",
     "Suspects",
     "ValueFunction",
+    "Versions",
     "cones",
+    "difference",
     "explain",
     "probe",
     "review",
     "sensitivity",
     "suspects",
     "value_function",
+    "versions",
 ]
