@@ -36,6 +36,7 @@ _ROOMS = {
     "versions": "polywalk.reviewing",
     "scenarios": "polywalk",
     "View": "polywalk.drawing",
+    "before_after": "polywalk.drawing",
     "draw": "polywalk.drawing",
     "picture": "polywalk.drawing",
     "explore": "polywalk.explorer",

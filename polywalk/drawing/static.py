@@ -96,16 +96,17 @@ def picture(
     ...     pw.picture(model, pathlib.Path(folder) / "region.pdf")
     picture of a region (pdf, region.pdf)
     """
-    target = None if path is None else _target(Path(path))
+    target = None if path is None else target_of(Path(path))
     ending = target.suffix.lower()[1:] if target else "svg"
     looked = viewed(view, changes)
     data = rendered(scene(source, looked), THEMES[looked.mode], ending, outlines=target is not None)
     if target is not None:
-        _write(target, data)
+        write(target, data)
     return Picture(data, ending, target)
 
 
-def _target(path: Path) -> Path:
+def target_of(path: Path) -> Path:
+    """The path, if a picture can be written there; raises DrawingError."""
     if path.suffix.lower() not in ENDINGS:
         raise DrawingError(f"expected a file ending in {', '.join(ENDINGS)}, got {path.name!r}.", culprit=path)
     if not path.parent.is_dir():
@@ -113,7 +114,7 @@ def _target(path: Path) -> Path:
     return path
 
 
-def _write(target: Path, data: bytes) -> None:
+def write(target: Path, data: bytes) -> None:
     """Replace a file in one step, so that it is never half-written."""
     try:
         with tempfile.NamedTemporaryFile(dir=target.parent, suffix=target.suffix, delete=False) as file:
