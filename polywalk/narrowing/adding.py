@@ -34,7 +34,7 @@ def with_variable(big: BigModel, name: str, low: float = -np.inf, high: float = 
         variables=(*big.variables, free_name(name, big.variables)),
         lower=np.append(big.lower, low),
         upper=np.append(big.upper, high),
-        cost=np.append(big.cost if big.cost is not None else np.zeros(big.n), 0.0),
+        cost=np.append(big.cost, 0.0),
     )
 
 

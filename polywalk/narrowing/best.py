@@ -69,8 +69,9 @@ def best(big: BigModel) -> Best:
 
 
 def costs(big: BigModel) -> list[float]:
-    """The objective's coefficients; none where there is no objective."""
-    return [] if big.cost is None else [float(value) for value in big.cost]
+    """The objective's coefficients, one a variable."""
+    found: list[float] = big.cost.tolist()
+    return found
 
 
 def _rebuilt(big: BigModel, solver: Solver, sign: int) -> Best | None:

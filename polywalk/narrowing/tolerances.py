@@ -56,15 +56,22 @@ TOLERANCES = Tolerances()
 def snapped(value: float) -> Fraction:
     """The simple fraction a solver's number stands for; a decimal of few digits where there is none near.
 
-    A fraction p/q counts as meant where it is closer than chance: numbers come within ``lucky``/q^2 of a fraction of
-    denominator q about that rarely (continued fractions).
-
     Examples
     --------
     >>> from fractions import Fraction
     >>> from polywalk.narrowing.tolerances import snapped
     >>> snapped(0.333333333341), snapped(3.14159265358979) == Fraction("3.1415926536")
     (Fraction(1, 3), True)
+    """
+    near = simple(value)
+    return Fraction(f"{value:.{TOLERANCES.digits - 1}e}") if near is None else near
+
+
+def simple(value: float) -> Fraction | None:
+    """The simple fraction that a number is nearly equal to, None where there is none.
+
+    A fraction p/q counts as meant where it is closer than chance: numbers come within ``lucky``/q^2 of a fraction of
+    denominator q about that rarely (continued fractions).
     """
     room = TOLERANCES.snap * max(1.0, abs(value))
     given = Fraction(value)
@@ -79,4 +86,4 @@ def snapped(value: float) -> Fraction:
         error = abs(float(given - Fraction(top, now)))
         if error <= room and error * now * now <= TOLERANCES.lucky:
             return Fraction(top, now)
-    return Fraction(f"{value:.{TOLERANCES.digits - 1}e}")
+    return None

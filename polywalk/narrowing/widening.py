@@ -65,7 +65,7 @@ def _check(onto: Sequence[str]) -> None:
 
 def _with_value(big: BigModel) -> BigModel:
     """One more variable that equals the objective, with the row that says so."""
-    if big.goal is None or big.cost is None:
+    if big.goal is None:
         raise ModelError(f"expected a model with an objective for the axis {OBJECTIVE!r}; it has none.", OBJECTIVE)
     used = np.flatnonzero(big.cost)
     entries = [*used.tolist(), big.n], [*(-big.cost[used]).tolist(), 1.0]
@@ -86,10 +86,15 @@ def _near(big: BigModel, within: object) -> tuple[BigModel, list[tuple[str, Frac
     side = found.value + better * distance - exact(big.constant)
     name = f"objective within {said}"
     ends = (-np.inf, float(side)) if better > 0 else (float(side), np.inf)
-    assert big.cost is not None
     used = np.flatnonzero(big.cost)
     wide = with_row(big, name, (used.tolist(), big.cost[used].tolist()), *ends)
     return wide, [(wide.rows[-1], side)], _told(found, said)
+
+
+def near(big: BigModel, within: object) -> BigModel | None:
+    """The big model with its objective held near the optimum, in floats; None where it has no plan."""
+    wide, held, _ = _near(big, within)
+    return wide if held else None
 
 
 def _told(found: Best, said: str) -> list[str]:

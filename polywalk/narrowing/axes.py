@@ -1,0 +1,177 @@
+"""Which variables to look at: those with the widest range among plans that are nearly as good as the best."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from time import monotonic
+
+import numpy as np
+
+from polywalk.bigmodel import BigModel
+from polywalk.errors import ModelError
+from polywalk.model import Model
+from polywalk.narrowing.solver import Solver
+from polywalk.narrowing.widening import near
+from polywalk.progress import progress
+from polywalk.table import Shown, Table
+
+
+@dataclass(frozen=True)
+class AxisRange:
+    """The range of one variable among near-optimal plans, in its own unit.
+
+    Parameters
+    ----------
+    variable : str
+    low, high : float
+        Infinite where there is no end.
+    is_measured : bool
+        Whether both ends were found by linear programs; else the range is at least so wide.
+    """
+
+    variable: str
+    low: float
+    high: float
+    is_measured: bool
+
+    @property
+    def width(self) -> float:
+        """How wide the range is."""
+        return self.high - self.low
+
+
+@dataclass(frozen=True, repr=False)
+class Axes(Shown):
+    """Variables ranked by their range among near-optimal plans, the widest first.
+
+    Parameters
+    ----------
+    ranked : tuple of AxisRange
+    within : str
+        How near to the optimum.
+    names : tuple of str
+        The first three: the axes suggested.
+    measured : int
+        How many variables were measured.
+    """
+
+    ranked: tuple[AxisRange, ...]
+    within: str
+    names: tuple[str, ...]
+    measured: int
+
+    def table(self) -> Table:
+        """The widest ranges."""
+        rows = tuple(
+            (one.variable, f"{one.low:.6g}", f"{one.high:.6g}", f"{one.width:.6g}") for one in self.ranked[:10]
+        )
+        notes = [f"suggested axes: {', '.join(self.names)}"]
+        if self.measured < len(self.ranked):
+            notes.append(f"{self.measured} of {len(self.ranked)} variables were measured; others are at least so wide")
+        title = f"ranges among plans within {self.within} of the optimum, each in its own unit, the widest first"
+        return Table(title, ("variable", "least", "greatest", "range"), rows, tuple(notes))
+
+
+def suggest_axes(
+    big: BigModel | Model, within: object = "1%", among: Sequence[str] | None = None, seconds: float = 20.0
+) -> Axes:
+    """Variables of a big model worth a picture: those that plans near the optimum disagree on most.
+
+    The measure is the width of a variable's range among all plans whose objective is within the given distance of the
+    optimum, in the variable's own unit; two linear programs a variable.
+
+    Parameters
+    ----------
+    big : BigModel or Model
+    within : number or str, optional
+        As in `shadow`: "1%" of the optimum, or a distance in the objective's unit.
+    among : sequence of str, optional
+        The variables to rank; all by default.
+    seconds : float, optional
+        When to stop measuring. The variables that earlier solutions differ on most are measured first.
+
+    Returns
+    -------
+    Axes
+
+    Raises
+    ------
+    ModelError
+        Without an objective or an optimum.
+    SolverError, UnknownName
+
+    Examples
+    --------
+    >>> from polywalk.bigmodel import BigModel
+    >>> from polywalk.narrowing import suggest_axes
+    >>> from polywalk.scenarios import harbour_row
+    >>> suggest_axes(BigModel.from_model(harbour_row()), within="5%").names
+    ('pump', 'chips', 'tank')
+    """
+    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    held = near(big, within)
+    if held is None:
+        raise ModelError("expected a model with a plan, got an infeasible one; see conflict(big).", big.name)
+    names = tuple(among) if among is not None else big.variables
+    places = [big.index(name) for name in names]
+    measuring = _Measuring(held, places)
+    measuring.warm_up()
+    end = monotonic() + seconds
+    for place in progress(measuring.next_ones(end), len(places), "variables"):
+        measuring.measure(place)
+    ranked = sorted(measuring.ranges(), key=lambda one: -one.width)
+    return Axes(tuple(ranked), str(within).strip(), tuple(one.variable for one in ranked[:3]), len(measuring.done))
+
+
+class _Measuring:
+    """The ranges seen so far: every solution tells a value of every variable."""
+
+    def __init__(self, big: BigModel, places: list[int]) -> None:
+        self.big, self.places = big, places
+        self.solver = Solver(big)
+        self.low, self.high = np.full(big.n, np.inf), np.full(big.n, -np.inf)
+        self.done: set[int] = set()
+
+    def warm_up(self) -> None:
+        """A few solutions in all directions at once, to see what differs."""
+        draw = np.random.default_rng(0)
+        for _ in range(4):
+            self.solver.aim(self.places, draw.choice([-1.0, 1.0], len(self.places)).tolist())
+            if self.solver.run() == "optimal":
+                self._see()
+        self.solver.aim(self.places, [0.0] * len(self.places))
+        if self.solver.run() == "optimal":
+            self._see()
+
+    def next_ones(self, end: float) -> Iterable[int]:
+        """The variables to measure, the widest so far first, until the time is over."""
+        left = list(self.places)
+        while left and monotonic() < end:
+            place = max(left, key=lambda j: (self.high[j] - self.low[j], -j))
+            left.remove(place)
+            yield place
+
+    def measure(self, place: int) -> None:
+        """Both ends of one variable's range."""
+        for sign, ends in ((1.0, self.high), (-1.0, self.low)):
+            self.solver.aim([place], [sign])
+            status = self.solver.run()
+            if status == "optimal":
+                self._see()
+            elif status == "unbounded":
+                ends[place] = sign * np.inf
+        self.solver.aim([place], [0.0])
+        self.done.add(place)
+
+    def _see(self) -> None:
+        point = self.solver.point()
+        np.minimum(self.low, point, out=self.low)
+        np.maximum(self.high, point, out=self.high)
+
+    def ranges(self) -> list[AxisRange]:
+        """What is known, in the order of the variables."""
+        return [
+            AxisRange(self.big.variables[j], float(self.low[j]), float(self.high[j]), j in self.done)
+            for j in self.places
+        ]
