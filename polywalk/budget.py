@@ -5,10 +5,13 @@ The child is ended within a second when the budget is spent or the user presses 
 
 from __future__ import annotations
 
+import os
 import pickle
+import signal
 import subprocess
 import sys
 from collections.abc import Callable
+from contextlib import suppress
 from dataclasses import dataclass
 from typing import Any
 
@@ -53,25 +56,69 @@ def in_child(function: Callable[..., Any], *arguments: Any, budget: Budget, task
     BudgetError
         Time or memory ran out, or the child died.
     """
-    request = pickle.dumps((budget.megabytes, function.__module__, function.__qualname__, arguments))
-    command = [sys.executable, "-c", "from polywalk.budget import serve; serve()"]
-    with subprocess.Popen(command, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.PIPE) as child:
-        try:
-            answer, trouble = child.communicate(request, timeout=budget.seconds)
-        except subprocess.TimeoutExpired:
-            child.kill()
-            raise BudgetError(
-                f"{task} passed its budget of {budget.seconds:g} seconds; {remedy}", culprit=budget
-            ) from None
-        except BaseException:
-            child.kill()
-            raise
-    if child.returncode != 0:
-        last = trouble.decode(errors="replace").strip().splitlines()[-1:]
-        reason = f"memory of {budget.megabytes} MB" if _out_of_memory(last, child.returncode) else "child process"
-        said = f" ({last[0]})" if last else ""
-        raise BudgetError(f"{task} ended early: its {reason} gave out{said}; {remedy}", culprit=budget)
-    return pickle.loads(answer)
+    return Job(function, *arguments, budget=budget, task=task, remedy=remedy).result()
+
+
+_serving = False
+"""Whether this process is itself such a child: its own children then stay in its session, and end with it."""
+
+
+class Job:
+    """Work in a child process that goes on while this one does something else.
+
+    Parameters are those of `in_child`.
+
+    Examples
+    --------
+    >>> from math import factorial
+    >>> from polywalk.budget import Budget, Job
+    >>> job = Job(factorial, 5, budget=Budget(seconds=30), task="5!", remedy="count by hand.")
+    >>> job.result()
+    120
+    """
+
+    def __init__(self, function: Callable[..., Any], *arguments: Any, budget: Budget, task: str, remedy: str) -> None:
+        self._request = pickle.dumps((budget.megabytes, function.__module__, function.__qualname__, arguments))
+        self._budget, self._task, self._remedy = budget, task, remedy
+        command = [sys.executable, "-c", "from polywalk.budget import serve; serve()"]
+        pipes = dict.fromkeys(("stdin", "stdout", "stderr"), subprocess.PIPE)
+        self._child = subprocess.Popen(command, **pipes, start_new_session=not _serving)  # type: ignore[call-overload]
+        self.stopped = False
+
+    def stop(self) -> None:
+        """End the child and whatever it started itself; ``result`` then raises BudgetError."""
+        self.stopped = True
+        self._kill()
+
+    def result(self) -> Any:
+        """Wait for the function's result; raises BudgetError as `in_child` does."""
+        budget, task, remedy = self._budget, self._task, self._remedy
+        with self._child as child:
+            try:
+                answer, trouble = child.communicate(self._request, timeout=budget.seconds)
+            except subprocess.TimeoutExpired:
+                self._kill()
+                raise BudgetError(
+                    f"{task} passed its budget of {budget.seconds:g} seconds; {remedy}", culprit=budget
+                ) from None
+            except BaseException:
+                self._kill()
+                raise
+        if self.stopped:
+            raise BudgetError(f"{task} was stopped; {remedy}", culprit=budget)
+        if child.returncode != 0:
+            last = trouble.decode(errors="replace").strip().splitlines()[-1:]
+            reason = f"memory of {budget.megabytes} MB" if _out_of_memory(last, child.returncode) else "child process"
+            said = f" ({last[0]})" if last else ""
+            raise BudgetError(f"{task} ended early: its {reason} gave out{said}; {remedy}", culprit=budget)
+        return pickle.loads(answer)
+
+    def _kill(self) -> None:
+        """The child leads a session of its own, so that a child of the child ends with it."""
+        if hasattr(os, "killpg"):
+            with suppress(ProcessLookupError):
+                os.killpg(self._child.pid, signal.SIGKILL)
+        self._child.kill()
 
 
 def _out_of_memory(last: list[str], code: int) -> bool:
@@ -82,6 +129,8 @@ def serve() -> None:
     """The child: read one request, do the work, write the result."""
     import importlib
 
+    global _serving  # noqa: PLW0603 (told once, at the start of a process)
+    _serving = True
     megabytes, module, name, arguments = pickle.load(sys.stdin.buffer)
     try:
         import resource

@@ -1,11 +1,16 @@
 """The child process with a budget: results come back, and time, memory and trouble end with a message."""
 
+import subprocess
 import time
+from random import Random
+from threading import Thread
 
 import pytest
 
-from polywalk.budget import Budget, in_child
+from polywalk.budget import Budget, Job, in_child
 from polywalk.errors import BudgetError
+from polywalk.reading import from_algebra
+from polywalk.region import region
 
 ROOM = Budget(seconds=30)
 
@@ -34,3 +39,40 @@ def test_memory_ends():
 def test_trouble_in_the_child_is_told():
     with pytest.raises(BudgetError, match=r"child process gave out .*ZeroDivisionError"):
         call(divmod, 1, 0)
+
+
+def family(job):
+    """The child and its own children, as the system lists those that still run."""
+    command = ["pgrep", "--runstates", "R,S,D", "-g", str(job._child.pid)]
+    listed = subprocess.run(command, capture_output=True, check=False, text=True)
+    return listed.stdout.split()
+
+
+def test_a_job_goes_on_beside_and_is_stopped_with_its_own_children():
+    draw = Random(1)
+    rows = {f"row {k}": " + ".join(f"{draw.randint(1, 20)}*x{j}" for j in range(12)) + " <= 40" for k in range(200)}
+    model = from_algebra(constraints=rows, bounds={f"x{j}": (0, None) for j in range(12)})
+    job = Job(region, model, budget=ROOM, task="counting 3 rows", remedy="count fewer.")
+    seen = []
+
+    def stop():
+        for _ in range(200):
+            seen[:] = family(job)
+            if len(seen) == 2:
+                break
+            time.sleep(0.05)
+        job.stop()
+
+    Thread(target=stop).start()
+    with pytest.raises(BudgetError, match="counting 3 rows was stopped; count fewer"):
+        job.result()
+    assert len(seen) == 2
+    time.sleep(0.2)
+    assert family(job) == []
+
+
+def test_a_job_that_is_stopped_before_anyone_waits():
+    job = Job(time.sleep, 60, budget=ROOM, task="counting 3 rows", remedy="count fewer.")
+    job.stop()
+    with pytest.raises(BudgetError, match="was stopped"):
+        job.result()

@@ -4,5 +4,6 @@ from polywalk.region.enumeration import region
 from polywalk.region.parts import Edge, Face, Facet, Ray, Vertex, vertex_name
 from polywalk.region.projection import project
 from polywalk.region.results import Region
+from polywalk.region.ways import Way, ways
 
-__all__ = ["Edge", "Face", "Facet", "Ray", "Region", "Vertex", "project", "region", "vertex_name"]
+__all__ = ["Edge", "Face", "Facet", "Ray", "Region", "Vertex", "Way", "project", "region", "vertex_name", "ways"]
