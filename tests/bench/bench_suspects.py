@@ -4,6 +4,9 @@ Run: python tests/bench/bench_suspects.py [seed] [count]
 A case counts as found where one of the first five suspects is the true model (every constraint equal up to a positive
 factor, and the objective), or, for something forgotten, names the right variables on the right side and an interval
 that holds what the forgotten row allows them to reach. The random order is the mean over all orders of the same list.
+
+Measured when the ranking was fixed, first five against random order: seed 1 (looked at while ranking) 85% / 34%; seeds
+2026 and 4711 (not looked at before) 86% / 35% and 88% / 32%. The weights were fitted on seeds 101 to 103.
 """
 
 from __future__ import annotations
