@@ -148,8 +148,8 @@ def probe(model: Model, plan: Mapping[str, object] | Iterable[object]) -> Probe:
     >>> pw.probe(pw.scenarios.harbour_row(), {"pump": 5, "chips": 0}).verdict
     'outside'
     """
-    if isinstance(plan, str):
-        raise ModelError(f"expected a plan as names and values or a list of values, got the text {plan!r}.", plan)
+    if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
+        raise ModelError(f"expected a plan as names and values or a list of values, got {plan!r}.", plan)
     if isinstance(plan, Mapping) and not set(model.variables) <= set(plan):
         return _part(model, _entries(model, plan))
     return _whole(model, model.point(plan))

@@ -105,9 +105,13 @@ def _wanted(model: Model, optimum: object) -> tuple[Fraction | None, Row | None]
 
 
 def _plans(model: Model, plans: Any, where: str) -> tuple[Row, ...]:
-    if isinstance(plans, Mapping | str):
+    if isinstance(plans, Mapping | str) or not isinstance(plans, Iterable):
         raise ModelError(f"{where}=: expected a list of plans, got {plans!r}; write {where}=[plan].", plans)
-    return tuple(model.point(plan) for plan in plans)
+    listed = list(plans)
+    for plan in listed:
+        if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
+            raise ModelError(f"{where}=: expected a list of plans, got {plan!r} as one; write {where}=[plan].", plan)
+    return tuple(model.point(plan) for plan in listed)
 
 
 def _check(model: Model, seen: Symptom) -> None:

@@ -82,7 +82,8 @@ def test_a_part_that_cannot_be_completed_has_a_proof():
         ({"pump": None}, NumberError, "expected a number"),
         ((1, 2), ModelError, "expected 3 values"),
         ({}, ModelError, "empty plan"),
-        ("4, 4, 4", ModelError, "text"),
+        ("4, 4, 4", ModelError, "names and values"),
+        (4, ModelError, "names and values"),
     ],
 )
 def test_bad_plans(plan, error, words):

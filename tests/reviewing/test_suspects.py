@@ -172,6 +172,8 @@ def test_no_single_slip_is_an_answer():
         ({"symptom": "unbounded"}, ModelError, "it is optimal"),
         ({"symptom": "odd"}, UnknownName, "no symptom 'odd'"),
         ({"allowed": {"pump": 1}}, ModelError, "a list of plans"),
+        ({"allowed": (1, 1, 1)}, ModelError, "write allowed=\\[plan\\]"),
+        ({"forbidden": 5}, ModelError, "a list of plans"),
         ({"allowed": [{"pump": 1}]}, ModelError, "'chips' has none"),
         ({"allowed": [("a", 1, 1)]}, NumberError, "'a'"),
         ({"optimum": "many"}, NumberError, "many"),
