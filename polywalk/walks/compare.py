@@ -17,10 +17,11 @@ from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import Walk
 from polywalk.walks.rules import ENTERING, Rule, Rules, entering_rule, leaving_rule
+from polywalk.walks.setting import check_numbers
 from polywalk.walks.shared import looks_at_order, remembered, shared
 from polywalk.walks.standings import Pair, Tally
 from polywalk.walks.starts import Start, Starts, opened_at
-from polywalk.walks.trace import check_numbers, follow
+from polywalk.walks.trace import follow
 from polywalk.walks.yardsticks import Yardsticks, yardsticks
 
 Asked = Any

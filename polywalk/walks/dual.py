@@ -25,6 +25,7 @@ from polywalk.walks.dual_pivots import DualGoal, DualPivot
 from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import End, Walk
+from polywalk.walks.setting import check_numbers
 from polywalk.walks.start import first_dictionary
 
 
@@ -105,6 +106,7 @@ def dual_walk(
     1      dual   y         need     3     step  6          (0, 3)
     2      dual   x         mix      1     step  7          (1, 2)
     """
+    check_numbers(0, limit)
     opened, rule = dictionary_of(model), _dual_rule(leaving)
     rank = ranks(opened.slacks, order)
     begun = first_dictionary(opened, start, rank, inside=False)

@@ -129,7 +129,9 @@ def _rule(given: object, known: tuple[Rule, ...], kind: str, checked: Callable[.
         if rule.name == given:
             return rule
     listed = [rule.name for rule in known]
-    raise WalkError(str(unknown(kind, given, listed, "polywalk")) + f" Known are: {', '.join(listed)}.", culprit=given)
+    told = str(unknown(kind, given, listed, "polywalk"))
+    more = f" Known are: {', '.join(listed)}." if "did you mean" in told else ""
+    raise WalkError(told + more, culprit=given)
 
 
 def _checked_column(name: str, choose: Callable[..., Any]) -> Callable[..., int]:

@@ -75,3 +75,11 @@ def _of_decisions(first: Dictionary, objective: Row) -> dict[int, int]:
     whole, _ = integer_row(objective)
     sense = 1 if first.slacks.maximizes else -1
     return {j: sense * side * value for j, (side, value) in enumerate(zip(first.slacks.sides, whole, strict=True))}
+
+
+def check_numbers(seed: object, limit: object) -> None:
+    """Raise WalkError where the seed is no whole number or the limit no number of pivots."""
+    if isinstance(seed, bool) or not isinstance(seed, int):
+        raise WalkError(f"expected as seed a whole number, got {seed!r}.", culprit=seed)
+    if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
+        raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)

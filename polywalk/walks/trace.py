@@ -16,7 +16,7 @@ from polywalk.walks.order import ranks
 from polywalk.walks.pivots import Pivot
 from polywalk.walks.results import End, Walk
 from polywalk.walks.rules import PHASES_ONE, PhaseOne, Rule, Rules, entering_rule, leaving_rule
-from polywalk.walks.setting import least_of_those_held
+from polywalk.walks.setting import check_numbers, least_of_those_held
 from polywalk.walks.start import first_dictionary
 
 
@@ -62,7 +62,7 @@ def walk(  # noqa: PLR0917 (the order is the published one)
         The most pivots to make.
     start_objective : (n,) sequence or mapping, optional
         For the shadow-vertex rule: the coefficients of an objective, of the model's own sense, for which the start is
-        optimal.
+        optimal; decisions left out of a mapping count 0.
     phase_one : {"auxiliary", "dual"}, optional
         How a start outside the region is brought inside: by an auxiliary variable that is driven to 0, or by the dual
         simplex method (``DualPivot``), lowest index first, with the objective if rest is dual feasible for it, else
@@ -113,15 +113,15 @@ def _toward(model: Model, entering: Rule, start_objective: Any) -> Row | None:
             f"a start objective is for the shadow-vertex rule only, got it for {entering.name!r}; leave it out.",
             culprit=start_objective,
         )
+    if isinstance(start_objective, Mapping):
+        return model.point(dict.fromkeys(model.variables, 0) | dict(start_objective))
+    if isinstance(start_objective, str) or not hasattr(start_objective, "__iter__"):
+        raise WalkError(
+            f"expected as start objective the coefficients of the decisions, got {start_objective!r}; give a number "
+            f"for each of {', '.join(model.variables)}, or a mapping of some of them.",
+            culprit=start_objective,
+        )
     return model.point(start_objective)
-
-
-def check_numbers(seed: object, limit: object) -> None:
-    """Raise WalkError where the seed is no whole number or the limit no number of pivots."""
-    if isinstance(seed, bool) or not isinstance(seed, int):
-        raise WalkError(f"expected as seed a whole number, got {seed!r}.", culprit=seed)
-    if isinstance(limit, bool) or not isinstance(limit, int) or limit < 0:
-        raise WalkError(f"expected as limit a number of pivots, 0 or more, got {limit!r}.", culprit=limit)
 
 
 def follow(now: Dictionary, rules: Rules, limit: int) -> tuple[list[Pivot], End, tuple[Pivot, ...]]:

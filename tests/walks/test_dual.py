@@ -126,6 +126,8 @@ def test_a_start_must_be_dual_feasible():
         dual_walk(typed("max", [1, 1], [([1, -1], "<=", 3)], lower=0))
     with pytest.raises(WalkError, match="did you mean 'lowest-index'"):
         dual_walk(DIET, leaving="lowest index")
+    with pytest.raises(WalkError, match="a number of pivots, 0 or more, got -1"):
+        dual_walk(DIET, limit=-1)
     with pytest.raises(WalkError, match="follows from the others"):
         dual_walk(model, start=("x lower", "x upper"))
 
