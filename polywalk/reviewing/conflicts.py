@@ -1,15 +1,16 @@
 """All irreducible infeasible subsets of a small empty model, one of a larger one.
 
 The multipliers that prove emptiness form a polyhedron; the supports of its vertices are the irreducible subsets
-(Gleeson & Ryan 1990). An equality counts as one constraint, though either half may be what conflicts.
+(Gleeson & Ryan 1990). An equality counts as one constraint, though either half may be what conflicts. A proof read off
+a last dictionary is such a vertex, so that it names one irreducible subset at no further cost.
 """
 
 from __future__ import annotations
 
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from fractions import Fraction
 
-from polywalk.exact import Row, primitive
+from polywalk.exact import primitive
 from polywalk.linear import farkas
 from polywalk.model import Constraint, Model
 from polywalk.region import region
@@ -34,20 +35,17 @@ def conflicts(case: Case) -> Conflicts:
 
 
 def all_conflicts(case: Case) -> tuple[Proof, ...]:
-    """Every irreducible conflict: the vertices of the alternative polyhedron with the smallest supports."""
-    model = case.model
+    """Every irreducible conflict: one for each vertex of the alternative polyhedron, the fewest constraints first."""
+    model, nothing = case.model, (Fraction(0),) * case.model.n
     sides = [(k, sign, half) for k, row in enumerate(model.constraints) for sign, half in halves(row)]
-    vertices = region(_alternative([half for *_, half in sides], model.n), case.budget).base
-    found: dict[frozenset[int], Row] = {}
-    for vertex in vertices:
+    found = []
+    for vertex in region(_alternative([half for *_, half in sides], model.n), case.budget).base:
         weights = [Fraction(0)] * len(model.constraints)
         for (k, sign, _), weight in zip(sides, vertex, strict=True):
             weights[k] += sign * weight
-        found.setdefault(frozenset(k for k, weight in enumerate(weights) if weight), primitive(weights))
-    least = [support for support in found if not any(other < support for other in found)]
-    nothing = (Fraction(0),) * model.n
-    ordered = sorted(least, key=lambda support: (len(support), sorted(support)))
-    return tuple(proof(model.constraints, found[support], nothing) for support in ordered)
+        support = [k for k, weight in enumerate(weights) if weight]
+        found.append((len(support), support, primitive(weights)))
+    return tuple(proof(model.constraints, weights, nothing) for *_, weights in sorted(found))
 
 
 def _alternative(sides: list[Upper], n: int) -> Model:
@@ -65,14 +63,7 @@ def _alternative(sides: list[Upper], n: int) -> Model:
 
 
 def one_conflict(model: Model) -> Proof:
-    """One irreducible conflict: from a first proof, constraints are left out one by one as long as it stays empty."""
+    """One irreducible conflict: the constraints of a proof that is read off one basis."""
     found = farkas(model)
     assert found is not None
-    kept, tried = found, set[str]()
-    while untried := [name for name in kept.multipliers if name not in tried]:
-        name = untried[0]
-        tried.add(name)
-        rows = tuple(model.constraint(other) for other in kept.multipliers if other != name)
-        less = farkas(replace(model, constraints=rows, units=()))
-        kept = kept if less is None else less
-    return proof(kept.model.constraints, kept.weights, (Fraction(0),) * model.n)
+    return proof(model.constraints, found.weights, (Fraction(0),) * model.n)

@@ -3,8 +3,6 @@
 References
 ----------
 Gleeson & Ryan, Identifying minimally infeasible subsystems of inequalities, ORSA J. Computing 2, 1990.
-Chinneck & Dravnieks, Locating minimal infeasible constraint sets in linear programs, ORSA J. Computing 3, 1991 (the
-deletion filter).
 """
 
 from __future__ import annotations
@@ -31,7 +29,7 @@ def empty(case: Case) -> Iterator[Finding]:
         yield Finding(
             "conflict",
             f"conflict{count}: {listed(names)}",
-            f"no plan satisfies {listed(names)} together, though without any one of them there is one: "
+            f"{listed(names)} cannot hold together, but without any one of them the others of them can: "
             f"{case.adds_up(proof)}.",
             "one of them must give way: look for a wrong sense, number or unit.",
             names,
@@ -50,9 +48,8 @@ def _no_plan(case: Case, found: Conflicts) -> Finding:
         how = f"The model has {count} in all."
     else:
         how = (
-            "This is one irreducible conflict, found by leaving out one constraint after the other; the model has "
-            "more "
-            f"than {case.limits.conflicts} constraints, so the others were not listed."
+            "This is one irreducible conflict; the model has more than "
+            f"{case.limits.conflicts} constraints, so that others, if any, were not listed."
         )
     return Finding(
         "no-plan",

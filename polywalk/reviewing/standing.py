@@ -84,7 +84,7 @@ def _simple(case: Case, k: int, places: list[int]) -> Proof | None:
         return None
     (_, *target), scale = case.whole[k]
     shares = solved([case.whole[place][0][1:] for place in places], target)
-    if shares is None or any(share < 0 for share in shares):
+    if shares is None:
         return None
     weights = [share * Fraction(case.whole[place][1], scale) for place, share in zip(places, shares, strict=True)]
     signed = [-weight if rows[p].sense == ">=" else weight for p, weight in zip(places, weights, strict=True)]

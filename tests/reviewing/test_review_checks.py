@@ -25,9 +25,9 @@ def corner(*rows, goal=("min", [1, 2])):
     return build("x y", [*XY, *rows], goal)
 
 
-def switch(size):
+def switch(size, beyond=0):
     """x up to 12, and only where the yes-or-no variable y lets it."""
-    rows = [*XY, ("x upper", [1, 0], "<=", 12), ("y upper", [0, 1], "<=", 1), ("link", [1, -size], "<=", 0)]
+    rows = [*XY, ("x upper", [1, 0], "<=", 12), ("y upper", [0, 1], "<=", 1), ("link", [1, -size], "<=", beyond)]
     return replace(build("x y", rows, ("max", [1, -1])), integers=("y",))
 
 
@@ -222,6 +222,7 @@ def test_the_smallest_loose_constant():
 
 def test_the_smallest_switch():
     assert only(switch(1000), "loose-switch").amount("smallest coefficient that changes nothing") == 12
+    assert only(switch(1000, beyond=2), "loose-switch").amount("smallest coefficient that changes nothing") == 10
 
 
 def test_which_constraint_could_go_from_a_degenerate_vertex():
