@@ -69,8 +69,6 @@ def _one_equality(case: Case, first: Constraint, second: Constraint) -> Finding:
 
 def _is_big(case: Case, row: Constraint, standing: Standing) -> bool:
     """Whether the constant is far beyond what the region reaches."""
-    if not standing.slack:
-        return False
     reach = abs(upper(row).rhs - standing.slack)
     return abs(row.rhs) >= case.limits.loose * max(reach, *(abs(value) for value in row.coefficients))
 
