@@ -44,11 +44,7 @@ def part(looked: Subject) -> tuple[KeyPart, ...]:
     rows = [KeyRow("evidence", f"{item.severity}: {item.title}", tag=number(k)) for k, item in enumerate(found[:MOST])]
     if len(found) > MOST:
         rows.append(KeyRow("none", f"and {len(found) - MOST} more findings, not marked"))
-    return (
-        (KeyPart("Findings (square: place, band: constraint, arrow: ray)", tuple(rows)),)
-        if rows
-        else ()
-    )
+    return (KeyPart("Findings (square: place, band: constraint, arrow: ray)", tuple(rows)),) if rows else ()
 
 
 def _said(looked: Subject, ks: list[int]) -> str:
