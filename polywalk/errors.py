@@ -78,6 +78,14 @@ class SolverError(PolywalkError, RuntimeError):
     """HiGHS is missing, refused a model, or stopped without an answer."""
 
 
+class FileError(PolywalkError, ValueError):
+    """A file that cannot be read or written; ``culprit`` is its path, ``line`` where it went wrong (from 1)."""
+
+    def __init__(self, message: str, culprit: object = None, line: int | None = None) -> None:
+        super().__init__(message, culprit)
+        self.line = line
+
+
 class BudgetError(PolywalkError, RuntimeError):
     """Work that was ended because it passed its budget of seconds or memory."""
 
