@@ -7,13 +7,13 @@ from itertools import pairwise
 
 from polywalk.drawing.course import Course, courses_of, key, reading
 from polywalk.drawing.placing import GLYPH, SIZE, Sheet
-from polywalk.drawing.scene import Axis, Label, Line, Mark, Point, Scene
+from polywalk.drawing.scene import PAPER, Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.subject import coordinates
-from polywalk.drawing.window import PAPER, Window
+from polywalk.drawing.window import Window
 from polywalk.exact import short
 from polywalk.walks import Comparison, Pivot, Walk
 
-APART = 3.6
+APART = 1.6
 """Pixels right and down between walks that pass the same point of the chart (left and down where it falls)."""
 
 ARROW = 38.0

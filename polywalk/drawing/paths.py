@@ -95,7 +95,7 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
     for leg in legs:
         if not leg.moves:
             continue
-        role = "phase 1" if leg.pivot.phase == 1 else "walk"
+        role = "phase 1" if leg.pivot.outside else "walk"
         if index == 0 and limit is not None and leg.pivot.number > limit:
             role = "walk rest"
         parts.setdefault(role, []).append(_shifted(frame, index, leg))
@@ -177,8 +177,10 @@ def walk_text(walk: Walk) -> str:
     """A walk in one line: rule, pivots, stays, end."""
     still = sum(pivot.kind == "degenerate" for pivot in walk.pivots)
     first = sum(pivot.phase == 1 for pivot in walk.pivots)
+    beyond = sum(pivot.outside for pivot in walk.pivots) - first
     text = f"{walk.rule}: {_count(len(walk.pivots), 'pivot')}"
     text += f", {first} of them Phase I (dotted)" if first else ""
+    text += f", {beyond} of them outside the region (dotted)" if beyond else ""
     text += f", {_count(still, 'stay')}" if still else ", no stay"
     return f"{text}, {walk.end}"
 
