@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from polywalk.model import Constraint, Sense
 from polywalk.narrowing.outline import Edge
+from polywalk.narrowing.proof import Proof
 from polywalk.narrowing.results import ShadowFacet
-from polywalk.narrowing.support import Multipliers
 from polywalk.narrowing.tolerances import TOLERANCES
 from polywalk.narrowing.widening import VALUE
 
@@ -25,51 +25,45 @@ class Row:
     """A facet on its way into the model."""
 
     constraint: Constraint
-    multipliers: Multipliers
-    backward: Multipliers = ()
+    proof: Proof | None = None
+    backward: Proof | None = None
 
 
 def built(rows: Iterable[Row], variables: tuple[str, ...], exact: bool) -> tuple[list[Constraint], list[ShadowFacet]]:
     """The constraints and the facets, each with a name of its own."""
     constraints, facets, taken = [], [], set[str]()
     for row in rows:
-        name = _unique(row.constraint.name, taken)
-        constraint = Constraint(name, row.constraint.coefficients, row.constraint.sense, row.constraint.rhs)
+        constraint = replace(row.constraint, name=_unique(row.constraint.name, taken))
         constraints.append(constraint)
-        proved = exact and bool(row.multipliers)
-        facets.append(ShadowFacet(name, constraint.text(variables), row.multipliers, row.backward, proved))
+        proved = exact and row.proof is not None
+        facets.append(ShadowFacet(constraint.name, constraint.text(variables), row.proof, row.backward, proved))
     return constraints, facets
 
 
 def row_of(edge: Edge, exact: bool) -> Row:
     """The row of an inequality: its first coefficient positive, so that x >= 0 reads as such."""
-    direction, limit, factor = _plain(edge, exact)
+    direction, limit, scale = _plain(edge, exact)
     turned = next(value for value in direction if value) < 0
     sign = -1 if turned else 1
-    coefficients = tuple(sign * value for value in direction)
-    multipliers = _sorted(edge.multipliers, sign * factor, exact)
-    if edge.backward is None:
+    coefficients, factor = tuple(sign * value for value in direction), sign * scale
+    forth, back = edge.proof and edge.proof.times(factor), edge.backward and edge.backward.times(-factor)
+    if not edge.is_equality:
         sense: Sense = ">=" if turned else "<="
-        return Row(Constraint(named(multipliers), coefficients, sense, sign * limit), multipliers)
-    back = _sorted(edge.backward, -sign * factor, exact)
-    first, second = (back, multipliers) if turned else (multipliers, back)
+        return Row(Constraint(named(forth), coefficients, sense, sign * limit), forth)
+    first, second = (back, forth) if turned else (forth, back)
     return Row(Constraint(named(first), coefficients, "==", sign * limit), first, second)
 
 
-def named(multipliers: Multipliers) -> str:
+def named(proof: Proof | None) -> str:
     """What a facet is called: the constraints that stop it, the largest multipliers first."""
-    names = [name for name, _ in multipliers if name != VALUE] or [name for name, _ in multipliers]
-    if len(names) <= NAMED + 1:
-        return " & ".join(names) or "outline"
-    return " & ".join([*names[:NAMED], f"{len(names) - NAMED} more"])
-
-
-def _sorted(multipliers: Multipliers, factor: Fraction, exact: bool) -> Multipliers:
-    """The largest first; without what is only rounding."""
-    largest = max((abs(value) for _, value in multipliers), default=Fraction(0))
-    least = Fraction(0) if exact else largest * Fraction(TOLERANCES.zero)
-    scaled = [(name, value * factor) for name, value in multipliers if abs(value) >= least]
-    return tuple(sorted(scaled, key=lambda pair: -abs(pair[1])))
+    if proof is None:
+        return "outline"
+    found = [name for name, _ in proof.named(NAMED + 2)]
+    names = [name for name in found if name != VALUE] or found
+    count = proof.count - (len(found) - len(names))
+    if count <= NAMED + 1:
+        return " & ".join(names[:count])
+    return " & ".join([*names[:NAMED], f"{count - NAMED} more"])
 
 
 def _plain(edge: Edge, exact: bool) -> tuple[tuple[Fraction, ...], Fraction, Fraction]:

@@ -34,7 +34,8 @@ class Hull:
     --------
     >>> from polywalk.narrowing.hull import Hull
     >>> triangle = Hull([(1, 0, 0), (1, 1, 0), (1, 0, 1)])
-    >>> triangle.add((1, 1, 1))
+    >>> sorted(triangle.add((1, 1, 1)))
+    [(1, -1, 0), (1, 0, -1)]
     >>> sorted(triangle.facets)
     [(0, 0, 1), (0, 1, 0), (1, -1, 0), (1, 0, -1)]
     """
@@ -48,8 +49,8 @@ class Hull:
         }
         """Each facet with the generators on it, as a bit mask."""
 
-    def add(self, generator: Integers) -> None:
-        """Take one more generator in; facets that it lies beyond give way to new ones through it."""
+    def add(self, generator: Integers) -> list[Integers]:
+        """Take one more generator in; facets that it lies beyond give way to new ones, which are returned."""
         bit = 1 << len(self.generators)
         self.generators.append(generator)
         values = {facet: product(facet, generator) for facet in self.facets}
@@ -67,6 +68,7 @@ class Hull:
             if values[facet] == 0:
                 self.facets[facet] |= bit
         self.facets.update(made)
+        return list(made)
 
     def _meet(self, low: Integers, high: Integers) -> bool:
         """Whether two facets share a ridge: no third one has all the generators they share."""
@@ -76,10 +78,6 @@ class Hull:
         return not any(
             mask & shared == shared for facet, mask in self.facets.items() if facet is not low and facet is not high
         )
-
-    def on(self, facet: Integers) -> list[Integers]:
-        """The generators on a facet."""
-        return [self.generators[k] for k in members(self.facets[facet])]
 
 
 def members(mask: int) -> list[int]:
@@ -101,6 +99,24 @@ def smallest(values: Sequence[int]) -> Integers:
     """Integers without their common divisor."""
     divisor = gcd(*values) or 1
     return tuple([value // divisor for value in values])
+
+
+def independent(rows: Sequence[Integers]) -> list[int]:
+    """The first independent ones, by place."""
+    return echelon([tuple(Fraction(row[j]) for row in rows) for j in range(len(rows[0]))])[1]
+
+
+def orthogonal(rows: Sequence[Integers], size: int) -> list[Integers]:
+    """Independent rows that are orthogonal to all given ones, as many as there are."""
+    basis, pivots = echelon([tuple(map(Fraction, row)) for row in rows])
+    made = []
+    for free in [k for k in range(size) if k not in pivots]:
+        found = [Fraction(0)] * size
+        found[free] = Fraction(1)
+        for lead, pivot in zip(basis, pivots, strict=True):
+            found[pivot] = -lead[free]
+        made.append(whole(found))
+    return made
 
 
 def _between(low: Integers, under: int, high: Integers, over: int) -> Integers:

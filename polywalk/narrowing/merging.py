@@ -8,7 +8,10 @@ other point lies on all its facets and more.
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 from fractions import Fraction
+
+import numpy as np
 
 from polywalk.exact import Row, integer_row
 from polywalk.narrowing.hull import Integers, smallest
@@ -18,19 +21,14 @@ from polywalk.region.spans import echelon
 
 def merged(found: Outline) -> list[Edge]:
     """The facets that remain, each through its vertices where these lie exactly on one plane."""
-    edges = list(dict.fromkeys(found.edges))
-    on = [_on(found, edge) for edge in edges]
+    on = [frozenset(np.flatnonzero(column).tolist()) for column in found.near.incidence().T]
     largest = [
         k
         for k, points in enumerate(on)
         if not any(points < other or (points == other and j < k) for j, other in enumerate(on))
     ]
     corners = _corners([on[k] for k in largest], found.generators)
-    return [_refitted(edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest]
-
-
-def _on(found: Outline, edge: Edge) -> frozenset[int]:
-    return frozenset(k for k, generator in enumerate(found.generators) if found.lies_on(edge, generator))
+    return [_refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest]
 
 
 def _corners(on: Sequence[frozenset[int]], generators: Sequence[Integers]) -> set[int]:
@@ -68,9 +66,9 @@ def _matching(row: Sequence[Fraction], direction: Integers) -> Fraction | None:
 
 
 def _turned(edge: Edge, row: Row, limit: Fraction) -> Edge:
-    """The facet with other coefficients, in the smallest integers; its multipliers are scaled along."""
+    """The facet with other coefficients, in the smallest integers; its multipliers scaled along."""
     whole, _ = integer_row((limit, *row))
     small = smallest(whole)
     factor = next(a / b for a, b in zip(small[1:], row, strict=True) if b)
-    multipliers = tuple((name, value * factor) for name, value in edge.multipliers)
-    return Edge(small[1:], Fraction(small[0]), multipliers, edge.backward)
+    proof = edge.proof and edge.proof.times(factor)
+    return replace(edge, direction=small[1:], limit=Fraction(small[0]), proof=proof)

@@ -10,7 +10,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import unknown
 from polywalk.exact import short
 from polywalk.model import Model
-from polywalk.narrowing.support import Multipliers
+from polywalk.narrowing.proof import Multipliers, Proof
 from polywalk.region import Region, region
 from polywalk.table import Shown, Table
 
@@ -28,11 +28,10 @@ class ShadowFacet(Shown):
         Its name in the shadow's model.
     rule : str
         The same as text.
-    multipliers : tuple of (str, Fraction)
-        By constraint of the big model, the largest first: times these, the constraints add up to the facet's row and
-        its right-hand side. None negative on a <=, none positive on a >= (the other way round for a facet >=).
-    backward : tuple of (str, Fraction)
-        For an equality, those that add up to its >= half; ``multipliers`` add up to its <= half.
+    proof : Exact or Rounded or None
+        What ``multipliers`` are read from; None where the facet is not proved.
+    proof_backward : Exact or Rounded or None
+        The same for the >= half of an equality.
     is_proved : bool
         Whether the multipliers add up exactly.
 
@@ -51,9 +50,23 @@ class ShadowFacet(Shown):
 
     constraint: str
     rule: str
-    multipliers: Multipliers
-    backward: Multipliers = ()
+    proof: Proof | None
+    proof_backward: Proof | None = None
     is_proved: bool = True
+
+    @cached_property
+    def multipliers(self) -> Multipliers:
+        """By constraint of the big model, the largest first: times these, the constraints add up to the facet.
+
+        None is negative on a <=, none positive on a >= (the other way round for a facet >=). For an equality they add
+        up to its <= half.
+        """
+        return () if self.proof is None else self.proof.named()
+
+    @cached_property
+    def backward(self) -> Multipliers:
+        """For an equality, those that add up to its >= half."""
+        return () if self.proof_backward is None else self.proof_backward.named()
 
     def table(self) -> Table:
         """The multipliers, the largest first."""
@@ -99,10 +112,10 @@ class Shadow(Shown):
     >>> print(shadow(big, onto=("chips", "tank")))
     Harbour Row onto chips, tank: 5 facets, exact, 10 linear programs
     facet                      rule               what stops it there
+    tank lower                 tank ≥ 0           1 tank lower
     harbour main & pump lower  chips + tank ≤ 12  1 harbour main, -1 pump lower
     tank upper                 tank ≤ 4           1 tank upper
     reheating                  chips - tank ≥ -2  -1 reheating
-    tank lower                 tank ≥ 0           1 tank lower
     chips lower                chips ≥ 0          1 chips lower
     """
 
@@ -135,11 +148,13 @@ class Shadow(Shown):
             f"{self.whole.name or 'shadow'} onto {', '.join(self.model.variables)}: {part}"
             f"{len(self.facets)} facets, {kind}, {self.programs} linear programs"
         )
-        rows = tuple((one.constraint, one.rule, _stops(one.multipliers)) for one in self.facets)
+        rows = tuple((one.constraint, one.rule, _stops(one.proof)) for one in self.facets)
         return Table(title, ("facet", "rule", "what stops it there"), rows, self.notes)
 
 
-def _stops(multipliers: Multipliers) -> str:
-    shown = ", ".join(f"{short(value)} {name}" for name, value in multipliers[:SHOWN])
-    more = len(multipliers) - SHOWN
+def _stops(proof: Proof | None) -> str:
+    if proof is None:
+        return "not proved yet"
+    shown = ", ".join(f"{short(value)} {name}" for name, value in proof.named(SHOWN))
+    more = proof.count - SHOWN
     return f"{shown} and {more} more" if more > 0 else shown

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from fractions import Fraction
+from math import atan2
 
 from polywalk.bigmodel import BigModel
 from polywalk.exact import exact as number
@@ -13,8 +14,9 @@ from polywalk.narrowing.best import costs
 from polywalk.narrowing.merging import merged
 from polywalk.narrowing.outline import Edge, Outline
 from polywalk.narrowing.program import Program
+from polywalk.narrowing.proof import Proof
 from polywalk.narrowing.results import Shadow
-from polywalk.narrowing.support import EmptyModelError, ExactReach, FloatReach, InexactError, Multipliers
+from polywalk.narrowing.support import EmptyModelError, ExactReach, FloatReach, InexactError
 from polywalk.narrowing.tolerances import TOLERANCES
 from polywalk.narrowing.widening import OBJECTIVE, Widened, widened
 
@@ -82,7 +84,7 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
     try:
         found.search()
     except EmptyModelError as empty:
-        return _empty(wide, asks.runs, touch, empty.multipliers)
+        return _empty(wide, asks.runs, touch, empty.proof)
     except KeyboardInterrupt:
         if not found.generators:
             raise
@@ -92,18 +94,21 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
 
 
 def _complete(found: Outline) -> Iterable[building.Row]:
-    edges = merged(found) if found.touch else found.edges
+    edges = sorted(merged(found) if found.touch else found.edges, key=_turn)
     return [building.row_of(edge, not found.touch) for edge in (*edges, *found.equalities)]
+
+
+def _turn(edge: Edge) -> tuple[float, ...]:
+    """Round the outline for two variables; whatever order the search had, the same for any other number."""
+    size = max(map(abs, edge.direction))
+    row = tuple(value / size for value in edge.direction)
+    return (atan2(row[1], row[0]),) if len(row) == 2 else row
 
 
 def _partial(found: Outline) -> Iterable[building.Row]:
     """The facets of the hull so far, proved or not."""
-    proved = {edge.direction: edge for edge in found.edges}
-    for direction, limit, is_equality in found.faces():
-        edge = proved.get(direction)
-        if edge is None or edge.limit != limit:
-            edge = Edge(direction, limit, (), () if is_equality else None)
-        yield building.row_of(edge, not found.touch)
+    proved = {(edge.direction, edge.limit): edge for edge in found.edges}
+    return [building.row_of(proved.get((face.direction, face.limit), face), not found.touch) for face in found.faces()]
 
 
 def _shadow(wide: Widened, rows: list[building.Row], runs: int, touch: float, complete: bool) -> Shadow:
@@ -138,9 +143,9 @@ def _objective(big: BigModel, keep: tuple[int, ...]) -> Objective | None:
     return Objective(big.goal, tuple(number(cost[j]) for j in keep), number(big.constant))
 
 
-def _empty(wide: Widened, runs: int, touch: float, multipliers: Multipliers) -> Shadow:
+def _empty(wide: Widened, runs: int, touch: float, proof: Proof | None) -> Shadow:
     """The shadow of a model that allows nothing: one constraint that no plan keeps."""
     nothing = Constraint("empty region", (Fraction(0),) * len(wide.keep), "<=", Fraction(-1))
-    told = _shadow(wide, [building.Row(nothing, multipliers)], runs, touch, True)
+    told = _shadow(wide, [building.Row(nothing, proof)], runs, touch, True)
     said = "the model allows no plan at all; conflict(big) shows which constraints contradict each other"
     return Shadow(told.model, told.facets, told.tolerance, told.whole, told.held, runs, False, (*told.notes, said))

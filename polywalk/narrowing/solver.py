@@ -12,17 +12,22 @@ from __future__ import annotations
 import os
 from collections.abc import Sequence
 from threading import Event, Thread
+from time import monotonic
 from typing import Any, Literal
 
 import numpy as np
 
 from polywalk.bigmodel import BigModel
 from polywalk.errors import SolverError
+from polywalk.narrowing.tolerances import TOLERANCES
 
 Status = Literal["optimal", "infeasible", "unbounded", "unclear"]
 
 DIRECT = 2_000
-"""Nonzeros up to which HiGHS runs in this thread: it is done before anyone could press Ctrl-C."""
+"""Nonzeros up to which a first run is short."""
+
+SHORT = 0.1
+"""Seconds: after a run shorter than this the next one stays in this thread, since Ctrl-C can wait for it."""
 
 PATIENCE = 0.7
 """Seconds an interrupted HiGHS may take to stop before it is left alone: Ctrl-C answers within a second."""
@@ -57,6 +62,8 @@ def quiet_solver() -> Any:
             os.dup2(kept, 1)
             os.close(kept)
     found.setOptionValue("output_flag", False)
+    for name in ("primal_feasibility_tolerance", "dual_feasibility_tolerance"):
+        found.setOptionValue(name, TOLERANCES.solver)
     return found
 
 
@@ -80,6 +87,7 @@ class Solver:
 
     def __init__(self, big: BigModel) -> None:
         self.big, self.runs = big, 0
+        self._lasts = 0.0 if big.nonzeros <= DIRECT else SHORT
         self._module = highspy()
         self._solver = quiet_solver()
         self._load()
@@ -116,10 +124,12 @@ class Solver:
             Within a second after Ctrl-C; the solver must not be used again.
         """
         self.runs += 1
-        if self.big.nonzeros <= DIRECT:
+        begun = monotonic()
+        if self._lasts < SHORT:
             self._solver.run()
         else:
             self._run_apart()
+        self._lasts = monotonic() - begun
         status, names = self._solver.getModelStatus(), self._module.HighsModelStatus
         self._solver.setOptionValue("simplex_strategy", 4)  # the first basis is there: primal from now on
         told: dict[Any, Status] = {

@@ -18,10 +18,9 @@ from polywalk.model import Model
 from polywalk.narrowing.certify import Basis, Limit, Target, Whole, holds
 from polywalk.narrowing.hull import Integers, smallest, whole
 from polywalk.narrowing.program import Program, cone_of
+from polywalk.narrowing.proof import Exact, Proof, Rounded
 from polywalk.narrowing.solver import Solver
 from polywalk.narrowing.tolerances import TOLERANCES, snapped
-
-Multipliers = tuple[tuple[str, Fraction], ...]
 
 
 @dataclass(frozen=True)
@@ -34,21 +33,21 @@ class Reach:
         A point (positive first entry) where the limit is attained, or a ray (0 first) on which there is none.
     limit : Fraction or None
         The greatest value of direction . x; None along a ray.
-    multipliers : tuple of (str, Fraction)
-        By constraint; they add up to direction . x <= limit.
+    proof : Proof or None
+        The multipliers that add up to direction . x <= limit.
     """
 
     generator: Integers
     limit: Fraction | None = None
-    multipliers: Multipliers = ()
+    proof: Proof | None = None
 
 
 class EmptyModelError(Exception):
-    """The model allows no plan; the multipliers of a proof, where there is one."""
+    """The model allows no plan; with the proof, where there is one."""
 
-    def __init__(self, multipliers: Multipliers = ()) -> None:
+    def __init__(self, proof: Proof | None = None) -> None:
         super().__init__()
-        self.multipliers = multipliers
+        self.proof = proof
 
 
 class InexactError(Exception):
@@ -117,7 +116,7 @@ class ExactReach(_Asked):
         generator = self._point(plan)
         if limit.value != value_of(direction, generator):
             return None
-        return Reach(generator, limit.value, limit.multipliers)
+        return Reach(generator, limit.value, Exact(limit.multipliers))
 
     def _point(self, plan: Whole) -> Integers:
         return whole([Fraction(plan.common), *(Fraction(plan.values[j]) for j in self.program.keep)])
@@ -155,14 +154,15 @@ class ExactReach(_Asked):
         way = {model.variables[j]: value for j, value in zip(keep, direction, strict=True)}
         best = optimum(model.with_objective(way, "max"))
         if best.infeasibility is not None:
-            raise EmptyModelError(tuple(best.infeasibility.multipliers.items()))
+            raise EmptyModelError(Exact(tuple(best.infeasibility.multipliers.items())))
         if best.ray is not None:
             return Reach((0, *whole([best.ray.direction[j] for j in keep])))
         point, multipliers = best.point, best.multipliers
         assert point is not None
         assert multipliers is not None
         generator = whole([Fraction(1), *(point[j] for j in keep)])
-        return Reach(generator, best.value, tuple((name, value) for name, value in multipliers.items() if value))
+        used = tuple((name, value) for name, value in multipliers.items() if value)
+        return Reach(generator, best.value, Exact(used))
 
 
 def _read(program: Program, solver: Solver, target: Target) -> tuple[Whole | None, Limit | None]:
@@ -200,7 +200,7 @@ class FloatReach(_Asked):
             return Reach((0, *whole([snapped(value) for value in ray])))
         generator = whole([Fraction(1), *map(snapped, self._kept(self.solver))])
         size = max(map(abs, direction)) or 1
-        return Reach(generator, snapped(self.solver.value) * size, self._multipliers(direction))
+        return Reach(generator, snapped(self.solver.value) * size, self._proof(size))
 
     def _run(self, solver: Solver) -> str:
         status = solver.run()
@@ -219,10 +219,5 @@ class FloatReach(_Asked):
         point = solver.point()
         return [float(point[j]) for j in self.program.keep]
 
-    def _multipliers(self, direction: Integers) -> Multipliers:
-        size, program = max(map(abs, direction)) or 1, self.program
-        named = []
-        for values, name in zip(self.solver.duals(), (program.row_name, program.column_name), strict=True):
-            for place in np.flatnonzero(np.abs(values) > TOLERANCES.zero):
-                named.append((name(int(place), values[place]), snapped(float(values[place])) * size))
-        return tuple(named)
+    def _proof(self, size: int) -> Rounded:
+        return Rounded(self.program, *self.solver.duals(), Fraction(size))

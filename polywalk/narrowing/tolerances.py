@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from fractions import Fraction
+from math import floor
 
 
 @dataclass(frozen=True)
@@ -20,10 +21,13 @@ class Tolerances:
         tolerance; it keeps every zero and pivots in Python, about a second at this size.
     touch : float
         A facet of a float shadow counts as proved where the model reaches no further beyond it than this share of the
-        shadow's size. HiGHS itself stops at 1e-7 (``primal_feasibility_tolerance``, ``dual_feasibility_tolerance``).
+        shadow's size: a little more than ``solver``, since a point is off by a few of these.
+    solver : float
+        HiGHS's ``primal_feasibility_tolerance`` and ``dual_feasibility_tolerance``. Its default of 1e-7 hides corners
+        that stand out by less (Goldfarb's cube of 7 variables has such); it accepts nothing below 1e-10.
     snap : float
-        How far, relative to its size (absolute below 1), a solver's number may be moved to a simple fraction: a
-        hundred times less than HiGHS's feasibility tolerance, so that a snapped point is as feasible as HiGHS's own.
+        How far, relative to its size (absolute below 1), a solver's number may be moved to a simple fraction: as far
+        as HiGHS may be off itself.
     simple : int
         The largest denominator of a simple fraction.
     lucky : float
@@ -38,9 +42,10 @@ class Tolerances:
         A multiplier below this share of the largest one is rounding, not an answer.
     """
 
-    nonzeros: int = 12_000
+    nonzeros: int = 8_000
     cells: int = 40_000
-    touch: float = 1e-7
+    touch: float = 2e-9
+    solver: float = 1e-9
     snap: float = 1e-9
     simple: int = 100_000
     lucky: float = 1e-3
@@ -73,17 +78,15 @@ def simple(value: float) -> Fraction | None:
     A fraction p/q counts as meant where it is closer than chance: numbers come within ``lucky``/q^2 of a fraction of
     denominator q about that rarely (continued fractions).
     """
-    room = TOLERANCES.snap * max(1.0, abs(value))
-    given = Fraction(value)
-    up, down = given.numerator, given.denominator
+    room, rest = TOLERANCES.snap * max(1.0, abs(value)), value
     top, above, now, before = 1, 0, 0, 1
-    while down:
-        part = up // down
-        up, down = down, up % down
+    while now <= TOLERANCES.simple:
+        part = floor(rest)
         top, above, now, before = part * top + above, top, part * now + before, now
-        if now > TOLERANCES.simple:
-            break
-        error = abs(float(given - Fraction(top, now)))
+        error = abs(value - top / now)
         if error <= room and error * now * now <= TOLERANCES.lucky:
-            return Fraction(top, now)
+            return Fraction(top, now) if now <= TOLERANCES.simple else None
+        if rest == part:
+            return None
+        rest = 1 / (rest - part)
     return None
