@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass, field
+from math import isnan
 
 from polywalk.errors import FileError
 from polywalk.exact import exact
@@ -27,8 +28,8 @@ NO_BOUND = 1e20
 class Scan:
     """What the file holds: names by section, and what HiGHS will alter.
 
-    ``altered`` maps what happens to the places it happens at, as text; ``spaced`` is whether names with spaces were met,
-    which only fixed format can hold.
+    ``altered`` maps what happens to the places it happens at, as text; ``spaced`` is whether names with spaces,
+    which only fixed format can hold, were met.
     """
 
     path: Source
@@ -64,7 +65,7 @@ class Scan:
             value = float(plain)
         except ValueError:
             raise self.error(f"expected a number for {place}, got {text!r}") from None
-        if value != value:
+        if isnan(value):
             raise self.error(f"expected a number for {place}, got {text!r}")
         if abs(value) == float("inf"):
             if "inf" not in plain.lower():

@@ -93,7 +93,7 @@ def _apart(big: BigModel, apart: set[int]) -> BigModel:
 
 def _lines(big: BigModel) -> Iterator[str]:
     rows, columns = _safe(big.rows, "r"), _safe(big.variables, "x")
-    aim = _free_name("objective", rows)
+    aim = _free_name("objective", set(rows))
     yield from _remarks(big, rows, columns)
     yield f"NAME {_plain(big.name, 'model')}"
     if big.goal == "max":
@@ -218,10 +218,10 @@ def _fits(name: str) -> bool:
     return False
 
 
-def _free_name(name: str, taken: Iterable[str]) -> str:
+def _free_name(name: str, taken: set[str]) -> str:
     """The name, or with a number behind it where it is taken or does not fit."""
-    known, number_behind, found = set(taken), 1, name
-    while found in known or not _fits(found):
+    number_behind, found = 1, name
+    while found in taken or not _fits(found):
         number_behind += 1
         found = f"{name.lstrip(chr(42) + '$' + chr(39) + chr(34))}_n{number_behind}"
     return found
