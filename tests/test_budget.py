@@ -1,7 +1,8 @@
 """The child process with a budget: results come back, and time, memory and trouble end with a message."""
 
-import subprocess
 import time
+from contextlib import suppress
+from pathlib import Path
 from random import Random
 from threading import Thread
 
@@ -42,10 +43,14 @@ def test_trouble_in_the_child_is_told():
 
 
 def family(job):
-    """The child and its own children, as the system lists those that still run."""
-    command = ["pgrep", "--runstates", "R,S,D", "-g", str(job._child.pid)]
-    listed = subprocess.run(command, capture_output=True, check=False, text=True)
-    return listed.stdout.split()
+    """Which processes of the child's session still run, as Linux lists them."""
+    found = []
+    for path in Path("/proc").glob("[0-9]*/stat"):
+        with suppress(OSError):
+            state, _, group = path.read_text().rpartition(")")[2].split()[:3]
+            if int(group) == job._child.pid and state != "Z":
+                found.append(path)
+    return found
 
 
 def test_a_job_goes_on_beside_and_is_stopped_with_its_own_children():

@@ -1,21 +1,34 @@
-"""The widget: the picture beside its vertices and walks, wired to one state."""
+"""The widget: the picture beside its panels, wired to one state."""
 
 from __future__ import annotations
 
 from base64 import b64encode
+from collections.abc import Iterator
 from dataclasses import replace
 from html import escape
 from typing import Any
 
 import ipywidgets as widgets
 
-from polywalk.drawing import figure, scene
+from polywalk.drawing import scene
+from polywalk.drawing.interactive import painted
 from polywalk.drawing.static import rendered
 from polywalk.drawing.theme import THEMES
 from polywalk.explorer import texts
-from polywalk.explorer.panels import Message, VertexPanel, WalkPanel
+from polywalk.explorer.axesbar import AxesBar
+from polywalk.explorer.constraintpanel import ConstraintPanel
+from polywalk.explorer.constraintpanel import table as constraint_table
+from polywalk.explorer.findingpanel import FindingPanel
+from polywalk.explorer.message import Message
+from polywalk.explorer.modelbar import ModelBar
+from polywalk.explorer.resting import Rest
+from polywalk.explorer.settling import is_slow
+from polywalk.explorer.shadows import in_region
 from polywalk.explorer.state import State
+from polywalk.explorer.tabs import tabbed
+from polywalk.explorer.vertexpanel import VertexPanel
 from polywalk.explorer.view import FigureView
+from polywalk.explorer.walkpanel import WalkPanel
 from polywalk.model import Model
 
 STEPS = {"ArrowLeft": -1, "ArrowRight": +1}
@@ -33,7 +46,7 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
     ----------
     model : Model
     **state : optional
-        Start values of the state: ``rules``, ``start``, ``vertex``, ``step``, ``axes``.
+        Start values of the state's traits: ``rules``, ``start``, ``vertex``, ``step``, ``axes``, ...
 
     See Also
     --------
@@ -41,36 +54,76 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
     """
 
     def __init__(self, model: Model, **state: Any) -> None:
+        self._open = False
         self.state = State(model, **state)
         self.message = Message()
         self.verdict = widgets.HTML()
+        self.rest = Rest(self.message.watch(self._settled))
         guard = self.message.guard
         handlers = {"pick": self._picked, "key": self._pressed, "camera": self._turned, "theme": self._lit}
         self.picture = FigureView(handlers={kind: guard(handler) for kind, handler in handlers.items()})
-        self.vertices = VertexPanel(self.state, self.message)
-        self.walk = WalkPanel(self.state, self.message)
+        self._drawn: Any = None
+        self._reported: Any = None
+        if not is_slow(model):
+            self.state.settle()
+        given = self.state, self.message
+        self.bar, self.axes, self.vertices = ModelBar(*given), AxesBar(*given), VertexPanel(*given)
+        self.constraints, self.findings, self.walk = ConstraintPanel(*given), FindingPanel(*given), WalkPanel(*given)
         super().__init__(self._arranged())
         self.add_class("polywalk")
-        self.state.observe(self.message.watch(lambda _: self.show()), "picture")
-        self.state.observe(self.message.watch(lambda change: self._aim(change["new"])), "camera")
+        self._watching = {
+            "version": self.message.watch(lambda _: self._changed()),
+            "camera": self.message.watch(lambda change: self._aim(change["new"])),
+        }
+        for name, watch in self._watching.items():
+            self.state.observe(watch, name)
+        self._open = True
         self.show()
 
     def _arranged(self) -> list[widgets.Widget]:
         help_line = widgets.HTML(f"<p>{escape(HELP)}</p>")
-        seen = _side_by_side([self.picture, help_line], [self.walk.box])
-        chosen = _side_by_side([self.vertices.list], [self.vertices.card])
-        return [self.verdict, self.message, seen, chosen]
+        panels = {"Constraints": self.constraints, "Vertices": self.vertices, "Findings": self.findings}
+        listed = {title: panel.box for title, panel in panels.items()} | {"Walk": self.walk.box}
+        self.tabs, right = tabbed("panels", listed)
+        left = [self.picture, self.axes.box, help_line, self.vertices.card]
+        return [self.verdict, self.bar.box, self.message, _side_by_side(left, [right])]
 
     def show(self) -> None:
         """Draw the state: the verdict and the picture."""
         state = self.state
-        self.verdict.value = texts.verdict(state.region)
+        self.verdict.value = texts.verdict(state)
+        found = "" if state.review is None else f" ({len(state.review.findings)}{', stale' if state.stale else ''})"
+        self.tabs.titles = ["Constraints", "Vertices", f"Findings{found}", "Walk"]
+        if state.picture != self._drawn:
+            self._draw()
+
+    def _draw(self) -> None:
+        state = self.state
+        self._drawn = state.picture
         self.picture.label = f"{state.model.name or 'feasible region'}. {HELP}"
         axes = state.view.axes or state.model.variables
-        self.picture.show(figure(state.region, state.view), revision=" | ".join(axes), camera=state.camera)
+        if state.region is None:
+            self.picture.say("The vertices of this model are not listed yet: see Findings.", dark=state.dark)
+            return
+        drawn = scene(state.region, state.view)
+        if drawn.solid and state.region.status != "empty":
+            state.eye = drawn.camera  # or every step would look for the best one anew
+        made = painted(drawn, THEMES[state.view.mode])
+        self.picture.show(made, revision=" | ".join(axes), camera=state.camera)
+
+    def _changed(self) -> None:
+        self.show()
+        state = self.state
+        stops = state.settled.stops if state.settled else None
+        other = stops is not None and (stops.kind, stops.name) != state.number
+        if state.region is not None and not is_slow(state.model) and (state.stale or other):
+            self.rest.wait()
+
+    def _settled(self) -> None:
+        self.state.settle()
 
     def _picked(self, message: dict[str, Any]) -> None:
-        self.state.vertex = message["vertex"]
+        self.state.vertex = in_region(self.state, message["vertex"])
 
     def _pressed(self, message: dict[str, Any]) -> None:
         key = message["key"]
@@ -89,11 +142,26 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         self.state.dark = message["dark"]
 
     def _aim(self, camera: dict[str, Any] | None) -> None:
-        if camera is not None and camera != getattr(self, "_reported", None):
+        if camera is not None and camera != self._reported:
             self.picture.aim(camera)
 
+    def close(self) -> None:
+        """Close every widget of the explorer and end whatever it has running."""
+        if not self._open:  # ipywidgets closes once more when the object goes
+            return
+        self._open = False
+        self.rest.cancel()
+        for panel in (self.bar, self.axes, self.vertices, self.constraints, self.findings, self.walk):
+            panel.close()
+        for name, watch in self._watching.items():
+            self.state.unobserve(watch, name)
+        for widget in list(_family(self)):
+            if widget is not self:
+                widget.close()
+        super().close()
+
     def _repr_mimebundle_(self, **kwargs: Any) -> dict[str, Any]:
-        """The widget, and for readers without widgets the static picture with the vertices."""
+        """The widget, and for readers without widgets the static picture with the tables."""
         shown = super()._repr_mimebundle_(**kwargs)
         bundle: dict[str, Any] = shown[0] if isinstance(shown, tuple) else shown
         return {**bundle, "text/plain": str(self), "text/html": self._still()}
@@ -103,29 +171,45 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
 
     def _still(self) -> str:
         state = self.state
-        return f"{texts.verdict(state.region)}{still(state)}{state.region._repr_html_()}"
+        parts = [texts.verdict(state), still(state), constraint_table(state)._repr_html_()]
+        parts += [state.region._repr_html_()] if state.region else []
+        return "".join([*parts, state.review._repr_html_() if state.review else ""])
 
 
 def still(state: State) -> str:
     """The static picture, always light, as an image element that needs no other file."""
+    if state.region is None:
+        return ""
     drawn = rendered(scene(state.region, replace(state.view, mode="light")), THEMES["light"], "svg", outlines=False)
     source = f"data:image/svg+xml;base64,{b64encode(drawn).decode()}"
     return f'<img alt="picture of the region" style="max-width: 100%" src="{source}">'
 
 
+def _family(widget: widgets.Widget) -> Iterator[widgets.Widget]:
+    """A widget, its layout and style, and those of everything in it."""
+    yield widget
+    for part in ("layout", "style"):
+        if isinstance(getattr(widget, part, None), widgets.Widget):
+            yield getattr(widget, part)
+    for child in getattr(widget, "children", ()):
+        yield from _family(child)
+
+
 def explore(model: Model, **state: Any) -> Explorer:
-    """Explore a model in a notebook: its region, its vertices, and the walks of pivot rules.
+    """Explore a model in a notebook: region, constraints, findings, walks, and what changes when a number does.
 
     Parameters
     ----------
     model : Model
     **state : optional
-        ``rules`` (tuple of str; the first is stepped through), ``start``, ``vertex``, ``step``, ``axes``.
+        ``rules`` (tuple of str; the first is stepped through), ``leaving``, ``start``, ``vertex``, ``step``, ``axes``,
+        ``off``, ``number``: the traits of `polywalk.explorer.traits.Traits`.
 
     Returns
     -------
     Explorer
-        A widget; ``explorer.state`` holds what it shows.
+        A widget; ``explorer.state`` holds what it shows, and ``explorer.state.model`` the edited model. ``close()``
+        closes it with everything in it.
 
     Raises
     ------
@@ -140,6 +224,9 @@ def explore(model: Model, **state: Any) -> Explorer:
     >>> explorer.state.vertex = 3
     >>> explorer.vertices.rows.selected
     3
+    >>> explorer.state.set_number("3/2", "right-hand side", "x upper")
+    >>> explorer.state.region.value
+    Fraction(7, 2)
     """
     return Explorer(model, **state)
 

@@ -38,7 +38,7 @@ class Rows(anywidget.AnyWidget):
     ([['a', '4'], ['b', '5']], [1], 1)
     """
 
-    _esm = Path(__file__).parent / "rows.js"
+    _esm = (Path(__file__).parent / "rows.js").read_text(encoding="utf-8")
     label = traitlets.Unicode("").tag(sync=True)
     columns = traitlets.List(traitlets.Unicode()).tag(sync=True)
     rows = traitlets.List(traitlets.List(traitlets.Unicode())).tag(sync=True)

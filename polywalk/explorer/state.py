@@ -2,48 +2,32 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+from contextlib import contextmanager
 from typing import Any
 
-from traitlets import Any as AnyTrait
-from traitlets import Bool, Dict, HasTraits, Instance, Int, Tuple, Unicode, observe, validate
+from traitlets import observe, validate
 
 from polywalk.drawing import View
 from polywalk.drawing.view import Mode
-from polywalk.errors import DrawingError, UnknownName, WalkError, unknown
+from polywalk.errors import PolywalkError, unknown
+from polywalk.exact import Row, exact
+from polywalk.explorer import checking
+from polywalk.explorer.editing import Draft, History
+from polywalk.explorer.settling import Settled, is_slow, settle
+from polywalk.explorer.shadows import in_picture
+from polywalk.explorer.traits import SETTABLE, Traits
 from polywalk.model import Model
 from polywalk.region import Region, region
+from polywalk.reviewing import Finding
+from polywalk.reviewing.stops import Kind
 from polywalk.walks import Walk, walk
-from polywalk.walks.rules import ENTERING
-
-LARGEST_PICTURE = 3
-SETTABLE = ("rules", "start", "axes", "step", "vertex", "camera", "dark")
-"""In this order, for another rule begins its walk anew and a step moves the selection along."""
-
-RULES = tuple(rule.name for rule in ENTERING)
 
 
-class State(HasTraits):
+class State(Traits):
     """The explorer's state. A value that does not fit raises an error that says why, and changes nothing.
 
-    Traits
-    ------
-    model : Model
-    vertex : int or None
-        Index of the selected vertex in ``region.vertices``.
-    rules : tuple of str
-        The pivot rules that are walked; the first is the one that is stepped through.
-    start : None or whatever ``walk`` takes as its start
-    step : int or None
-        The first walk is shown up to this pivot (0: its start); None shows it whole.
-    axes : tuple of str or None
-        The variables that are drawn; None draws all of a model with at most three.
-    camera : dict or None
-        As in plotly's ``layout.scene.camera``; follows what the user does in the page.
-    dark : bool
-        Whether the page is dark.
-    region, walks, refusal, picture : read only
-        The model's region, its walks, why there is no walk ("" where there is), and the pair (region, view) that is
-        drawn: one change of it for each change of the state, when all else has settled.
+    Its traits are those of `Traits`.
 
     Examples
     --------
@@ -54,84 +38,44 @@ class State(HasTraits):
     >>> state.go(+1)
     >>> state.step, state.walks[0].pivots[0].entering
     (1, 'y')
+    >>> state.set_number("7/3", "right-hand side", "x upper")
+    >>> state.region.value, state.stale
+    (Fraction(13, 3), True)
+    >>> state.undo()
+    >>> state.model == square
+    True
     """
-
-    model = Instance(Model)
-    vertex = Int(None, allow_none=True)
-    rules = Tuple(("dantzig",))
-    start = AnyTrait(None, allow_none=True)
-    step = Int(None, allow_none=True)
-    axes = Tuple(default_value=None, allow_none=True)
-    camera = Dict(default_value=None, allow_none=True)
-    dark = Bool(False)
-    region = Instance(Region, read_only=True)
-    walks = Tuple(read_only=True)
-    refusal = Unicode("", read_only=True)
-    picture = Tuple(read_only=True)
 
     def __init__(self, model: Model, **traits: Any) -> None:
         super().__init__()
         for name in traits:
             if name not in SETTABLE:
                 raise unknown("trait", name, SETTABLE, "the explorer")
-        self.model = model
+        self._depth = 0
+        self._taking = False
+        self._kept: Finding | None = None
+        self.eye: tuple[float, float, float] | None = None
+        self.history = History(Draft(checking.model(model)))
+        self._take(self.history.now, self._listed(model))
         for name in SETTABLE:
             if name in traits:
                 setattr(self, name, traits[name])
-
-    @validate("model")
-    def _enumerated(self, proposal: Any) -> Model:
-        self._next_region = region(proposal["value"])
-        model: Model = proposal["value"]
-        return model
-
-    @validate("vertex")
-    def _there(self, proposal: Any) -> int | None:
-        index: int | None = proposal["value"]
-        count = len(self.region.vertices)
-        if index is not None and not 0 <= index < count:
-            known = f"0 to {count - 1}" if count else "but the region has none"
-            raise UnknownName(f"expected the index of a vertex, {known}, got {index}.", index)
-        return index
-
-    @validate("rules")
-    def _known(self, proposal: Any) -> tuple[str, ...]:
-        if not proposal["value"]:
-            raise WalkError("expected at least one pivot rule, got none.", ())
-        for rule in proposal["value"]:
-            if rule not in RULES:
-                raise unknown("pivot rule", rule, RULES, "the explorer")
-        return tuple(proposal["value"])
-
-    @validate("start")
-    def _startable(self, proposal: Any) -> Any:
-        start = proposal["value"]
-        if start is not None:
-            walk(self.model, rule=self.rules[0], start=start)
-        return start
-
-    @validate("step")
-    def _within(self, proposal: Any) -> int | None:
-        step: int | None = proposal["value"]
-        if step is not None and not 0 <= step <= self.last:
-            raise WalkError(f"expected a step from 0 to {self.last}, got {step}.", step)
-        return step
-
-    @validate("axes")
-    def _drawable(self, proposal: Any) -> tuple[str, ...] | None:
-        axes: tuple[str, ...] | None = proposal["value"]
-        if axes is None:
-            return _first_axes(self.model)
-        if not 1 <= len(set(axes)) == len(axes) <= LARGEST_PICTURE:
-            raise DrawingError(f"expected one to three different variables as axes, got {axes!r}.", axes)
-        for name in axes:
-            self.model.index(name)
-        return axes
 
     @property
     def last(self) -> int:
         """The number of pivots of the walk that is stepped through."""
         return len(self.walks[0].pivots) if self.walks else 0
+
+    @property
+    def view(self) -> View:
+        """What is drawn of the region."""
+        view: View = self.picture[1]
+        return view
+
+    @property
+    def point(self) -> Row | None:
+        """The selected vertex' point."""
+        return None if self.region is None or self.vertex is None else self.region.vertices[self.vertex].point
 
     def go(self, by: int) -> None:
         """Step on (+1) or back (-1) in the first walk; from the whole walk, on is its first pivot."""
@@ -142,66 +86,157 @@ class State(HasTraits):
 
     def choose(self, by: int) -> None:
         """Select the next (+1) or previous (-1) vertex."""
-        count = len(self.region.vertices)
+        count = len(self.region.vertices) if self.region else 0
         if count:
             self.vertex = 0 if self.vertex is None else (self.vertex + by) % count
 
-    @property
-    def view(self) -> View:
-        """What is drawn of the region."""
-        view: View = self.picture[1]
-        return view
+    def set_number(self, value: object, kind: Kind | None = None, name: str = "", drag: bool = False) -> None:
+        """Change a right-hand side or a cost, by default the chosen one; ``drag``: one edit with those before it."""
+        kind, name = (kind, name) if kind is not None else self.number
+        draft = self.history.now.with_number(kind, name, exact(value))
+        self._edit(draft, (kind, name) if drag else None)
 
-    @observe("model")
-    def _replaced(self, change: Any) -> None:
-        with self.hold_trait_notifications():
-            kept = None if self.vertex is None else self.region.vertices[self.vertex].point
-            self.set_trait("region", self._next_region)
-            self.vertex = self._at(kept)
+    def switch(self, name: str, on: bool) -> None:
+        """Switch a constraint off or on again."""
+        others = tuple(other for other in self.off if other != name)
+        self.off = others if on else (*others, name)
+
+    def undo(self) -> None:
+        """Go back before the last edit of the model."""
+        self._move(-1)
+
+    def redo(self) -> None:
+        """Take back the last undo."""
+        self._move(+1)
+
+    def reset(self) -> None:
+        """Go back to the model as it was given; this can be undone, too."""
+        self._edit(self.history.first)
+
+    def settle(self, found: Settled | None = None, seen: Region | None = None) -> None:
+        """Review the model as it is now, and end ``stale``; or take what was worked out elsewhere."""
+        if seen is not None:
+            with self._as_one():
+                self.set_trait("region", seen)
+        if self.region is None:
+            return
+        kept = self.review.findings[self.finding] if self.review and self.finding is not None else self._kept
+        found = settle(self.region, self.whole, self.number) if found is None else found
+        with self._as_one():
+            self.finding = None
+            self.set_trait("settled", found)
+            self.set_trait("review", found.review)
+            self.set_trait("stale", False)
+            self.finding = found.like(kept)
+
+    # edits of the model
+
+    def _listed(self, model: Model) -> Region | None:
+        return None if is_slow(model) else region(model)
+
+    def _edit(self, draft: Draft, drag: object = None) -> None:
+        ready = self._listed(draft.model)
+        self.history.put(draft, drag)
+        self._take(draft, ready)
+
+    def _move(self, by: int) -> None:
+        self.history.move(by)
+        self._take(self.history.now, self._listed(self.history.now.model))
+
+    def _take(self, draft: Draft, seen: Region | None) -> None:
+        """Show a draft: everything that follows from the model, in one change of the picture."""
+        vertex = None if self.vertex is None or self.region is None else self.region.vertices[self.vertex]
+        with self._as_one():
+            if self.review and self.finding is not None:
+                self._kept = self.review.findings[self.finding]
+            self.finding, self.step, self.vertex = None, None, None
+            self.set_trait("region", seen)
+            self.set_trait("stale", True)
+            self.set_trait("whole", draft.whole)
+            with self._taken():
+                self.model, self.off = draft.model, draft.off
+            self.vertex = checking.again(vertex, seen)
             if self.axes is None or not set(self.axes) <= set(self.model.variables):
-                self.axes = _first_axes(self.model)  # type: ignore[assignment]
+                self.axes = checking.first_axes(self.model)  # type: ignore[assignment]
+            self.number = checking.number_left(self.number, self.whole)
             self._walk()
-        self._draw()
 
-    @observe("rules", "start")
-    def _walk_again(self, change: Any) -> None:
-        with self.hold_trait_notifications():
-            self._walk()
-        self._draw()
+    @contextmanager
+    def _taken(self) -> Iterator[None]:
+        """While model and what is off are set together, they are not edits of their own."""
+        self._taking = True
+        try:
+            yield
+        finally:
+            self._taking = False
 
-    @observe("step")
-    def _follow(self, change: Any) -> None:
-        if self.step is not None and self.walks:
-            self.vertex = self._at(self.walks[0].points[self.step])
-        self._draw()
-
-    @observe("vertex", "axes", "dark")
-    def _look(self, change: Any) -> None:
-        self._draw()
+    @contextmanager
+    def _as_one(self) -> Iterator[None]:
+        """However much changes inside, the picture changes once, at the end."""
+        self._depth += 1
+        try:
+            yield
+        finally:
+            self._depth -= 1
+        if not self._depth:
+            self._draw()
 
     def _walk(self) -> None:
         walks: tuple[Walk, ...] = ()
         refusal = ""
         try:
-            walks = tuple(walk(self.model, rule=rule, start=self.start) for rule in self.rules)
-        except WalkError as error:
+            given = {"leaving": self.leaving, "start": self.start}
+            walks = tuple(walk(self.model, rule=rule, **given) for rule in self.rules)
+        except PolywalkError as error:
             refusal = str(error)
         self.step = None
         self.set_trait("refusal", refusal)
         self.set_trait("walks", walks)
 
     def _draw(self) -> None:
-        whole = self.axes is None or set(self.axes) == set(self.model.variables)
-        vertex = self.vertex if whole else None
         mode: Mode = "dark" if self.dark else "light"
-        view = View(axes=self.axes, vertex=vertex, walks=self.walks, step=self.step, mode=mode)
+        chosen = () if self.finding is None or self.review is None else (self.review.findings[self.finding],)
+        view = View(self.axes, in_picture(self), self.walks, self.step, self.eye, mode, chosen)
         self.set_trait("picture", (self.region, view))
+        self.set_trait("version", self.version + 1)
 
-    def _at(self, point: Any) -> int | None:
-        found = [k for k, vertex in enumerate(self.region.vertices) if vertex.point == point]
-        return found[0] if found else None
+    # what traits take, and what follows from each
 
+    @validate("model", "off")
+    def _an_edit(self, proposal: Any) -> Any:
+        if self._taking:
+            return proposal["value"]
+        of_model = proposal["trait"].name == "model"
+        draft = Draft(proposal["value"]) if of_model else self.history.now.with_off(proposal["value"])
+        self._ready = draft, self._listed(draft.model)
+        return draft.model if of_model else draft.off
 
-def _first_axes(model: Model) -> tuple[str, ...] | None:
-    """The first variables where a model has more than a picture can show."""
-    return None if model.n <= LARGEST_PICTURE else model.variables[:LARGEST_PICTURE]
+    @observe("model", "off")
+    def _edited(self, change: Any) -> None:
+        if not self._taking:
+            draft, seen = self._ready
+            self.history.put(draft)
+            self._take(draft, seen)
+
+    @validate(*checking.CHECKS)
+    def _checked(self, proposal: Any) -> Any:
+        return checking.CHECKS[proposal["trait"].name](proposal["value"], self)
+
+    @observe("rules", "leaving", "start")
+    def _walk_again(self, change: Any) -> None:
+        with self._as_one():
+            self._walk()
+
+    @observe("step")
+    def _follow(self, change: Any) -> None:
+        with self._as_one():
+            if self.step is not None and self.walks and self.region:
+                points = [vertex.point for vertex in self.region.vertices]
+                reached = self.walks[0].points[self.step]
+                self.vertex = points.index(reached) if reached in points else None
+
+    @observe("vertex", "axes", "dark", "finding", "number")
+    def _look(self, change: Any) -> None:
+        with self._as_one():
+            if change["name"] == "axes":
+                self.eye = None

@@ -7,15 +7,19 @@ from fractions import Fraction
 from html import escape
 
 from polywalk.exact import full, short
+from polywalk.explorer.state import State
+from polywalk.linear import optimum
 from polywalk.model import Model
-from polywalk.region import Region, Vertex, vertex_name
-from polywalk.table import Table, cell
+from polywalk.region import Region, vertex_name
+from polywalk.reviewing.codes import SEVERITIES
+from polywalk.table import cell
 
 OUTCOME = {
     "unbounded": "no optimum: the objective improves without end",
     "empty": "no plan satisfies every constraint",
     "no objective": "no objective",
 }
+UNLISTED = OUTCOME | {"infeasible": OUTCOME["empty"]}
 
 
 def number(value: Fraction, unit: str = "") -> str:
@@ -30,10 +34,24 @@ def count(number_of: int, word: str, plural: str = "") -> str:
     return f"{number_of} {word if number_of == 1 else plural or word + 's'}"
 
 
-def verdict(region: Region) -> str:
-    """Status, optimum and the number of vertices in one line."""
-    model = region.model
+def verdict(state: State) -> str:
+    """Status, optimum, number of vertices, and findings by severity, in one line."""
+    model = state.model
     name = f"<b>{escape(model.name)}</b>: " if model.name else ""
+    off = [f"{count(len(state.off), 'constraint')} switched off"] if state.off else []
+    parts = [*(_region(state.region) if state.region else _unlisted(model)), *off]
+    return f'<p class="polywalk-verdict" role="status">{name}{"; ".join(parts)}. {findings(state)}</p>'
+
+
+def _unlisted(model: Model) -> list[str]:
+    """What is known of a large model before its vertices are listed."""
+    found = optimum(model)
+    value = f"optimum {number(found.value)}" if found.value is not None else UNLISTED[found.outcome]
+    size = f"{count(model.n, 'variable')}, {count(len(model.constraints), 'constraint')}"
+    return [value, f"{size}; vertices not listed yet"]
+
+
+def _region(region: Region) -> list[str]:
     parts = (
         ["empty region"] if region.status == "empty" else [f"{region.status} region of dimension {region.dimension}"]
     )
@@ -48,63 +66,31 @@ def verdict(region: Region) -> str:
         crowded = sum(vertex.degenerate for vertex in region.vertices)
         parts += [f"{crowded} of them degenerate"] if crowded else []
         parts += [count(len(region.rays), "ray")] if region.rays else []
-    return f'<p class="polywalk-verdict">{name}{"; ".join(parts)}.</p>'
+    return parts
 
 
-def vertices(region: Region) -> Table:
-    """One row a vertex: its number, point, objective and marks."""
-    best = region.optimal.vertices if region.optimal else ()
-    rows = []
-    for index, vertex in enumerate(region.vertices):
-        marks = ["optimal"] * (index in best) + ["degenerate"] * vertex.degenerate
-        value = () if vertex.objective is None else (vertex.objective,)
-        rows.append((vertex_name(index), *vertex.point, *value, ", ".join(marks)))
-    objective = () if region.model.objective is None else ("objective",)
-    return Table("vertices", ("vertex", *region.model.variables, *objective, "marks"), tuple(rows))
+def findings(state: State) -> str:
+    """How many findings of each severity; whether they are of an earlier model."""
+    if state.review is None:
+        return '<span class="polywalk-stale">Not reviewed yet.</span>'
+    kinds = [item.severity for item in state.review.findings]
+    counts = [count(kinds.count(kind), kind) for kind in SEVERITIES if kind in kinds]
+    told = f"Findings: {', '.join(counts) if counts else 'none'}."
+    return f'<span class="polywalk-stale">({told} Stale: of the model before.)</span>' if state.stale else told
 
 
-def card(region: Region, index: int | None) -> str:
-    """Everything about one vertex."""
-    if not region.vertices:
-        return "<p>The region has no vertex.</p>"
-    if index is None:
-        return "<h3>Selected vertex</h3><p>None yet: click one in the picture or pick a row of the list.</p>"
-    vertex, model = region.vertices[index], region.model
-    values = [f"{escape(name)} = {number(value, model.unit(name))}" for name, value in _pairs(model, vertex)]
-    parts = [f"<h3>Vertex {vertex_name(index)}</h3><p>{', '.join(values)}</p>"]
-    if vertex.objective is not None:
-        best = region.optimal is not None and index in region.optimal.vertices
-        parts.append(f"<p>objective {number(vertex.objective)}{', the optimum' if best else ''}</p>")
-    if vertex.degenerate:
-        parts.append(f"<p>degenerate: {len(vertex.active)} constraints meet where {model.n} would do</p>")
-    parts.append(_constraints(model, vertex))
-    return "".join(parts)
-
-
-def _pairs(model: Model, vertex: Vertex) -> list[tuple[str, Fraction]]:
-    return list(zip(model.variables, vertex.point, strict=True))
-
-
-def _constraints(model: Model, vertex: Vertex) -> str:
-    """Every constraint with its slack here, active ones first."""
-    rows = sorted(model.constraints, key=lambda row: row.name not in vertex.active)
-    lines = [(escape(row.name), escape(row.text(model.variables)), _slack(row.name, vertex, model)) for row in rows]
-    return grid(("constraint", "rule", "slack"), lines, numbers={2})
-
-
-def _slack(name: str, vertex: Vertex, model: Model) -> str:
-    return "active" if name in vertex.active else number(vertex.slacks[name], model.unit(name))
-
-
-def grid(columns: tuple[str, ...], lines: Sequence[tuple[str, ...]], numbers: set[int]) -> str:
+def grid(columns: tuple[str, ...], lines: Sequence[tuple[str, ...]], numbers: set[int], caption: str = "") -> str:
     """A small table of ready HTML cells."""
 
     def row(tag: str, cells: tuple[str, ...]) -> str:
-        marks = ['class="number"' if k in numbers else "" for k in range(len(cells))]
-        return "".join(f"<{tag} {mark}>{text}</{tag}>" for mark, text in zip(marks, cells, strict=True))
+        scope = ' scope="col"' if tag == "th" else ""
+        marks = [' class="number"' if k in numbers else "" for k in range(len(cells))]
+        return "".join(f"<{tag}{scope}{mark}>{text}</{tag}>" for mark, text in zip(marks, cells, strict=True))
 
     body = "".join(f"<tr>{row('td', line)}</tr>" for line in lines)
-    return f"<table><thead><tr>{row('th', columns)}</tr></thead><tbody>{body}</tbody></table>"
+    told = f"<caption>{caption}</caption>" if caption else ""
+    head = f"<thead><tr>{row('th', columns)}</tr></thead>"
+    return f'<div class="polywalk-wide"><table>{told}{head}<tbody>{body}</tbody></table></div>'
 
 
 def point(values: tuple[Fraction, ...]) -> str:

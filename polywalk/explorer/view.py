@@ -52,8 +52,8 @@ class FigureView(anywidget.AnyWidget):
     [{'kind': 'pick', 'vertex': 2}]
     """
 
-    _esm = HERE / "view.js"
-    _css = HERE / "view.css"
+    _esm = (HERE / "view.js").read_text(encoding="utf-8")  # a path would be watched, and keep every widget alive
+    _css = (HERE / "view.css").read_text(encoding="utf-8")
     figure = traitlets.Dict().tag(sync=True)
     label = traitlets.Unicode("").tag(sync=True)
 
@@ -92,6 +92,13 @@ class FigureView(anywidget.AnyWidget):
         if camera and solid:
             layout["scene"] = {**layout["scene"], "camera": camera}
         self.figure = {"data": figure["data"], "layout": layout}
+
+    def say(self, text: str, dark: bool) -> None:
+        """Show words where there is no picture."""
+        ink, paper = ("#F2F2F0", "#16181D") if dark else ("#16181D", "#FFFFFF")
+        note = {"text": text, "showarrow": False, "xref": "paper", "yref": "paper", "x": 0.5, "y": 0.5}
+        layout = {"annotations": [note], "font": {"color": ink}, "paper_bgcolor": paper, "plot_bgcolor": paper}
+        self.show({"data": [], "layout": layout | {"xaxis": {"visible": False}, "yaxis": {"visible": False}}}, text)
 
     def aim(self, camera: dict[str, Any]) -> None:
         """Turn the scene on every page that shows it; ``camera`` as in plotly's ``layout.scene.camera``."""

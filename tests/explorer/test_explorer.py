@@ -37,7 +37,7 @@ def test_a_pick_in_the_page_selects_row_card_and_picture() -> None:
     before = explorer.picture.figure
     explorer.picture.receive({"kind": "pick", "vertex": 3})
     assert (explorer.state.vertex, explorer.vertices.rows.selected) == (3, 3)
-    assert "Vertex V3" in explorer.vertices.card.value
+    assert "Selected vertex: V3" in explorer.vertices.card.value
     assert explorer.picture.figure != before
 
 
@@ -50,13 +50,20 @@ def test_a_row_selects_the_vertex_and_a_pivot_row_the_step() -> None:
     assert "Pivot 2" in explorer.walk.story.value
 
 
-def test_the_card_tells_point_objective_active_and_slack() -> None:
+def test_the_card_tells_point_objective_active_bases_and_ways_out() -> None:
     explorer = pw.explore(square(), vertex=3)
     card = explorer.vertices.card.value
     assert "x = 1, y = 1" in card
     assert "objective 3, the optimum" in card
+    assert "active: &lt;both&gt;, x upper, y upper" in card
     assert "degenerate: 3 constraints meet where 2 would do" in card
-    assert card.count("active</td>") == 3
+    assert "3 bases, 2 of them optimal" in card
+    first = card[card.index("<td>V1</td>") :].split("</tr>")[0]
+    cells = [part.split("</td>")[0].split(">")[-1] for part in first.split("<td")[1:]]
+    assert cells == ["&lt;both&gt;, x upper", "1, 1", "-1"] or cells[1:] == ["&lt;both&gt;, x upper", "1, 1", "-1"]
+    explorer.state.set_number("7/3", "right-hand side", "<both>")
+    explorer.state.set_number("1/3", "right-hand side", "y upper")
+    assert "y = 1/3 (≈ 0.333333)" in explorer.vertices.card.value
 
 
 def test_names_are_escaped_everywhere() -> None:
@@ -129,7 +136,7 @@ def test_an_error_in_a_callback_is_shown_and_goes_away() -> None:
 
 def test_an_unexpected_error_is_shown_with_its_type(monkeypatch: pytest.MonkeyPatch) -> None:
     explorer = pw.explore(cube())
-    monkeypatch.setattr("polywalk.explorer.explorer.figure", lambda *_: 1 / 0)
+    monkeypatch.setattr("polywalk.explorer.explorer.scene", lambda *_: 1 / 0)
     explorer.picture.receive({"kind": "pick", "vertex": 5})
     assert "ZeroDivisionError" in explorer.message.value
 

@@ -57,13 +57,20 @@ def test_the_view_holds_what_was_chosen() -> None:
         ("axes", ()),
         ("model", "a model"),
         ("start", (5, 5)),
+        ("leaving", "nearest"),
+        ("number", ("right-hand side", "coal")),
+        ("number", ("price", "x")),
+        ("number", ("cost",)),
+        ("off", ("coal",)),
+        ("finding", 99),
+        ("finding", -1),
+        ("camera", "above"),
+        ("dark", "maybe"),
     ],
 )
 def test_a_bad_value_raises_and_changes_nothing(name: str, bad: object) -> None:
     state = State(square(), vertex=1, step=1)
-    before = {
-        key: getattr(state, key) for key in ("model", "vertex", "rules", "step", "axes", "start", "view", "walks")
-    }
+    before = {key: getattr(state, key) for key in state.trait_names()}
     with pytest.raises((pw.PolywalkError, TraitError)):
         setattr(state, name, bad)
     assert {key: getattr(state, key) for key in before} == before
@@ -77,6 +84,8 @@ def test_another_model_keeps_the_vertex_that_is_still_there_and_walks_anew() -> 
     assert state.walks[0].value == pw.exact("13/3")
     assert state.view.walks == state.walks
     state.model = state.model.with_rhs("y upper", "1/2")
+    assert state.region.vertices[state.vertex].point == (0, pw.exact("1/2"))  # moved along with its constraints
+    state.model = state.model.without("y upper")
     assert state.vertex is None
 
 
@@ -93,10 +102,27 @@ def test_more_than_three_variables_are_drawn_on_the_first_three() -> None:
     box = pw.from_algebra(maximize="a + b + c + d", bounds=dict.fromkeys("abcd", (0, 1)))
     state = State(box)
     assert state.axes == ("a", "b", "c")
-    state.vertex = 5
-    assert state.view.vertex is None
     state.axes = ("d", "b")
     assert state.view.axes == ("d", "b")
+    for index, vertex in enumerate(state.region.vertices):
+        state.vertex = index
+        shown = pw.project(state.region, state.axes).vertices[state.view.vertex]
+        assert shown.point == (vertex.point[3], vertex.point[1])
+
+
+def test_a_vertex_inside_the_projection_is_selected_but_not_drawn() -> None:
+    tip = pw.from_algebra(
+        maximize="d",
+        constraints={"tip": "d <= 1 - a - b", "back": "d <= 1 + a + b"},
+        bounds={"a": (-1, 1), "b": (-1, 1), "c": (0, 1), "d": (0, None)},
+    )
+    state = State(tip, axes=("a", "c"))
+    drawn = []
+    for index in range(len(state.region.vertices)):
+        state.vertex = index
+        drawn.append(state.view.vertex)
+    assert None in drawn
+    assert set(drawn) - {None} == set(range(4))
 
 
 def test_a_start_is_a_vertex_and_the_walk_begins_there() -> None:

@@ -1,0 +1,118 @@
+"""The findings as rows with the selected one's proof in words, and the search for the slip that explains a symptom."""
+
+from __future__ import annotations
+
+from html import escape
+from typing import Any
+
+import ipywidgets as widgets
+
+from polywalk.explorer.errands import SOME_MINUTES, Errand, Order
+from polywalk.explorer.forms import Panel, button, heading, text_box
+from polywalk.explorer.rows import Rows
+from polywalk.explorer.settling import PATIENCE, is_slow, list_and_settle
+from polywalk.model import Model
+from polywalk.reviewing import Finding, Suspects, suspects
+from polywalk.table import Table
+
+
+class FindingPanel(Panel):
+    """Findings, their words, the button for a large model, and suspects."""
+
+    def build(self) -> None:
+        guard = self.message.guard
+        self.status, self.words = widgets.HTML(), widgets.HTML()
+        self.rows = Rows(label="findings", on_select=guard(self._picked))
+        said = {"budget": PATIENCE, "task": "listing the vertices and reviewing the model"}
+        said["remedy"] = "fix variables or switch constraints off."
+        self.listing = Errand(self.message, "List the vertices and review", self._large, self._listed, **said)
+        self.all = button(self.message, "Mark none", self._unmarked, "Select no finding")
+        self.allowed = text_box("A plan that should be allowed", "300px", placeholder="4, 4, 4")
+        self.forbidden = text_box("A plan that should not", "300px", placeholder="5, 3, 4")
+        here = "Take the selected vertex as the plan that should not be allowed"
+        self.here = button(self.message, "The selected vertex should not", self._forbid, here)
+        said = {"budget": SOME_MINUTES, "task": "the search for suspects", "remedy": "state more plans."}
+        self.search = Errand(self.message, "Search for suspects", self._asked, self._found, **said)
+        self.suspects = Rows(label="suspects")
+        self.told = widgets.HTML()
+        self.try_it = button(self.message, "Try the selected suspect", self._tried, "Take its model; Undo leads back")
+        self._searched: Suspects | None = None
+        slip = [self.allowed, self.forbidden, self.here, self.search.box, self.suspects, self.told, self.try_it]
+        found = [self.status, self.listing.box, self.rows, self.all, self.words]
+        self.box = widgets.VBox([*found, heading("Which slip would explain it?"), *slip])
+
+    def _picked(self, place: int | None) -> None:
+        if not self._showing:
+            self.state.finding = place
+
+    def _unmarked(self) -> None:
+        self.state.finding = None
+
+    # a large model
+
+    def _large(self) -> Order:
+        state = self.state
+        return list_and_settle, (state.whole, state.model, state.number)
+
+    def _listed(self, result: Any) -> None:
+        seen, settled = result
+        if seen.model == self.state.model:
+            self.state.settle(settled, seen)
+
+    def close(self) -> None:
+        super().close()
+        self.listing.drop()
+        self.search.drop()
+
+    # suspects
+
+    def _forbid(self) -> None:
+        point = self.state.point
+        self.forbidden.value = ", ".join(map(str, point)) if point else ""
+
+    def _asked(self) -> Order:
+        model = self.state.model
+        return suspects, (model, plans(self.allowed.value, model), plans(self.forbidden.value, model))
+
+    def _found(self, found: Suspects) -> None:
+        self._searched = found
+        table = found.table()
+        self.suspects.fill(Table(table.title, table.columns, table.rows), 0 if table.rows else None)
+        self.told.value = f"<p>{escape(table.title)}</p>" + "".join(f"<p>{escape(note)}</p>" for note in table.notes)
+
+    def _tried(self) -> None:
+        if self._searched is not None and self.suspects.selected is not None:
+            self.state.model = self._searched.found[self.suspects.selected].model
+
+    def show(self) -> None:
+        state = self.state
+        listed = () if state.review is None else state.review.findings
+        rows = tuple((item.severity, item.title, item.code) for item in listed)
+        self.rows.fill(Table("findings", ("severity", "finding", "code"), rows), state.finding)
+        self.status.value = self._status()
+        self.listing.box.layout.display = None if is_slow(state.model) else "none"
+        self.all.disabled = state.finding is None
+        self.words.value = "" if state.finding is None else words(listed[state.finding])
+
+    def _status(self) -> str:
+        state = self.state
+        if state.review is None:
+            return '<p class="polywalk-stale">Not reviewed yet.</p>'
+        if state.stale:
+            return (
+                '<p class="polywalk-stale">Stale: these are of the model before; they follow when the input rests.</p>'
+            )
+        return (
+            "<p>Select one to mark its evidence in the picture.</p>" if state.review.findings else "<p>No finding.</p>"
+        )
+
+
+def words(item: Finding) -> str:
+    """A finding in full."""
+    remedy = f"<p><b>Remedy:</b> {escape(item.remedy)}</p>" if item.remedy else ""
+    return f"<h3>{escape(item.title)}</h3><p>{escape(item.explanation)}</p>{remedy}"
+
+
+def plans(text: str, model: Model) -> list[tuple[Any, ...]]:
+    """Plans typed as numbers, several parted by semicolons."""
+    return [model.point(part.split(",")) for part in text.split(";") if part.strip()]
