@@ -15,7 +15,7 @@ PACKAGE = Path(polywalk.__file__).parent
 FLOORS = {
     7: ("__main__", "explorer"),
     6: ("sheets",),
-    5: ("drawing", "sweep"),
+    5: ("drawing", "sweeping"),
     4: ("reviewing", "scenarios"),
     3: ("walks", "narrowing"),
     2: ("region", "linear", "reading"),
@@ -126,6 +126,7 @@ NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region"
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios", "walk"}
 NAMES |= {"before_after", "probe", "review", "suspects"}
+NAMES |= {"from_highs", "from_mps", "from_toml", "sweep", "to_mps", "to_toml"}
 NAMES |= {"cones", "difference", "explain", "sensitivity", "value_function", "versions"}
 
 
