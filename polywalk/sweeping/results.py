@@ -1,0 +1,132 @@
+"""What a sweep hands out: one item a model, in order, and the few groups that thousands of them fall into."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+from polywalk.errors import unknown
+from polywalk.table import Shown, Table
+
+
+@dataclass(frozen=True)
+class Item:
+    """What became of one model.
+
+    Parameters
+    ----------
+    name : str
+    result : object or None
+        None where it failed.
+    error : Exception or None
+    marks : tuple of (str, str), optional
+        What it has in common with others: pairs of a kind ("shape", "error", ...) and a text.
+    """
+
+    name: str
+    result: Any = None
+    error: BaseException | None = None
+    marks: tuple[tuple[str, str], ...] = ()
+
+
+@dataclass(frozen=True)
+class Group:
+    """Models that share a shape, a finding or a failure.
+
+    Parameters
+    ----------
+    kind : str
+        "shape", the severity of a finding, "failed", or "result".
+    what : str
+        In words; numbers that differ are shown as #.
+    names : tuple of str
+        Of the models, in order; the first one is the example.
+    """
+
+    kind: str
+    what: str
+    names: tuple[str, ...]
+
+
+ORDER = ("failed", "error", "warning", "note", "shape", "result")
+
+
+@dataclass(frozen=True, repr=False)
+class Sweep(Shown):
+    """The results of one question asked of many models.
+
+    Parameters
+    ----------
+    what : str
+        The question.
+    items : tuple of Item
+        One a model, in the order given.
+    notes : tuple of str, optional
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> models = {f"main {size}": pw.scenarios.harbour_row().with_rhs("harbour main", size) for size in range(9, 15)}
+    >>> found = pw.sweep(models, what="region")
+    >>> print(found)
+    region of 6 models: 6 done, 0 failed
+    kind   what                                                                      models  example
+    shape  bounded, 3-D, 13 vertices, 9 facets, 1 degenerate, one vertex is optimal  4       main 11
+    shape  bounded, 3-D, 11 vertices, 8 facets, 1 degenerate, one vertex is optimal  1       main 9
+    shape  bounded, 3-D, 12 vertices, 9 facets, 2 degenerate, one vertex is optimal  1       main 10
+    >>> len(found.results[0].vertices), found.failed
+    (11, ())
+    """
+
+    what: str
+    items: tuple[Item, ...]
+    notes: tuple[str, ...] = ()
+
+    @property
+    def results(self) -> tuple[Any, ...]:
+        """One result a model, in order; None where it failed."""
+        return tuple(item.result for item in self.items)
+
+    @property
+    def failed(self) -> tuple[Item, ...]:
+        """The items without a result."""
+        return tuple(item for item in self.items if item.error is not None)
+
+    @cached_property
+    def _by_name(self) -> dict[str, Item]:
+        return {item.name: item for item in self.items}
+
+    def item(self, name: str) -> Item:
+        """What became of the model of that name; raises UnknownName."""
+        try:
+            return self._by_name[name]
+        except KeyError:
+            raise unknown("model", name, self._by_name, "the sweep") from None
+
+    @cached_property
+    def groups(self) -> tuple[Group, ...]:
+        """The distinct failures, findings and shapes: the worst kind first, within a kind the commonest first."""
+        found: dict[tuple[str, str], dict[str, None]] = {}
+        for item in self.items:
+            for mark in item.marks:
+                found.setdefault(mark, {})[item.name] = None
+        groups = [Group(kind, what, tuple(names)) for (kind, what), names in found.items()]
+        return tuple(sorted(groups, key=lambda group: (_rank(group.kind), -len(group.names))))
+
+    def table(self) -> Table:
+        """The groups, with how many models are in each and an example."""
+        failed = len(self.failed)
+        title = f"{self.what} of {len(self.items)} models: {len(self.items) - failed} done, {failed} failed"
+        rows = tuple((group.kind, group.what, len(group.names), group.names[0]) for group in self.groups)
+        return Table(title, ("kind", "what", "models", "example"), rows, self.notes)
+
+
+def _rank(kind: str) -> int:
+    return ORDER.index(kind) if kind in ORDER else len(ORDER)
+
+
+def merged(what: str, parts: Iterable[Iterable[Item]], notes: Iterable[str] = ()) -> Sweep:
+    """One sweep of many parts, in order."""
+    return Sweep(what, tuple(item for part in parts for item in part), tuple(notes))
