@@ -10,7 +10,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import ModelError, SolverError
 from polywalk.exact import Row, exact
 from polywalk.linear import optimum
-from polywalk.narrowing.certify import Basis, holds
+from polywalk.narrowing.certify import Basis, Statuses, holds
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.solver import Solver
 from polywalk.narrowing.tolerances import TOLERANCES, snapped
@@ -29,6 +29,8 @@ class Best:
         With the objective's constant.
     point : (n,) tuple of Fraction or None
         An optimal plan.
+    basis : (list of int, list of int) or None
+        HiGHS's last, of columns and rows.
     is_exact : bool
         Whether plan and value are proved in fractions; else they are HiGHS's, each number near a simple fraction
         taken for it.
@@ -38,6 +40,7 @@ class Best:
     value: Fraction | None = None
     point: Row | None = None
     is_exact: bool = False
+    basis: Statuses | None = None
 
 
 def best(big: BigModel) -> Best:
@@ -65,7 +68,8 @@ def best(big: BigModel) -> Best:
     if found is not None or status != "optimal":
         return found or Best("unbounded" if status == "unbounded" else "infeasible")
     value = snapped(sign * solver.value + big.constant)
-    return Best("optimal", value, tuple(snapped(float(x)) for x in solver.point()))
+    point = tuple(snapped(value) for value in solver.point().tolist())
+    return Best("optimal", value, point, basis=solver.basis())
 
 
 def costs(big: BigModel) -> list[float]:
@@ -91,4 +95,4 @@ def _rebuilt(big: BigModel, solver: Solver, sign: int) -> Best | None:
     if limit.value != value:
         return None
     point = tuple(plan.at(j) for j in range(big.n))
-    return Best("optimal", sign * value + exact(big.constant), point, True)
+    return Best("optimal", sign * value + exact(big.constant), point, True, statuses)

@@ -17,7 +17,7 @@ NAMED = 2
 """Constraints that a facet is named after; more would not fit beside a line."""
 
 PLAIN = 10**6
-"""Integers up to this size are coefficients someone could have typed; larger ones are scaled to decimals."""
+"""Integers up to this size are coefficients someone could have typed; larger ones are scaled."""
 
 
 @dataclass(frozen=True)
@@ -69,14 +69,17 @@ def named(proof: Proof | None) -> str:
 def _plain(edge: Edge, exact: bool) -> tuple[tuple[Fraction, ...], Fraction, Fraction]:
     """Coefficients, right-hand side, and what the multipliers are to be multiplied with.
 
-    Long integers that carry rounding become decimals, the largest coefficient 1.
+    The smallest integers, as in the projection of a region, where they are short; else the largest coefficient is 1,
+    and where they carry rounding they become decimals.
     """
-    largest = max(map(abs, edge.direction))
-    if exact or largest <= PLAIN:
-        scale = edge.limit.denominator  # the smallest integers, as in the projection of a region
+    largest, scale = max(map(abs, edge.direction)), edge.limit.denominator
+    if largest * scale <= PLAIN:
         return tuple(Fraction(scale * value) for value in edge.direction), scale * edge.limit, Fraction(scale)
-    row = [_decimal(Fraction(value, largest)) for value in edge.direction]
-    return tuple(row), _decimal(edge.limit / largest), Fraction(1, largest)
+    row = [Fraction(value, largest) for value in edge.direction]
+    limit = edge.limit / largest
+    if not exact:
+        row, limit = [_decimal(value) for value in row], _decimal(limit)
+    return tuple(row), limit, Fraction(1, largest)
 
 
 def _decimal(value: Fraction) -> Fraction:

@@ -28,7 +28,27 @@ def merged(found: Outline) -> list[Edge]:
         if not any(points < other or (points == other and j < k) for j, other in enumerate(on))
     ]
     corners = _corners([on[k] for k in largest], found.generators)
-    return [_refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest]
+    refitted = (
+        _refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest
+    )
+    return [_cleaned(edge, found) for edge in refitted]
+
+
+def _cleaned(edge: Edge, found: Outline) -> Edge:
+    """The facet without coefficients that make no difference over the whole width of the shadow."""
+    widths = [Fraction(float(width)) for width in found.near.widths()]
+    shares = [abs(value) * width for value, width in zip(edge.direction, widths, strict=True)]
+    least = max(shares) * Fraction(found.touch)
+    if all(share == 0 or share > least for share in shares):
+        return edge
+    middle = found.near.middle()
+    row = [
+        Fraction(value) if share > least else Fraction(0) for value, share in zip(edge.direction, shares, strict=True)
+    ]
+    moved = sum(
+        (v * Fraction(float(m)) for v, r, m in zip(edge.direction, row, middle, strict=True) if not r), Fraction(0)
+    )
+    return _turned(edge, tuple(row), edge.limit - moved)
 
 
 def _corners(on: Sequence[frozenset[int]], generators: Sequence[Integers]) -> set[int]:

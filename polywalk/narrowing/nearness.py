@@ -55,6 +55,12 @@ class Nearness:
         spans: Floats = points.max(axis=0) - points.min(axis=0)
         return np.where(spans > 0, spans, 1.0)
 
+    def middle(self) -> Floats:
+        """Half way between the least and the greatest value in every column."""
+        points = self._points[self._points[:, 0] > 0, 1:]
+        half: Floats = (points.max(axis=0) + points.min(axis=0)) / 2
+        return half
+
     def share(self, direction: Integers, gap: Fraction) -> float:
         """A gap in a direction as a share of the width there; more than 0 where the gap is."""
         size = max(map(abs, direction))

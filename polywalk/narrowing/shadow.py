@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from fractions import Fraction
 from math import atan2
 
@@ -75,11 +76,13 @@ def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, ex
             return _searched(wide, ExactReach(program), 0.0)
         except InexactError:
             said = "exact claims are withheld: HiGHS's basis could not be proved in fractions"
-            wide = Widened(wide.big, wide.keep, wide.held, (*wide.notes, said))
+            wide = replace(wide, notes=(*wide.notes, said))
     return _searched(wide, FloatReach(program), TOLERANCES.touch)
 
 
 def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Shadow:
+    if wide.start is not None:
+        asks.solver.restore(wide.start)
     found = Outline(asks, len(wide.keep), touch)
     try:
         found.search()
@@ -148,4 +151,4 @@ def _empty(wide: Widened, runs: int, touch: float, proof: Proof | None) -> Shado
     nothing = Constraint("empty region", (Fraction(0),) * len(wide.keep), "<=", Fraction(-1))
     told = _shadow(wide, [building.Row(nothing, proof)], runs, touch, True)
     said = "the model allows no plan at all; conflict(big) shows which constraints contradict each other"
-    return Shadow(told.model, told.facets, told.tolerance, told.whole, told.held, runs, False, (*told.notes, said))
+    return replace(told, notes=(*told.notes, said))

@@ -33,8 +33,8 @@ class Tolerances:
     lucky : float
         How rarely a number may look like a simple fraction by chance.
     digits : int
-        Significant decimal digits of a number that is near no simple fraction: a double has 16, a solver's answer
-        about ten.
+        Significant decimal digits of a number that is near no simple fraction: a double has nearly 16, and facets
+        that meet at a small angle make much of the last ones.
     violation : Fraction
         A constraint violated by no more than this, relative to the size of its right-hand side, is "within solver
         tolerance": ten times HiGHS's 1e-7, since HiGHS tests the model it has scaled.
@@ -49,7 +49,7 @@ class Tolerances:
     snap: float = 1e-9
     simple: int = 100_000
     lucky: float = 1e-3
-    digits: int = 11
+    digits: int = 14
     violation: Fraction = Fraction(1, 10**6)
     zero: float = 1e-9
 
@@ -65,7 +65,7 @@ def snapped(value: float) -> Fraction:
     --------
     >>> from fractions import Fraction
     >>> from polywalk.narrowing.tolerances import snapped
-    >>> snapped(0.333333333341), snapped(3.14159265358979) == Fraction("3.1415926536")
+    >>> snapped(0.333333333341), snapped(3.1415926535897931) == Fraction("3.1415926535898")
     (Fraction(1, 3), True)
     """
     near = simple(value)

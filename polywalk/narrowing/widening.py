@@ -13,6 +13,7 @@ from polywalk.errors import DuplicateName, ModelError, NumberError
 from polywalk.exact import exact, short
 from polywalk.narrowing.adding import with_row, with_variable
 from polywalk.narrowing.best import Best, best
+from polywalk.narrowing.certify import BASIC, Statuses
 
 OBJECTIVE = "objective"
 """What the objective's value is called as an axis."""
@@ -23,12 +24,13 @@ VALUE = "objective's value"
 
 @dataclass(frozen=True)
 class Widened:
-    """The model to take the shadow of, the kept columns, exact sides, and what to tell."""
+    """The model to take the shadow of, the kept columns, exact sides, what to tell, and a basis to start from."""
 
     big: BigModel
     keep: tuple[int, ...]
     held: tuple[tuple[str, Fraction], ...]
     notes: tuple[str, ...]
+    start: Statuses | None = None
 
 
 def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
@@ -41,18 +43,19 @@ def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
     """
     _check(onto)
     names = list(onto)
-    wide, held, notes = big, list[tuple[str, Fraction]](), list[str]()
+    wide, held, notes, start = big, list[tuple[str, Fraction]](), list[str](), None
     if within is not None:
-        wide, held, notes = _near(big, within)
+        wide, held, notes, start = _near(big, within)
     if OBJECTIVE in names and OBJECTIVE not in big.variables:
         wide = _with_value(wide)
+        start = start and ([*start[0], BASIC], [*start[1], 0])
     keep = tuple(wide.index(name) for name in names)
     marked = [name for name in names if name in big.integers]
     others = len(big.integers) - len(marked)
     if big.integers:
         what = " and ".join([*marked, *([f"{others} other variables"] if others else [])])
         notes.append(f"integer marks are relaxed: {what}")
-    return Widened(wide, keep, tuple(held), tuple(notes))
+    return Widened(wide, keep, tuple(held), tuple(notes), start)
 
 
 def _check(onto: Sequence[str]) -> None:
@@ -72,11 +75,14 @@ def _with_value(big: BigModel) -> BigModel:
     return with_row(with_variable(big, OBJECTIVE), VALUE, entries, big.constant, big.constant)
 
 
-def _near(big: BigModel, within: object) -> tuple[BigModel, list[tuple[str, Fraction]], list[str]]:
-    """One more row that keeps the objective near its optimum."""
+Near = tuple[BigModel, list[tuple[str, Fraction]], list[str], Statuses | None]
+
+
+def _near(big: BigModel, within: object) -> Near:
+    """One more row that keeps the objective near its optimum, whose basis stays one when the new row is basic."""
     found = best(big)
     if found.outcome == "infeasible":
-        return big, [], []
+        return big, [], [], None
     if found.outcome == "unbounded" or found.value is None:
         raise ModelError(
             "expected a model with an optimum to stay near, got an unbounded one; see escape(big) for why.", big.name
@@ -88,12 +94,13 @@ def _near(big: BigModel, within: object) -> tuple[BigModel, list[tuple[str, Frac
     ends = (-np.inf, float(side)) if better > 0 else (float(side), np.inf)
     used = np.flatnonzero(big.cost)
     wide = with_row(big, name, (used.tolist(), big.cost[used].tolist()), *ends)
-    return wide, [(wide.rows[-1], side)], _told(found, said)
+    start = found.basis and (found.basis[0], [*found.basis[1], BASIC])
+    return wide, [(wide.rows[-1], side)], _told(found, said), start
 
 
 def near(big: BigModel, within: object) -> BigModel | None:
     """The big model with its objective held near the optimum, in floats; None where it has no plan."""
-    wide, held, _ = _near(big, within)
+    wide, held, _, _ = _near(big, within)
     return wide if held else None
 
 
