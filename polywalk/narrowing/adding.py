@@ -1,16 +1,48 @@
-"""A row or a variable more on a big model; edits return changed copies."""
+"""Big models as the room takes them in, and a row or a variable more; edits return changed copies."""
 
 from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import replace
+from fractions import Fraction
 from typing import Any
 
 import numpy as np
 
 from polywalk.bigmodel import BigModel
+from polywalk.errors import ModelError
+from polywalk.exact import exact
+from polywalk.model import Model
 
 Entries = tuple[Sequence[int], Sequence[float]]
+
+
+def sparse(model: BigModel | Model) -> BigModel:
+    """A big model, also from an exact one whose numbers are all decimals that a float prints as.
+
+    Raises
+    ------
+    ModelError
+        Where a float would round a number: the answer would not be the model's own.
+    """
+    if isinstance(model, BigModel):
+        return model
+    for row in model.constraints:
+        for value in (*row.coefficients, row.rhs):
+            _decimal(value, row.name)
+    if model.objective is not None:
+        for value in (*model.objective.coefficients, model.objective.constant):
+            _decimal(value, "the objective")
+    return BigModel.from_model(model)
+
+
+def _decimal(value: Fraction, where: str) -> None:
+    if exact(float(value)) != value:
+        raise ModelError(
+            f"{where!r}: {value} is no decimal that a float can hold, and big models are in floats; multiply the row "
+            "out, or use project(region(model), onto), which takes any fraction.",
+            where,
+        )
 
 
 def with_row(big: BigModel, name: str, entries: Entries, low: float, high: float) -> BigModel:

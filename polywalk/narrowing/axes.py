@@ -11,6 +11,7 @@ import numpy as np
 from polywalk.bigmodel import BigModel
 from polywalk.errors import ModelError
 from polywalk.model import Model
+from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.solver import Solver
 from polywalk.narrowing.widening import near
 from polywalk.progress import progress
@@ -109,7 +110,7 @@ def suggest_axes(
     >>> suggest_axes(BigModel.from_model(harbour_row()), within="5%").names
     ('pump', 'chips', 'tank')
     """
-    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    big = sparse(big)
     held = near(big, within)
     if held is None:
         raise ModelError("expected a model with a plan, got an infeasible one; see conflict(big).", big.name)

@@ -10,7 +10,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import SolverError
 from polywalk.exact import exact, short
 from polywalk.model import Model
-from polywalk.narrowing.adding import with_row
+from polywalk.narrowing.adding import sparse, with_row
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.conflict import conflict
 from polywalk.narrowing.program import Program
@@ -87,7 +87,7 @@ def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
     chips as planned    chips = 0
     units: pump in MW, chips in MW
     """
-    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    big = sparse(big)
     asked = tuple((name, exact(value)) for name, value in plan.items())
     held = big
     for name, value in asked:

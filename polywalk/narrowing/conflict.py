@@ -11,7 +11,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import SolverError
 from polywalk.linear import Farkas, farkas
 from polywalk.model import Model
-from polywalk.narrowing.adding import changed
+from polywalk.narrowing.adding import changed, sparse
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.cutting import cut
 from polywalk.narrowing.elastic import crossed, elastic, stretched_rows
@@ -59,7 +59,7 @@ def conflict(big: BigModel | Model) -> Model | None:
     ----------
     Chinneck & Dravnieks, Locating minimal infeasible constraint sets in linear programs, ORSA J. Comput. 3, 1991.
     """
-    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    big = sparse(big)
     for place in crossed(big):
         names = [f"{big.variables[place]} {end}" for end in ("lower", "upper")]
         return _named(big, cut(big, [], [place]), names)

@@ -12,6 +12,7 @@ from polywalk.errors import ModelError, SolverError
 from polywalk.exact import Row, dot, exact, primitive
 from polywalk.linear import improving_ray
 from polywalk.model import Model
+from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
 from polywalk.narrowing.certify import Basis, Whole, holds
 from polywalk.narrowing.hull import whole
@@ -54,7 +55,7 @@ def escape(big: BigModel | Model) -> Model | None:
     chips lower  chips ≥ 0
     units: chips in MW
     """
-    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    big = sparse(big)
     if big.goal is None:
         raise ModelError("expected a model with an objective; without one nothing improves without end.", big.name)
     found = _way(big)

@@ -11,6 +11,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import ModelError
 from polywalk.exact import Row, exact, short
 from polywalk.model import Constraint, Model, Objective
+from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import best, costs
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.settling import Settled, relaxed, settled_by, telling
@@ -103,7 +104,7 @@ def section(big: BigModel | Model, keep: Sequence[str], at: Values = "optimum") 
         A kept variable or a value's name that is not there, a variable without a value, a value beyond the bounds of
         its variable, a model without optimum for "optimum".
     """
-    big = big if isinstance(big, BigModel) else BigModel.from_model(big)
+    big = sparse(big)
     if isinstance(keep, str) or not keep:
         raise ModelError(f"expected the names of the variables to keep, as a list, got {keep!r}.", keep)
     kept = [big.index(name) for name in dict.fromkeys(keep)]

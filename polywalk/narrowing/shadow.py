@@ -11,6 +11,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.exact import exact as number
 from polywalk.model import Constraint, Model, Objective
 from polywalk.narrowing import building
+from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
 from polywalk.narrowing.merging import merged
 from polywalk.narrowing.outline import Edge, Outline
@@ -67,7 +68,7 @@ def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, ex
     Lassez & Lassez, Quantifier elimination for conjunctions of linear constraints via a convex hull algorithm, in
     Symbolic and Numerical Computation for Artificial Intelligence, 1992.
     """
-    wide = widened(big if isinstance(big, BigModel) else BigModel.from_model(big), onto, within)
+    wide = widened(sparse(big), onto, within)
     program = Program(wide.big, wide.keep, dict(wide.held))
     if exact is None:
         exact = wide.big.nonzeros <= TOLERANCES.nonzeros
