@@ -128,6 +128,7 @@ NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios
 NAMES |= {"before_after", "probe", "review", "suspects"}
 NAMES |= {"from_highs", "from_mps", "from_toml", "sweep", "to_mps", "to_toml"}
 NAMES |= {"cones", "difference", "explain", "sensitivity", "value_function", "versions"}
+NAMES |= {"completion", "conflict", "escape", "section", "shadow", "suggest_axes"}
 
 
 def test_public_names_are_pinned():
