@@ -52,7 +52,12 @@ def to_toml(model: Model, path: Source) -> None:
     >>> pw.from_toml(path) == model
     True
     """
-    put_text(path, "\n".join(_lines(model)) + "\n")
+    put_text(path, toml_text(model))
+
+
+def toml_text(model: Model) -> str:
+    """The text of a model file."""
+    return "\n".join(_lines(model)) + "\n"
 
 
 def _lines(model: Model) -> Iterator[str]:
