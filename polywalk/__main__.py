@@ -1,4 +1,4 @@
-"""``python -m polywalk``: the demo model, its vertices, the walks of two rules, and its picture as one HTML file."""
+"""``python -m polywalk``: a model file, or the demo, in a terminal: vertices, findings, walks, and a picture."""
 
 from __future__ import annotations
 
@@ -9,16 +9,45 @@ import tempfile
 from collections.abc import Sequence
 from pathlib import Path
 
+from polywalk.bigmodel import BigModel
 from polywalk.drawing import draw
+from polywalk.errors import ModelError, PolywalkError
+from polywalk.model import Model
+from polywalk.narrowing import conflict, escape, section, shadow, suggest_axes
+from polywalk.reading.mps import from_mps
+from polywalk.reading.toml import from_toml
 from polywalk.region import region
+from polywalk.reviewing import review
 from polywalk.scenarios import harbour_row
-from polywalk.walks import Walk, walk
+from polywalk.walks import ENTERING, Walk, walk
+from polywalk.walks.rules import entering_rule
 
 RULES = ("dantzig", "bland")
+DEMO_PICTURE = Path("harbour-row.html")
+DRAWN = 3
+"""Variables of a picture."""
+
+CLEAN, BAD_INPUT, FOUND_ERRORS = 0, 2, 3
+
+EXAMPLES = """\
+without a file:
+  the demo model Harbour Row, and its picture in harbour-row.html
+
+examples:
+  python -m polywalk
+  python -m polywalk plant.mps --onto a b c --rules bland dantzig --html out.html
+  python -m polywalk plant.mps.gz --onto "pump[7]" objective --within 5%
+  python -m polywalk plant.toml --onto pump tank --section
+
+exit codes:
+  0  clean: no finding of severity error
+  2  bad input: a file, name or option that cannot be used; the reason is on the error stream
+  3  the review has findings of severity error, among them no plan at all and no end of improvement
+"""
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
-    """Run the demo.
+    """Run the command.
 
     Parameters
     ----------
@@ -28,7 +57,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     Returns
     -------
     int
-        0, or 2 where the picture could not be written.
+        0 clean, 2 bad input, 3 findings of severity error.
 
     Examples
     --------
@@ -36,40 +65,159 @@ def main(arguments: Sequence[str] | None = None) -> int:
     >>> main(["--html", "no such folder/picture.html"])  # the reason goes to the error stream
     2
     """
-    target: Path = _parser().parse_args(arguments).html
-    if not target.parent.is_dir():
+    wanted = _parser().parse_args(arguments)
+    target: Path | None = wanted.html
+    if target is not None and not target.parent.is_dir():
         return _failed(target, f"there is no folder {str(target.parent)!r}")
-    model = harbour_row()
-    found, walks = region(model), [walk(model, rule=rule) for rule in RULES]
-    print("\n\n".join(str(part) for part in (model, found, *walks)))
-    print(f"\n{_comparison(walks)}")
     try:
-        _write(target, draw(found, walks=walks).to_html(include_plotlyjs=True))
-    except OSError as error:
-        return _failed(target, error.strerror or str(error))
-    print(f"\nThe picture, to be opened in a browser: {target}")
-    return 0
+        if wanted.file is None:
+            return _demo(wanted)
+        return _file(wanted)
+    except PolywalkError as error:
+        print(error, file=sys.stderr)
+        return BAD_INPUT
+    except BrokenPipeError:  # the reader of a pipe has seen enough
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return CLEAN
+    except KeyboardInterrupt:
+        print("interrupted", file=sys.stderr)
+        return 130
 
 
 def _parser() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(
         prog="python -m polywalk",
-        description="Show the demo model Harbour Row: its rows, its vertices with their active constraints, the "
-        "pivots of Dantzig's and of Bland's rule, and a picture to turn in a browser.",
+        description="Show a linear model brought down to one to three decisions: its vertices with their active "
+        "constraints, a review, the pivots of walks, and a picture to turn in a browser.",
+        epilog=EXAMPLES,
+        formatter_class=argparse.RawDescriptionHelpFormatter,
+    )
+    parser.add_argument(
+        "file", nargs="?", metavar="FILE", help="an MPS file (.mps, .mps.gz) or a model file of polywalk (.toml)"
+    )
+    parser.add_argument(
+        "--onto",
+        nargs="+",
+        default=[],
+        metavar="NAME",
+        help='one to three variables, or "objective"; by default those of a small model, else the three that plans '
+        "near the optimum disagree on most",
+    )
+    parser.add_argument(
+        "--section",
+        action="store_true",
+        help="set the other variables to their values at the optimum; by default they stay free (the shadow)",
+    )
+    parser.add_argument(
+        "--within",
+        metavar="DISTANCE",
+        help="only plans that near the optimum: 5%% of it, or 20 in the objective's own unit (not with --section)",
+    )
+    parser.add_argument(
+        "--rules",
+        nargs="+",
+        default=RULES,
+        metavar="RULE",
+        help=f"pivot rules to walk by: {', '.join(rule.name for rule in ENTERING)} (default: {' '.join(RULES)})",
     )
     parser.add_argument(
         "--html",
         type=Path,
-        default=Path("harbour-row.html"),
         metavar="PATH",
-        help="where the picture goes (%(default)s)",
+        help=f"where the picture goes (default: {DEMO_PICTURE} for the demo, no picture for a file)",
     )
     return parser
+
+
+def _demo(wanted: argparse.Namespace) -> int:
+    for option in ("onto", "section", "within"):
+        if getattr(wanted, option):
+            raise ModelError(f"--{option} is for a model in a file; name the file first.", option)
+    model = harbour_row()
+    walks = [walk(model, rule=rule) for rule in wanted.rules]
+    print("\n\n".join(str(part) for part in (model, region(model), *walks)))
+    print(f"\n{_comparison(walks)}")
+    return _drawn(wanted.html or DEMO_PICTURE, model, walks)
+
+
+def _file(wanted: argparse.Namespace) -> int:
+    for rule in wanted.rules:
+        entering_rule(rule)  # a slip is told before the long work
+    source = read(wanted.file)
+    print(source)
+    model = _narrowed(source, wanted)
+    if model.n > DRAWN:  # only a conflict or a way out is ever so large
+        print(f"\nNeither reviewed nor drawn: its {model.n} variables are more than {DRAWN}.")
+        return FOUND_ERRORS
+    found = review(model)
+    print(f"\n{region(model)}\n\n{found}")
+    walks = _walks(model, wanted.rules)
+    drawn = CLEAN if wanted.html is None else _drawn(wanted.html, model, walks)
+    return drawn or (FOUND_ERRORS if any(one.severity == "error" for one in found.findings) else CLEAN)
+
+
+def read(path: str) -> Model | BigModel:
+    """The model of a file, by its ending: a model file of polywalk (.toml, .toml.gz), else MPS."""
+    if path.lower().endswith((".toml", ".toml.gz")):
+        return from_toml(path)
+    return from_mps(path)
+
+
+def _narrowed(source: Model | BigModel, wanted: argparse.Namespace) -> Model:
+    """The small model: the source itself, its conflict or way out, a section or a shadow."""
+    small = source if isinstance(source, Model) else None
+    if not wanted.onto and source.n <= DRAWN and not wanted.within:
+        return small or source.to_model()  # type: ignore[union-attr]
+    big = source if isinstance(source, BigModel) else BigModel.from_model(source)
+    for name in wanted.onto:
+        if name != "objective":
+            big.index(name)
+    wrong = conflict(source)
+    has_goal = big.goal is not None
+    if wrong is None and has_goal:
+        wrong = escape(source) if not wanted.onto else None
+    if wrong is not None:
+        print(f"\n{wrong}")
+        return wrong
+    onto = wanted.onto or _suggested(source, has_goal)
+    part = section(source, onto) if wanted.section else shadow(source, onto, within=wanted.within)
+    print(f"\n{part}")
+    return part.model
+
+
+def _suggested(source: Model | BigModel, has_goal: bool) -> tuple[str, ...]:
+    if not has_goal:
+        raise ModelError(f"{source.n} variables and no objective: name one to three of them with --onto.", source.name)
+    found = suggest_axes(source)
+    print(f"\n{found}")
+    return found.names
+
+
+def _walks(model: Model, rules: Sequence[str]) -> list[Walk]:
+    if model.objective is None:
+        print("\nNo walks: there is no objective to walk by.")
+        return []
+    found = region(model)
+    if found.status == "empty" or found.lines:
+        print(f"\nNo walks: the region {'is empty' if found.status == 'empty' else 'has a line and no vertex'}.")
+        return []
+    walks = [walk(model, rule=rule) for rule in rules]
+    print("".join(f"\n{trace}\n" for trace in walks), end="")
+    return walks
 
 
 def _comparison(walks: Sequence[Walk]) -> str:
     counts = ", ".join(f"{len(trace.pivots)} pivots by {trace.rule}" for trace in walks)
     return f"From the same start to the same optimum: {counts}."
+
+
+def _drawn(target: Path, model: Model, walks: Sequence[Walk]) -> int:
+    try:
+        _write(target, draw(region(model), walks=walks).to_html(include_plotlyjs=True))
+    except OSError as error:
+        return _failed(target, error.strerror or str(error))
+    print(f"\nThe picture, to be opened in a browser: {target}")
+    return CLEAN
 
 
 def _write(target: Path, text: str) -> None:
@@ -88,7 +236,7 @@ def _write(target: Path, text: str) -> None:
 
 def _failed(target: Path, reason: str) -> int:
     print(f"The picture could not be written to {target}: {reason}; name another file with --html.", file=sys.stderr)
-    return 2
+    return BAD_INPUT
 
 
 if __name__ == "__main__":

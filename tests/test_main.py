@@ -6,6 +6,7 @@ import sys
 
 import pytest
 
+import polywalk as pw
 from polywalk.__main__ import main
 
 
@@ -70,3 +71,119 @@ def test_help_and_unknown_words(word, code, capsys):
     assert left.value.code == code
     told = capsys.readouterr()
     assert "usage: python -m polywalk" in told.out + told.err
+
+
+@pytest.fixture
+def plant(tmp_path):
+    """A function that writes a model as a file and hands back its path."""
+
+    def write(model, name="plant.mps"):
+        path = tmp_path / name
+        (pw.to_toml if ".toml" in name else pw.to_mps)(model, path)
+        return str(path)
+
+    return write
+
+
+def test_a_small_file_is_shown_whole(plant, tmp_path, capsys):
+    path = plant(pw.scenarios.harbour_row())
+    assert main([path, "--rules", "bland", "dantzig", "--html", str(tmp_path / "out.html")]) == 0
+    said = capsys.readouterr().out
+    for part in ("5 rows, 10 nonzeros", "13 vertices", "bland from", "dantzig from", "checked:", "out.html"):
+        assert part in said
+    assert "harbour main" in (tmp_path / "out.html").read_text(encoding="utf-8")
+
+
+@pytest.mark.parametrize("name", ["day.mps", "day.mps.gz"])
+def test_a_large_file_by_its_shadow(plant, capsys, name):
+    path = plant(pw.scenarios.harbour_day(), name)
+    assert main([path, "--onto", "pump[7]", "tank[7]", "--rules", "bland"]) == 0
+    said = capsys.readouterr().out
+    assert "Harbour Row, 24 hours onto pump[7], tank[7]" in said
+    assert "no objective to walk by" in said
+
+
+def test_near_the_optimum_with_the_objective_as_an_axis(plant, capsys):
+    path = plant(pw.scenarios.harbour_day())
+    assert main([path, "--onto", "pump[7]", "objective", "--within", "1%", "--rules", "bland"]) == 0
+    assert "bland from" in capsys.readouterr().out
+
+
+def test_a_section_at_the_optimum(plant, capsys):
+    path = plant(pw.scenarios.harbour_row(), "plant.toml")
+    assert main([path, "--onto", "pump", "chips", "--section"]) == 0
+    assert "pump" in capsys.readouterr().out
+
+
+def test_axes_are_suggested_where_none_are_named(plant, capsys):
+    assert main([plant(pw.scenarios.harbour_year(6))]) == 0
+    assert "suggested axes" in capsys.readouterr().out
+
+
+@pytest.mark.parametrize("variant", ["infeasible", "unbounded"])
+@pytest.mark.parametrize("words", [[], ["--onto", "pump", "chips"]])
+def test_findings_of_severity_error_are_code_3(plant, tmp_path, variant, words, capsys):
+    target = tmp_path / "out.html"
+    code = main([plant(pw.scenarios.harbour_row(variant)), *words, "--html", str(target)])
+    assert code == (0 if (variant, len(words)) == ("unbounded", 3) else 3)  # that shadow has no objective
+    assert ("ERROR" in capsys.readouterr().out) == (code == 3)
+    assert target.exists()
+
+
+def test_a_large_conflict_is_told_and_not_drawn(plant, tmp_path, capsys):
+    morning = pw.scenarios.harbour_year(5).with_rhs("timber", 4)
+    code = main([plant(morning), "--html", str(tmp_path / "out.html")])
+    said = capsys.readouterr().out
+    assert code == 3
+    assert "conflict in" in said
+    assert "Neither reviewed nor drawn" in said
+    assert not (tmp_path / "out.html").exists()
+
+
+@pytest.mark.parametrize(
+    ("words", "reason"),
+    [
+        (["no such.mps"], "No such file"),
+        (["{plant}", "--onto", "pomp"], "did you mean 'pump'"),
+        (["{plant}", "--onto", "pump", "chips", "tank", "objective"], ""),
+        (["{plant}", "--rules", "blond"], "no entering rule 'blond'"),
+        (["{plant}", "--onto", "pump", "--within", "much"], "much"),
+        (["--onto", "pump"], "name the file first"),
+        (["{broken}"], "line 1"),
+    ],
+)
+def test_bad_input_is_code_2_with_the_reason(plant, tmp_path, capsys, words, reason):
+    broken = tmp_path / "broken.mps"
+    broken.write_text("nothing of the kind")
+    paths = {"plant": plant(pw.scenarios.harbour_row()), "broken": str(broken)}
+    assert main([word.format(**paths) for word in words]) == 2
+    told = capsys.readouterr().err
+    assert reason in told
+    assert told.count("\n") < 8
+
+
+def test_the_help_needs_no_manual(capsys):
+    with pytest.raises(SystemExit):
+        main(["--help"])
+    told = capsys.readouterr().out
+    for part in (
+        "--onto",
+        "--section",
+        "--within",
+        "--rules",
+        "--html",
+        "examples:",
+        "exit codes:",
+        "steepest-edge",
+        "5%",
+    ):
+        assert part in told
+    assert "%%" not in told
+
+
+def test_a_pipe_that_closes_is_no_traceback(tmp_path, plant):
+    path = plant(pw.scenarios.harbour_row())
+    done = subprocess.run(
+        f'"{sys.executable}" -m polywalk "{path}" | true', shell=True, capture_output=True, check=False, timeout=120
+    )
+    assert b"Traceback" not in done.stderr
