@@ -78,7 +78,6 @@ def from_highs(solver: Any, *, name: str = "", notes: Sequence[str] = ()) -> Big
     >>> solver = quiet_solver()
     >>> x, y = solver.addVariable(lb=0, ub=4, name="x"), solver.addVariable(lb=0, name="y")
     >>> row = solver.addConstr(x + 2 * y <= 6, name="labour")
-    >>> status = solver.changeObjectiveSense(pw.from_highs(solver) and solver.getObjectiveSense()[1])
     >>> pw.from_highs(solver).row("labour")
     {'x': 1.0, 'y': 2.0}
     """
