@@ -15,6 +15,9 @@ KINDS = {
     "AlgebraError": ValueError,
     "WalkError": ValueError,
     "DrawingError": ValueError,
+    "ExpectationError": AssertionError,
+    "SolverError": RuntimeError,
+    "FileError": ValueError,
     "BudgetError": RuntimeError,
 }
 
