@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import ipywidgets as widgets
+
 from polywalk.explorer.checking import LARGEST_PICTURE
-from polywalk.explorer.forms import Panel, chooser, row
+from polywalk.explorer.forms import WRAP, Panel, chooser
 
 NONE = "none"
 NAMES = ("First axis", "Second axis", "Third axis")
@@ -13,10 +15,10 @@ class AxesBar(Panel):
     """Three choosers; the last two may be none. Not shown where every variable is drawn."""
 
     def build(self) -> None:
-        self.choosers = [chooser(name, [NONE], "140px") for name in NAMES]
+        self.choosers = [chooser(self.message, name, [NONE], "140px") for name in NAMES]
         for one in self.choosers:
             self.on_input(one, lambda _: self._chosen())
-        self.box = row(*self.choosers)
+        self.box = widgets.HBox(self.choosers, layout=WRAP)  # a layout of its own: it hides
 
     def _chosen(self) -> None:
         names = tuple(one.value for one in self.choosers if one.value != NONE)

@@ -9,9 +9,8 @@ import ipywidgets as widgets
 
 from polywalk.exact import full, linear, short
 from polywalk.explorer.dial import Dial
-from polywalk.explorer.forms import Panel, chooser, heading, row, text_box
+from polywalk.explorer.forms import Panel, chooser, column, row, text_box, words
 from polywalk.explorer.rows import Rows
-from polywalk.explorer.settling import Settled
 from polywalk.explorer.state import State
 from polywalk.model import SIGN, Constraint
 from polywalk.region import vertex_name
@@ -27,19 +26,23 @@ class ConstraintPanel(Panel):
 
     def build(self) -> None:
         guard = self.message.guard
-        self.rows = Rows(label="constraints", on_select=guard(self._picked))
-        self.number = chooser("Change the", [("", None)], "260px")
-        self.dial = Dial(label="Value", on_move=guard(self._dragged), on_release=guard(self._released))
-        self.exact = text_box("Exact value", "160px")
+        self.rows = Rows(label="constraints", layout=self.message.look(widgets.Layout), on_select=guard(self._picked))
+        self.number = chooser(self.message, "Change the", [("", None)], "260px")
+        self.dial = Dial(
+            label="Value",
+            layout=self.message.look(widgets.Layout),
+            on_move=guard(self._dragged),
+            on_release=guard(self._released),
+        )
+        self.exact = text_box(self.message, "Exact value", "160px")
         self.on = widgets.Checkbox(description="counts in the model", indent=False, layout={"width": "auto"})
-        self.range = widgets.HTML()
-        self.prices = widgets.HTML()
+        self.range = words(self.message)
         self._stops: Stops | None = None
         self.on_input(self.number, self._chosen)
         self.on_input(self.exact, lambda text: self.state.set_number(text.strip()))
         self.on_input(self.on, lambda on: self.state.switch(self.state.number[1], on))
-        editor = widgets.VBox([row(self.number, self.exact, self.on), self.dial, self.range])
-        self.box = widgets.VBox([self.rows, editor, heading("Prices"), self.prices])
+        editor = column(self.message, row(self.message, self.number, self.exact, self.on), self.dial, self.range)
+        self.box = column(self.message, self.rows, editor)
 
     def _picked(self, place: int | None) -> None:
         if place is not None and not self._showing:
@@ -66,7 +69,6 @@ class ConstraintPanel(Panel):
         self.on.disabled = kind != "right-hand side"
         self.on.value = kind != "right-hand side" or name not in state.off
         self._show_stops()
-        self._show_prices(state.settled)
 
     def _show_choice(self) -> None:
         whole = self.state.whole
@@ -91,15 +93,6 @@ class ConstraintPanel(Panel):
         self.dial.label = f"{KIND[kind]} {name}"
         self.dial.turn_to([short(stop) for stop in now.values], marks, now.values.index(value))
         self.range.value = f"<p>{_range(now)}</p>"
-
-    def _show_prices(self, settled: Settled | None) -> None:
-        if settled is None:
-            self.prices.value = "<p>Not worked out yet.</p>"
-            return
-        stale = '<p class="polywalk-stale">Stale: of the model before.</p>' if self.state.stale else ""
-        self.prices.value = (
-            stale + '<div class="polywalk-wide">' + "".join(t._repr_html_() for t in settled.prices) + "</div>"
-        )
 
 
 def _range(found: Stops) -> str:

@@ -16,7 +16,7 @@ function render({ model, el }) {
   marks.id = `${id}-marks`;
   input.setAttribute("list", marks.id);
   input.type = "range";
-  input.min = input.step = 0;
+  input.min = 0;
   input.step = 1;
   box.append(label, input, told, marks);
   el.append(box);

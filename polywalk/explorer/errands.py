@@ -9,7 +9,7 @@ from typing import Any
 import ipywidgets as widgets
 
 from polywalk.budget import Budget, Job
-from polywalk.explorer.forms import button, row
+from polywalk.explorer.forms import WRAP, button, words
 from polywalk.explorer.message import Message
 from polywalk.explorer.resting import running_loop
 
@@ -41,9 +41,9 @@ class Errand:
         self._thread: Thread | None = None
         self.start = button(message, text, self.begin)
         self.stop = button(message, "Stop", self.end, "Stop this work")
-        self.told = widgets.HTML()
+        self.told = words(message)
         self.stop.disabled = True
-        self.box = row(self.start, self.stop, self.told)
+        self.box = widgets.HBox([self.start, self.stop, self.told], layout=WRAP)  # a layout of its own: it may hide
 
     def begin(self) -> None:
         """Start the child process; its result is taken when it comes."""

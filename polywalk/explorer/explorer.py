@@ -11,6 +11,7 @@ from typing import Any
 import ipywidgets as widgets
 
 from polywalk.drawing import scene
+from polywalk.drawing.compacting import compact
 from polywalk.drawing.interactive import painted
 from polywalk.drawing.static import rendered
 from polywalk.drawing.theme import THEMES
@@ -19,8 +20,10 @@ from polywalk.explorer.axesbar import AxesBar
 from polywalk.explorer.constraintpanel import ConstraintPanel
 from polywalk.explorer.constraintpanel import table as constraint_table
 from polywalk.explorer.findingpanel import FindingPanel
+from polywalk.explorer.forms import words
 from polywalk.explorer.message import Message
 from polywalk.explorer.modelbar import ModelBar
+from polywalk.explorer.pricepanel import PricePanel
 from polywalk.explorer.resting import Rest
 from polywalk.explorer.settling import is_slow
 from polywalk.explorer.shadows import in_region
@@ -57,18 +60,22 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         self._open = False
         self.state = State(model, **state)
         self.message = Message()
-        self.verdict = widgets.HTML()
+        self.verdict = words(self.message)
         self.rest = Rest(self.message.watch(self._settled))
         guard = self.message.guard
         handlers = {"pick": self._picked, "key": self._pressed, "camera": self._turned, "theme": self._lit}
-        self.picture = FigureView(handlers={kind: guard(handler) for kind, handler in handlers.items()})
+        self.picture = FigureView(
+            layout=self.message.look(widgets.Layout),
+            handlers={kind: guard(handler) for kind, handler in handlers.items()},
+        )
         self._drawn: Any = None
         self._reported: Any = None
         if not is_slow(model):
             self.state.settle()
         given = self.state, self.message
         self.bar, self.axes, self.vertices = ModelBar(*given), AxesBar(*given), VertexPanel(*given)
-        self.constraints, self.findings, self.walk = ConstraintPanel(*given), FindingPanel(*given), WalkPanel(*given)
+        self.constraints, self.findings = ConstraintPanel(*given), FindingPanel(*given)
+        self.prices, self.walk = PricePanel(*given), WalkPanel(*given)
         super().__init__(self._arranged())
         self.add_class("polywalk")
         self._watching = {
@@ -81,10 +88,11 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         self.show()
 
     def _arranged(self) -> list[widgets.Widget]:
-        help_line = widgets.HTML(f"<p>{escape(HELP)}</p>")
-        panels = {"Constraints": self.constraints, "Vertices": self.vertices, "Findings": self.findings}
-        listed = {title: panel.box for title, panel in panels.items()} | {"Walk": self.walk.box}
-        self.tabs, right = tabbed("panels", listed)
+        help_line = words(self.message, f"<p>{escape(HELP)}</p>")
+        names = ("Constraints", "Vertices", "Findings", "Prices", "Walk")
+        panels = (self.constraints, self.vertices, self.findings, self.prices, self.walk)
+        listed = {name: panel.box for name, panel in zip(names, panels, strict=True)}
+        self.tabs, right = tabbed("panels", listed, self.message.look(widgets.Layout))
         left = [self.picture, self.axes.box, help_line, self.vertices.card]
         return [self.verdict, self.bar.box, self.message, _side_by_side(left, [right])]
 
@@ -93,7 +101,7 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         state = self.state
         self.verdict.value = texts.verdict(state)
         found = "" if state.review is None else f" ({len(state.review.findings)}{', stale' if state.stale else ''})"
-        self.tabs.titles = ["Constraints", "Vertices", f"Findings{found}", "Walk"]
+        self.tabs.titles = ["Constraints", "Vertices", f"Findings{found}", "Prices", "Walk"]
         if state.picture != self._drawn:
             self._draw()
 
@@ -151,7 +159,7 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
             return
         self._open = False
         self.rest.cancel()
-        for panel in (self.bar, self.axes, self.vertices, self.constraints, self.findings, self.walk):
+        for panel in (self.bar, self.axes, self.vertices, self.constraints, self.findings, self.prices, self.walk):
             panel.close()
         for name, watch in self._watching.items():
             self.state.unobserve(watch, name)
@@ -181,7 +189,7 @@ def still(state: State) -> str:
     if state.region is None:
         return ""
     drawn = rendered(scene(state.region, replace(state.view, mode="light")), THEMES["light"], "svg", outlines=False)
-    source = f"data:image/svg+xml;base64,{b64encode(drawn).decode()}"
+    source = f"data:image/svg+xml;base64,{b64encode(compact(drawn.decode()).encode()).decode()}"
     return f'<img alt="picture of the region" style="max-width: 100%" src="{source}">'
 
 

@@ -8,7 +8,7 @@ from typing import Any
 import ipywidgets as widgets
 
 from polywalk.explorer.errands import SOME_MINUTES, Errand, Order
-from polywalk.explorer.forms import Panel, button, heading, text_box
+from polywalk.explorer.forms import Panel, button, column, heading, row, text_box, words
 from polywalk.explorer.rows import Rows
 from polywalk.explorer.settling import PATIENCE, is_slow, list_and_settle
 from polywalk.model import Model
@@ -21,25 +21,27 @@ class FindingPanel(Panel):
 
     def build(self) -> None:
         guard = self.message.guard
-        self.status, self.words = widgets.HTML(), widgets.HTML()
-        self.rows = Rows(label="findings", on_select=guard(self._picked))
+        self.status, self.words = words(self.message), words(self.message)
+        self.rows = Rows(label="findings", layout=self.message.look(widgets.Layout), on_select=guard(self._picked))
         said = {"budget": PATIENCE, "task": "listing the vertices and reviewing the model"}
         said["remedy"] = "fix variables or switch constraints off."
         self.listing = Errand(self.message, "List the vertices and review", self._large, self._listed, **said)
         self.all = button(self.message, "Mark none", self._unmarked, "Select no finding")
-        self.allowed = text_box("A plan that should be allowed", "300px", placeholder="4, 4, 4")
-        self.forbidden = text_box("A plan that should not", "300px", placeholder="5, 3, 4")
+        self.allowed = text_box(self.message, "A plan that should be allowed", "300px", placeholder="4, 4, 4")
+        self.forbidden = text_box(self.message, "A plan that should not", "300px", placeholder="5, 3, 4")
         here = "Take the selected vertex as the plan that should not be allowed"
         self.here = button(self.message, "The selected vertex should not", self._forbid, here)
         said = {"budget": SOME_MINUTES, "task": "the search for suspects", "remedy": "state more plans."}
         self.search = Errand(self.message, "Search for suspects", self._asked, self._found, **said)
-        self.suspects = Rows(label="suspects")
-        self.told = widgets.HTML()
+        self.suspects = Rows(label="suspects", layout=self.message.look(widgets.Layout))
+        self.told = words(self.message)
         self.try_it = button(self.message, "Try the selected suspect", self._tried, "Take its model; Undo leads back")
         self._searched: Suspects | None = None
-        slip = [self.allowed, self.forbidden, self.here, self.search.box, self.suspects, self.told, self.try_it]
-        found = [self.status, self.listing.box, self.rows, self.all, self.words]
-        self.box = widgets.VBox([*found, heading("Which slip would explain it?"), *slip])
+        m = self.message
+        facts = row(m, self.allowed, self.forbidden, self.here)
+        slip = [facts, self.search.box, self.suspects, self.told, row(m, self.try_it)]
+        found = [self.status, self.listing.box, self.rows, row(m, self.all), self.words]
+        self.box = column(m, *found, heading(m, "Which slip would explain it?"), *slip)
 
     def _picked(self, place: int | None) -> None:
         if not self._showing:
@@ -92,7 +94,7 @@ class FindingPanel(Panel):
         self.status.value = self._status()
         self.listing.box.layout.display = None if is_slow(state.model) else "none"
         self.all.disabled = state.finding is None
-        self.words.value = "" if state.finding is None else words(listed[state.finding])
+        self.words.value = "" if state.finding is None else in_full(listed[state.finding])
 
     def _status(self) -> str:
         state = self.state
@@ -107,7 +109,7 @@ class FindingPanel(Panel):
         )
 
 
-def words(item: Finding) -> str:
+def in_full(item: Finding) -> str:
     """A finding in full."""
     remedy = f"<p><b>Remedy:</b> {escape(item.remedy)}</p>" if item.remedy else ""
     return f"<h3>{escape(item.title)}</h3><p>{escape(item.explanation)}</p>{remedy}"

@@ -8,6 +8,8 @@ from html import escape
 from typing import Any
 
 import ipywidgets as widgets
+from ipywidgets.widgets.widget_description import DescriptionStyle
+from ipywidgets.widgets.widget_string import HTMLStyle, TextStyle
 
 from polywalk.explorer.message import Message
 from polywalk.explorer.state import State
@@ -18,36 +20,49 @@ WRAP = {"flex_flow": "row wrap", "align_items": "center"}
 
 def button(message: Message, text: str, act: Any, tip: str = "") -> widgets.Button:
     """A button that acts; its error is shown as a message."""
-    made = widgets.Button(description=text, tooltip=tip or text, layout={"width": "auto"})
+    layout, style = message.look(widgets.Layout, width="auto"), message.look(widgets.ButtonStyle)
+    made = widgets.Button(description=text, tooltip=tip or text, layout=layout, style=style)
     made.on_click(message.guard(lambda _: act()))
     return made
 
 
-def chooser(label: str, options: Sequence[Any], basis: str = "180px", **more: Any) -> widgets.Dropdown:
+def chooser(
+    message: Message, label: str, options: Sequence[Any], basis: str = "180px", **more: Any
+) -> widgets.Dropdown:
     """A labelled dropdown."""
-    return widgets.Dropdown(options=options, description=label, **_named(basis), **more)
+    style = message.look(DescriptionStyle, description_width="auto")
+    return widgets.Dropdown(options=options, description=label, layout=_wide(message, basis), style=style, **more)
 
 
-def text_box(label: str, basis: str = "220px", **more: Any) -> widgets.Text:
+def text_box(message: Message, label: str, basis: str = "220px", **more: Any) -> widgets.Text:
     """A labelled line of text that counts when it is finished."""
-    return widgets.Text(description=label, continuous_update=False, **_named(basis), **more)
+    style = message.look(TextStyle, description_width="auto")
+    layout = _wide(message, basis)
+    return widgets.Text(description=label, continuous_update=False, layout=layout, style=style, **more)
 
 
-def _named(basis: str) -> dict[str, Any]:
-    return {
-        "style": {"description_width": "auto"},
-        "layout": {"width": "auto", "flex": f"1 1 {basis}", "max_width": "460px"},
-    }
+def _wide(message: Message, basis: str) -> widgets.Layout:
+    return message.look(widgets.Layout, width="auto", flex=f"1 1 {basis}", max_width="460px")
 
 
-def row(*items: widgets.Widget) -> widgets.HBox:
-    """Controls side by side."""
-    return widgets.HBox(list(items), layout=WRAP)
+def words(message: Message, value: str = "") -> widgets.HTML:
+    """A place for ready HTML."""
+    return widgets.HTML(value, layout=message.look(widgets.Layout), style=message.look(HTMLStyle))
 
 
-def heading(text: str) -> widgets.HTML:
+def heading(message: Message, text: str) -> widgets.HTML:
     """A heading."""
-    return widgets.HTML(f"<h3>{escape(text)}</h3>")
+    return words(message, f"<h3>{escape(text)}</h3>")
+
+
+def row(message: Message, *items: widgets.Widget) -> widgets.HBox:
+    """Controls side by side."""
+    return widgets.HBox(list(items), layout=message.look(widgets.Layout, **WRAP))
+
+
+def column(message: Message, *items: widgets.Widget) -> widgets.VBox:
+    """Parts one below the other."""
+    return widgets.VBox(list(items), layout=message.look(widgets.Layout))
 
 
 class Panel:

@@ -18,6 +18,14 @@ class Message(widgets.HTML):  # type: ignore[misc]
     def __init__(self) -> None:
         super().__init__()
         self._errors: dict[object, Exception] = {}
+        self._looks: dict[tuple[Any, ...], widgets.Widget] = {}
+
+    def look(self, kind: type[widgets.Widget], **traits: Any) -> widgets.Widget:
+        """A layout or style that all widgets of the explorer with the same look share: each costs a kilobyte."""
+        key = (kind, *sorted(traits.items()))
+        if key not in self._looks:
+            self._looks[key] = kind(**traits)
+        return self._looks[key]
 
     def guard(self, callback: Callable[..., Any]) -> Callable[..., None]:
         """A callback of the user's input: its error is shown until some input succeeds."""

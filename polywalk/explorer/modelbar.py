@@ -8,7 +8,7 @@ import ipywidgets as widgets
 
 from polywalk.drawing import picture
 from polywalk.errors import DrawingError
-from polywalk.explorer.forms import Panel, button, row, text_box
+from polywalk.explorer.forms import Panel, button, column, row, text_box
 from polywalk.reading.python_text import to_python
 
 
@@ -21,12 +21,12 @@ class ModelBar(Panel):
         self.redo = button(message, "Redo", state.redo, "Take back the last undo")
         self.reset = button(message, "Reset", state.reset, "The model as it was given")
         self.copy = button(message, "Python text", self._text, "The edited model as Python text, to copy")
-        self.file = text_box("File", "150px", value="region.svg")
+        self.file = text_box(self.message, "File", "150px", value="region.svg")
         self.save = button(message, "Save picture", self._saved, "Save the picture as it is: .svg, .png or .pdf")
         self.text = widgets.Textarea(description="Model", disabled=False, rows=8, layout={"width": "auto"})
         self.text.layout.display = "none"
-        buttons = row(self.undo, self.redo, self.reset, self.copy, self.save, self.file)
-        self.box = widgets.VBox([buttons, self.text])
+        buttons = row(self.message, self.undo, self.redo, self.reset, self.copy, self.save, self.file)
+        self.box = column(self.message, buttons, self.text)
 
     def _text(self) -> None:
         hidden = self.text.layout.display == "none"

@@ -26,9 +26,9 @@ class Tabs(anywidget.AnyWidget):
         return place
 
 
-def tabbed(label: str, panels: dict[str, widgets.Widget]) -> tuple[Tabs, widgets.VBox]:
+def tabbed(label: str, panels: dict[str, widgets.Widget], layout: widgets.Layout) -> tuple[Tabs, widgets.VBox]:
     """The headings, and them above the open panel."""
-    heads = Tabs(label=label, titles=list(panels))
-    stack = widgets.Stack(list(panels.values()), selected_index=0)
+    heads = Tabs(label=label, titles=list(panels), layout=layout)
+    stack = widgets.Stack(list(panels.values()), selected_index=0, layout=layout)
     traitlets.dlink((heads, "shown"), (stack, "selected_index"))
-    return heads, widgets.VBox([heads, stack])
+    return heads, widgets.VBox([heads, stack], layout=layout)

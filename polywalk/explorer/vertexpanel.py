@@ -5,7 +5,7 @@ from __future__ import annotations
 import ipywidgets as widgets
 
 from polywalk.explorer import cards
-from polywalk.explorer.forms import Panel
+from polywalk.explorer.forms import Panel, column, words
 from polywalk.explorer.rows import Rows
 
 
@@ -13,9 +13,11 @@ class VertexPanel(Panel):
     """``box`` lists the vertices; ``card`` tells about the selected one and stands elsewhere."""
 
     def build(self) -> None:
-        self.rows = Rows(label="vertices", on_select=self.message.guard(self._picked))
-        self.more, self.card = widgets.HTML(), widgets.HTML()
-        self.box = widgets.VBox([self.rows, self.more])
+        self.rows = Rows(
+            label="vertices", layout=self.message.look(widgets.Layout), on_select=self.message.guard(self._picked)
+        )
+        self.more, self.card = words(self.message), words(self.message)
+        self.box = column(self.message, self.rows, self.more)
 
     def _picked(self, place: int | None) -> None:
         if not self._showing:

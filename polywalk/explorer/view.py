@@ -91,7 +91,7 @@ class FigureView(anywidget.AnyWidget):
             layout.pop(fixed, None)
         if camera and solid:
             layout["scene"] = {**layout["scene"], "camera": camera}
-        self.figure = {"data": figure["data"], "layout": layout}
+        self.figure = {"data": rounded(figure["data"]), "layout": layout}
 
     def say(self, text: str, dark: bool) -> None:
         """Show words where there is no picture."""
@@ -103,6 +103,17 @@ class FigureView(anywidget.AnyWidget):
     def aim(self, camera: dict[str, Any]) -> None:
         """Turn the scene on every page that shows it; ``camera`` as in plotly's ``layout.scene.camera``."""
         self.send({"kind": "aim", "camera": camera})
+
+
+def rounded(data: Any) -> Any:
+    """The traces with nine significant digits, finer than any screen: half the bytes of a message are such numbers."""
+    if isinstance(data, float):
+        return float(f"{data:.9g}")
+    if isinstance(data, dict):
+        return {key: rounded(value) if isinstance(value, list | dict | float) else value for key, value in data.items()}
+    if isinstance(data, list):
+        return [rounded(value) if isinstance(value, float | list | dict) else value for value in data]
+    return data
 
 
 def _legend_room(data: list[dict[str, Any]]) -> int:

@@ -12,7 +12,7 @@ from polywalk.errors import WalkError
 from polywalk.explorer import steps
 from polywalk.explorer.checking import LEAVING_RULES, RULES
 from polywalk.explorer.errands import SOME_MINUTES, Errand, Order
-from polywalk.explorer.forms import Panel, button, chooser, row
+from polywalk.explorer.forms import Panel, button, chooser, column, row, words
 from polywalk.explorer.resting import running_loop
 from polywalk.explorer.rows import Rows
 from polywalk.region import vertex_name
@@ -32,18 +32,20 @@ class WalkPanel(Panel):
 
     def build(self) -> None:
         message = self.message
-        self.rule = chooser("Rule", RULES)
-        self.other = chooser("Second rule", (NONE, *RULES))
-        self.leaving = chooser("Leaving rule", LEAVING_RULES)
-        self.start = chooser("Start", [(USUAL, USUAL)])
+        self.rule = chooser(self.message, "Rule", RULES)
+        self.other = chooser(self.message, "Second rule", (NONE, *RULES))
+        self.leaving = chooser(self.message, "Leaving rule", LEAVING_RULES)
+        self.start = chooser(self.message, "Start", [(USUAL, USUAL)])
         self.from_here = button(message, "Start at the selected vertex", self._from_here)
         self.back = button(message, "Step back", lambda: self._go(-1))
         self.on = button(message, "Step on", lambda: self._go(+1))
         self.run = button(message, "Run", self._run, "Step on by itself")
         self.stop = button(message, "Stop", self.halt, "Stop stepping on")
         self.whole = button(message, "Whole walk", self._whole)
-        self.summary, self.story, self.compared = widgets.HTML(), widgets.HTML(), widgets.HTML()
-        self.rows = Rows(label="pivots", on_select=message.guard(self._picked))
+        self.summary, self.story, self.compared = words(self.message), words(self.message), words(self.message)
+        self.rows = Rows(
+            label="pivots", layout=self.message.look(widgets.Layout), on_select=message.guard(self._picked)
+        )
         said = {"budget": SOME_MINUTES, "task": "the comparison of all rules", "remedy": "compare fewer."}
         self.compare = Errand(message, "Compare all rules", self._asked, self._told, **said)
         self._running: asyncio.TimerHandle | None = None
@@ -51,10 +53,10 @@ class WalkPanel(Panel):
             self.on_input(widget, lambda _: self._ruled())
         self.on_input(self.leaving, lambda rule: setattr(self.state, "leaving", rule))
         self.on_input(self.start, lambda start: setattr(self.state, "start", None if start is USUAL else start))
-        chosen = row(self.rule, self.other, self.leaving, self.start, self.from_here)
-        stepping = row(self.back, self.on, self.run, self.stop, self.whole)
+        chosen = row(self.message, self.rule, self.other, self.leaving, self.start, self.from_here)
+        stepping = row(self.message, self.back, self.on, self.run, self.stop, self.whole)
         told = [self.rows, self.story, self.compare.box, self.compared]
-        self.box = widgets.VBox([chosen, self.summary, stepping, *told])
+        self.box = column(self.message, chosen, self.summary, stepping, *told)
 
     def _go(self, by: int) -> None:
         self.halt()

@@ -134,7 +134,7 @@ def test_findings_are_listed_worst_first_and_one_is_marked() -> None:
 
 def test_prices_are_those_of_sensitivity() -> None:
     explorer = pw.explore(HARBOUR)
-    assert pw.sensitivity(HARBOUR).table()._repr_html_() in explorer.constraints.prices.value
+    assert pw.sensitivity(HARBOUR).table()._repr_html_() in explorer.prices.tables.value
 
 
 def test_suspects_are_searched_in_a_child_and_tried() -> None:
