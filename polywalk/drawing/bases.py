@@ -9,9 +9,8 @@ from functools import cached_property
 from polywalk.drawing import basis_places as paper
 from polywalk.drawing.basis_key import hover, key, lettered, letters_of
 from polywalk.drawing.paths import APART
-from polywalk.drawing.scene import Axis, Label, Line, Mark, Point, Scene
+from polywalk.drawing.scene import PAPER, Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.view import View
-from polywalk.drawing.window import PAPER
 from polywalk.errors import DrawingError
 from polywalk.exact import short
 from polywalk.region import vertex_name

@@ -16,8 +16,7 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from math import hypot
 
-from polywalk.drawing.scene import Point
-from polywalk.drawing.window import PAPER
+from polywalk.drawing.scene import PAPER, Point
 
 RADIUS = 17.0
 """Pixels from a basis's centre to its border."""

@@ -10,6 +10,7 @@ from math import cos, hypot, radians, sin
 from polywalk.drawing.scene import Point
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.space import cross, inner
+from polywalk.errors import DrawingError
 
 Eye = tuple[float, float, float]
 
@@ -37,6 +38,33 @@ USUAL = eye(-55, 24)
 
 STEEP = 1e-9
 """Below this horizontal share the eye is straight above: rounding would choose which way is right."""
+
+
+ISOMETRIC = (1.0, -1.0, 1.0)
+"""The direction from which all three axes are seen equally long, the first two running to the right."""
+
+ALONG = ((1.0, 0.0, 0.0), (0.0, -1.0, 0.0), (0.0, 0.0, 1.0))
+"""The directions along each axis, chosen so that the axes seen run to the right and up."""
+
+
+def named_eye(camera: Eye | str | None, axes: Sequence[str]) -> Eye | None:
+    """The direction of a camera: three numbers as they are, "isometric", or "along" and the name of an axis.
+
+    Raises
+    ------
+    DrawingError
+        Another name, or no direction.
+    """
+    if camera is None:
+        return None
+    if not isinstance(camera, str):
+        if len(camera) != 3 or not any(camera):
+            raise DrawingError(f"expected a camera of three numbers that are not all 0, got {camera!r}.", camera)
+        return camera
+    known = {"isometric": ISOMETRIC} | {f"along {name}": way for name, way in zip(axes, ALONG, strict=False)}
+    if camera not in known:
+        raise DrawingError(f"expected the camera {', '.join(known)} or three numbers, got {camera!r}.", camera)
+    return known[camera]
 
 
 @dataclass(frozen=True)

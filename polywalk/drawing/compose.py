@@ -3,30 +3,39 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from itertools import count
+from dataclasses import replace
+from itertools import count, pairwise
 from string import ascii_lowercase
 
 from polywalk.drawing import conflict as conflicts
 from polywalk.drawing import evidence, goal, paths, plane
 from polywalk.drawing.bases import bases_scene
-from polywalk.drawing.camera import USUAL, best_eye
+from polywalk.drawing.camera import USUAL, best_eye, named_eye
 from polywalk.drawing.chart import chart
+from polywalk.drawing.conflict import Conflict
+from polywalk.drawing.difference import change_scene
 from polywalk.drawing.key import key
 from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import Axis, KeyPart, Label, Layer, Line, Point, Polygon, Scene
+from polywalk.drawing.settling import unplaced
 from polywalk.drawing.shape import Shape, Side, shape
-from polywalk.drawing.subject import Subject, coordinates, floats, planar, subject
+from polywalk.drawing.status import status
+from polywalk.drawing.subject import Subject, floats, planar, subject, titles_of
 from polywalk.drawing.valuechart import value_chart
 from polywalk.drawing.view import View
-from polywalk.drawing.window import Window, around, square
-from polywalk.exact import short
+from polywalk.drawing.window import Window, around, lifted, square
 from polywalk.model import Model
 from polywalk.region import Region
-from polywalk.reviewing import ValueFunction
+from polywalk.reviewing import Difference, ValueFunction
 from polywalk.walks import Bases, Comparison, Walk
 
-Source = Model | Region | Bases | Comparison | Walk | Sequence[Walk] | ValueFunction
-"""What can be drawn: a region, the bases of a vertex, walks as a chart of the objective by pivot, a value function."""
+Source = Model | Region | Bases | Comparison | Walk | Sequence[Walk] | ValueFunction | Difference
+"""What can be drawn: a region, the bases of a vertex, walks as a chart of the objective by pivot, a value function, the
+difference of two versions."""
+
+
+UNTOLD = {"edge", "open edge", "rest edge", "evidence ray"}
+"""Roles of lines in the plane that no layer has told the sheet of, for texts to keep clear of."""
 
 
 def scene(source: Source, view: View | None = None) -> Scene:
@@ -34,7 +43,7 @@ def scene(source: Source, view: View | None = None) -> Scene:
 
     Parameters
     ----------
-    source : Model, Region, Bases, Comparison, Walk or sequence of Walk, ValueFunction
+    source : Model, Region, Bases, Comparison, Walk or sequence of Walk, ValueFunction, Difference
         A Region saves enumerating again. Bases give the picture of one vertex's bases. Walks give the chart of the
         objective by pivot, a comparison that of its walks from the first start.
     view : View, optional
@@ -58,6 +67,8 @@ def scene(source: Source, view: View | None = None) -> Scene:
     """
     if isinstance(source, Bases):
         return bases_scene(source, view or View())
+    if isinstance(source, Difference):
+        return change_scene(source, view or View())
     if isinstance(source, ValueFunction):
         return value_chart(source)
     if isinstance(source, Walk | Comparison | Sequence):
@@ -75,15 +86,13 @@ def _framed(looked: Subject) -> tuple[Window, Shape]:
     points = [floats(point) for point in seen.base]
     for walk in looked.view.walks:
         points += [looked.along(point) for point in walk.points]
-    frame = around(points, [floats(ray.direction) for ray in seen.rays], [floats(line) for line in seen.lines])
+    frame = around(
+        points, [floats(ray.direction) for ray in seen.rays], [floats(line) for line in seen.lines], looked.view.paper
+    )
     drawn = shape(seen, frame if len(frame.low) != 2 else square(frame))
     if len(frame.low) == 1:
-        return _lifted_window(frame), _lifted_shape(drawn)
+        return lifted(frame), _lifted_shape(drawn)
     return (square(frame) if len(frame.low) == 2 else frame), drawn
-
-
-def _lifted_window(frame: Window) -> Window:
-    return Window((frame.low[0], -1.0), (frame.high[0], 1.0))
 
 
 def _lifted_shape(drawn: Shape) -> Shape:
@@ -110,7 +119,26 @@ def _flat(looked: Subject, frame: Window, drawn: Shape) -> Scene:
     borders, absent = plane.constraints(looked, sheet)
     proofs = evidence.layer(looked, frame, sheet)
     layers = (body, borders, aim, _optimal_face(looked), walks, points, proofs)
-    return _assembled(looked, frame, layers, rows=key(looked, {}, absent, None), status=_status(looked))
+    return _settled(looked, sheet, layers, absent=absent, found=None, said=status(looked))
+
+
+def _settled(
+    looked: Subject,
+    sheet: Sheet,
+    layers: tuple[Layer, ...],
+    *,
+    absent: tuple[str, ...],
+    found: Conflict | None,
+    said: str,
+) -> Scene:
+    """The flat scene with its texts where there is room; a letter in place of a name is explained in the key."""
+    for line in (line for layer in layers for line in layer.lines if line.role in UNTOLD):
+        sheet.lines += [(sheet.pixel(a), sheet.pixel(b)) for part in line.parts for a, b in pairwise(part)]
+    labels, left = sheet.settle(label for layer in layers for label in layer.labels)
+    tags = {label.longer: label.text for label in labels if label.role == "tag"}
+    bare = tuple(replace(layer, labels=()) for layer in layers)
+    rows = unplaced(left) + key(looked, tags, absent, found)
+    return _assembled(looked, sheet.window, (*bare, Layer(labels=labels)), rows=rows, said=said)
 
 
 def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
@@ -125,7 +153,7 @@ def _solid(looked: Subject, frame: Window, drawn: Shape) -> Scene:
         evidence.layer(looked, frame, None, drawn),
         tagged,
     )
-    return _assembled(looked, frame, layers, rows=key(looked, tags, (), None), status=_status(looked), drawn=drawn)
+    return _assembled(looked, frame, layers, rows=key(looked, tags, (), None), said=status(looked), drawn=drawn)
 
 
 def _faces(looked: Subject, drawn: Shape) -> Layer:
@@ -171,9 +199,10 @@ def _empty(looked: Subject) -> Scene:
     model, found = looked.seen.model, conflicts.conflict(looked.model)
     words = conflicts.sentence(found)
     if looked.projected:
-        nothing = Window((0.0,) * max(len(looked.axes), 2), (1.0,) * max(len(looked.axes), 2))
-        return _assembled(looked, nothing, (), rows=key(looked, {}, (), found), status=words)
-    frame = conflicts.window(model, found)
+        count = max(len(looked.axes), 2)
+        nothing = Window((0.0,) * count, (1.0,) * count, looked.view.paper)
+        return _assembled(looked, nothing, (), rows=key(looked, {}, (), found), said=words)
+    frame = conflicts.window(model, found, looked.view.paper)
     if model.n == 2:
         frame = square(frame)
     rest = shape(found.rest, frame) if found.rest is not None else None
@@ -183,35 +212,16 @@ def _empty(looked: Subject) -> Scene:
         planes = (conflicts.faces(model, found, rest), conflicts.borders(model, found, frame))
         proofs = evidence.layer(looked, frame, None, rest)
         layers = (body, *planes, conflicts.shortfall(found, None), proofs, tagged)
-        return _assembled(looked, frame, layers, rows=key(looked, tags, (), found), status=words, drawn=rest)
+        return _assembled(looked, frame, layers, rows=key(looked, tags, (), found), said=words, drawn=rest)
     if model.n == 1:
-        frame, rest = _lifted_window(frame), _lifted_shape(rest) if rest else None
+        frame, rest = lifted(frame), _lifted_shape(rest) if rest else None
     sheet = Sheet(frame)
     body = plane.region(rest, "rest") if rest else Layer()
     conflicts.keep_names_clear(body, sheet)
     gap = conflicts.shortfall(found, sheet)
     lines, absent = plane.constraints(looked, sheet, found.names)
     flat = (body, lines, gap, evidence.layer(looked, frame, sheet))
-    return _assembled(looked, frame, flat, rows=key(looked, {}, absent, found), status=words)
-
-
-def _status(looked: Subject) -> str:
-    """The region and its optimum in one line."""
-    seen, whole = looked.seen, looked.region
-    kind = "single point" if seen.dimension == 0 else f"{seen.status} region"
-    flat = f", flat (dimension {seen.dimension})" if 0 < seen.dimension < len(looked.axes) else ""
-    corners = f"{len(seen.vertices)} {'vertex' if len(seen.vertices) == 1 else 'vertices'}"
-    text = f"{kind}{flat}, {corners if not seen.lines else 'no vertex (it contains a line)'}"
-    if whole.outcome == "unbounded":
-        return f"{text}; the objective has no optimum: it improves without end"
-    if whole.value is None:
-        return text
-    if whole.lines:
-        return f"{text}; optimum {short(whole.value)} along a whole line"
-    places = [coordinates(whole.vertices[k].point) for k in (whole.optimal.vertices if whole.optimal else ())]
-    where = f" at {places[0]}" if len(places) == 1 else f", tied between {len(places)} vertices" if places else ""
-    onward = " and on without end" if whole.optimal and whole.optimal.rays else ""
-    return f"{text}; optimum {short(whole.value)}{where}{onward}"
+    return _settled(looked, sheet, flat, absent=absent, found=found, said=words)
 
 
 def _assembled(
@@ -220,7 +230,7 @@ def _assembled(
     layers: tuple[Layer, ...],
     *,
     rows: tuple[KeyPart, ...],
-    status: str,
+    said: str,
     drawn: Shape | None = None,
 ) -> Scene:
     model = looked.model
@@ -229,17 +239,16 @@ def _assembled(
     if looked.projected:
         named = f"{named}: projection of {model.n} variables onto {', '.join(looked.axes)}"
     aim = model.objective.text(model.variables) if model.objective else "no objective"
-    titles = [f"{name} [{model.unit(name)}]" if model.unit(name) else name for name in looked.axes]
-    titles += [""] * (2 - len(titles))
     return Scene(
-        axes=tuple(Axis(*parts) for parts in zip(titles, frame.low, frame.high, strict=True)),
+        axes=tuple(Axis(*parts) for parts in zip(titles_of(model, looked.axes), frame.low, frame.high, strict=True)),
         scale=frame.scale,
         title=named,
-        subtitle=f"{aim}\n{status}",
+        subtitle=f"{aim}\n{said}",
         polygons=tuple(item for layer in layers for item in layer.polygons),
         lines=tuple(item for layer in layers for item in layer.lines),
         marks=tuple(item for layer in layers for item in layer.marks),
         labels=tuple(item for layer in layers for item in layer.labels),
         key=evidence.part(looked) + rows,
-        camera=looked.view.camera or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
+        camera=named_eye(looked.view.camera, looked.axes) or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
+        paper=frame.paper,
     )

@@ -5,8 +5,9 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 
-from polywalk.drawing.placing import Sheet, about
+from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import Label, Layer, Line, Point, Polygon
+from polywalk.drawing.settling import ring
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.space import inner, slice_of, uphill
 from polywalk.drawing.subject import floats, planar
@@ -57,15 +58,15 @@ def conflict(model: Model) -> Conflict:
     return Conflict(names, *left[0]) if left else Conflict(names, None, None)
 
 
-def window(model: Model, found: Conflict) -> Window:
+def window(model: Model, found: Conflict, paper: Point) -> Window:
     """A window that shows the conflict: what would be left, and the border that nothing left reaches."""
     if found.rest is None or found.lifted is None:
-        return around(crossings([model.constraint(name) for name in found.names], model.n))
+        return around(crossings([model.constraint(name) for name in found.names], model.n), paper=paper)
     points = [floats(point) for point in found.rest.base]
     if not found.lifted.is_constant:
         points += gap(found)
     rays = [floats(ray.direction) for ray in found.rest.rays]
-    return around(points, rays, [floats(line) for line in found.rest.lines])
+    return around(points, rays, [floats(line) for line in found.rest.lines], paper)
 
 
 def faces(model: Model, found: Conflict, rest: Shape | None) -> Layer:
@@ -102,13 +103,13 @@ def shortfall(found: Conflict, sheet: Sheet | None) -> Layer:
     ends = tuple(planar(point) for point in gap(found))
     if not ends or found.short is None or found.lifted is None:
         return Layer()
-    text = f"{short(found.short)} short"
+    text = f"missed by {short(found.short)}"
     middle = tuple(sum(values) / 2 for values in zip(*ends, strict=True))
     if sheet is None:
         label = Label(text, middle, "name")
     else:
         sheet.lines.append((sheet.pixel(ends[0]), sheet.pixel(ends[1])))
-        label = sheet.place(text, about(sheet.pixel(middle), text), "name")
+        label = Label(text, middle, "name", spots=tuple(ring(sheet.pixel(middle), text, "name", 4.0)))
     return Layer(lines=(Line((ends,), "short", name=text),), labels=(label,))
 
 

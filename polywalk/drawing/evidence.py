@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from polywalk.drawing.placing import Sheet, about
-from polywalk.drawing.plane import BEYOND, chord
+from polywalk.drawing.placing import Sheet
+from polywalk.drawing.plane import BEYOND, RADII, chord
 from polywalk.drawing.scene import KeyPart, KeyRow, Label, Layer, Line, Mark, Point
+from polywalk.drawing.settling import ring
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.space import exit_point
 from polywalk.drawing.subject import Subject, planar
@@ -100,8 +101,9 @@ def _labels(places: dict[Point, list[int]], frame: Window, sheet: Sheet | None) 
         return [Label(text, place, "evidence name", shift=(18, -18)) for place, text in texts.items()]
     middle = sheet.pixel(frame.middle)
     for place in places:
-        sheet.keep_clear(place, 16.0)
-    return [
-        sheet.place(text, about(sheet.pixel(place), text, 26.0, middle), "evidence name")
-        for place, text in texts.items()
-    ]
+        sheet.keep_clear(place, RADII["evidence"])
+    found = []
+    for place, text in texts.items():
+        spots = ring(sheet.pixel(place), text, "evidence name", RADII["evidence"], middle)
+        found.append(Label(text, place, "evidence name", spots=tuple(spots)))
+    return found

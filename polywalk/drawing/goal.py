@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from polywalk.drawing.placing import Sheet, about, beside, upright
+from polywalk.drawing.placing import Sheet, upright
 from polywalk.drawing.plane import BEYOND, chord
 from polywalk.drawing.scene import Label, Layer, Line, Polygon
+from polywalk.drawing.settling import beside_line, ring
 from polywalk.drawing.space import slice_of, uphill
 from polywalk.drawing.subject import Subject, floats, planar
 from polywalk.drawing.window import Window
@@ -48,7 +49,8 @@ def _direction(subject: Subject, goal: Objective, window: Window, sheet: Sheet |
         return Layer(lines=(line,), labels=(Label(TREND[goal.goal], head, "note", shift=(0, 10)),))
     end = sheet.pixel(head)
     sheet.lines.append((sheet.pixel(foot), end))
-    return Layer(lines=(line,), labels=(sheet.place(TREND[goal.goal], about(end, TREND[goal.goal]), "note"),))
+    spots = tuple(ring(end, TREND[goal.goal], "note", 4.0, sheet.pixel(foot)))
+    return Layer(lines=(line,), labels=(Label(TREND[goal.goal], head, "note", spots=spots),))
 
 
 def _near(subject: Subject, window: Window) -> Window:
@@ -59,6 +61,7 @@ def _near(subject: Subject, window: Window) -> Window:
     return Window(
         tuple(a - PATCH * length for a, length in zip(low, window.extent, strict=True)),
         tuple(b + PATCH * length for b, length in zip(high, window.extent, strict=True)),
+        window.paper,
     )
 
 
@@ -82,6 +85,7 @@ def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | Non
         tuple(x + move for x, move in zip(window.low, uphill(planar(floats(goal.upward)), window), strict=True))
     )
     sheet.lines.append((start, end))
-    label = sheet.place(text, beside(start, end, normal), "note", angle=upright(start, end))
+    spots = tuple(beside_line(start, end, normal, (text, "note"), upright(start, end)))
+    label = Label(text, ends[0], "note", spots=spots)
     long = chord(row, window.grown(BEYOND)) or ends
     return Layer(lines=(Line((long,), "level line", name=text),), labels=(label,))

@@ -111,6 +111,10 @@ def _walks(subject: Subject) -> tuple[KeyRow, ...]:
     rows = [_walk(subject, index, walk) for index, walk in enumerate(subject.view.walks)]
     if any(walk.pivots for walk in subject.view.walks):
         rows.append(KeyRow("start", "where the first walk starts; circled numbers count its pivots"))
+    if any(pivot.phase == 1 for walk in subject.view.walks for pivot in walk.pivots):
+        rows.append(
+            KeyRow("phase 1", "Phase I: the search for a first allowed plan, with an auxiliary that is no decision")
+        )
     return tuple(rows)
 
 

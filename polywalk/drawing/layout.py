@@ -43,7 +43,7 @@ def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             continue
         style = theme.style(label.role, label.index)
         font = {"size": style.size, "color": style.colour, "family": FONT}
-        text = f"<b>{html(label.text)}</b>" if label.role in {"point", "target"} else html(label.text)
+        text = f"<b>{html(label.text)}</b>" if label.role in {"point", "target", "part"} else html(label.text)
         note: dict[str, Any] = {
             "x": label.point[0],
             "y": label.point[1],
@@ -52,7 +52,7 @@ def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             "font": font,
         }
         note |= {"textangle": -label.angle, "xanchor": "center", "yanchor": "middle", "borderpad": 1}
-        if label.target or label.role == "target":
+        if label.target or label.role in {"target", "part", "tag"}:
             note |= {"bgcolor": theme.paper, "bordercolor": style.colour, "borderwidth": 1}
         if label.target:
             note |= {"x": label.target[0], "y": label.target[1], "showarrow": True, "arrowhead": 0, "arrowwidth": 1}
@@ -85,6 +85,8 @@ def _space(drawn: Scene, theme: Theme) -> dict[str, Any]:
     drawn_length = [(axis.high - axis.low) * unit for axis, unit in zip(drawn.axes, drawn.scale, strict=True)]
     size = _size(drawn)
     x, y, z = drawn.camera
+    if not (x or y):
+        y = -0.001 * z  # from straight above, which way is up would be left open
     far = 1.9 / (x * x + y * y + z * z) ** 0.5
     eye = {"x": x * far, "y": y * far, "z": z * far}
     space: dict[str, Any] = {

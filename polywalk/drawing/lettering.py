@@ -1,4 +1,4 @@
-"""Labels of a solid scene on paper: tags and numbers where they belong, words where they cover least."""
+"""Labels of a solid scene on paper: tags and numbers where they belong, words where there is room."""
 
 from __future__ import annotations
 
@@ -7,15 +7,15 @@ from dataclasses import replace
 from itertools import pairwise
 
 from polywalk.drawing.paper import Paper
-from polywalk.drawing.placing import NEAR, Sheet, about, aside, box, contains, number_spot, overlap
-from polywalk.drawing.scene import Label, Line, Point, Polygon, Scene
-from polywalk.drawing.window import PAPER, Window
+from polywalk.drawing.paths import number_spots
+from polywalk.drawing.placing import aside, contains
+from polywalk.drawing.plane import RADII
+from polywalk.drawing.scene import KeyPart, Label, Line, Mark, Point, Polygon, Scene, Spot
+from polywalk.drawing.settling import Desk, led, ring, settled, unplaced
+from polywalk.drawing.tiles import Tile, halves
 
 APART = 6.0
 """Pixels between walks that share an edge."""
-
-CROWDED = 1000.0
-"""The cost of covering a number or a mark: from there on a tag gives way."""
 
 Faces = tuple[tuple[Polygon, bool], ...]
 
@@ -27,69 +27,70 @@ def beside_itself(on: Paper, part: Sequence[Point], index: int, count: int) -> t
     return tuple((x + move[0], y + move[1]) for x, y in flat)
 
 
-def labels(scene: Scene, on: Paper, faces: Faces, lines: list[Line], frame: Sequence[Label]) -> tuple[Label, ...]:
-    """All labels on paper.
+def labels(
+    scene: Scene, on: Paper, faces: Faces, lines: list[Line], frame: Sequence[Label]
+) -> tuple[tuple[Label, ...], tuple[KeyPart, ...]]:
+    """All labels on paper, and the part of the key for those that found no room.
 
     ``faces`` are the polygons of the body, each with whether it faces the eye; ``lines`` and ``frame`` are already on
     paper and are kept clear.
     """
-    sheet = Sheet(Window((0.0, 0.0), PAPER))
-    sheet.lines = [(a, b) for line in lines for part in line.parts for a, b in pairwise(part)]
-    sheet.boxes += [box(label.text, label.point) for label in frame]
+    desk = Desk(scene.paper)
+    desk.lines = [(a, b) for line in lines if line.role != "grid" for part in line.parts for a, b in pairwise(part)]
     for mark in scene.marks:
-        sheet.keep_clear(on.at(mark.point), 8.0)
+        desk.keep_clear(on.at(mark.point), RADII.get(mark.role, 8.0))
     count = 1 + max((label.index for label in scene.labels if label.role == "step"), default=0)
-    numbers = [_number(sheet, on, item, count) for item in scene.labels if item.role == "step"]
-    tags = [_tag(sheet, on, item, faces) for item in scene.labels if item.role == "tag"]
-    middle = (PAPER[0] / 2, PAPER[1] / 2)
-    names = [
-        sheet.place(mark.text, about(on.at(mark.point), mark.text, 15.0, middle, NEAR), "point")
-        for mark in scene.marks
-        if mark.key is not None
-    ]
-    words = [_word(sheet, on, item) for item in scene.labels if item.role not in {"step", "tag"}]
-    return (*(_widened(sheet, on, tag, faces) for tag in tags), *numbers, *names, *words)
+    asked = [*frame, *(_asked(on, item, faces, count) for item in scene.labels)]
+    placed, left = settled(desk, [*asked, *_names(scene, on)])
+    return tuple(_widened(desk, on, label, faces) for label in placed), unplaced([one for one in left if one.hover])
 
 
-def _number(sheet: Sheet, on: Paper, item: Label, count: int) -> Label:
-    start, end = beside_itself(on, item.along or (item.point, item.point), item.index, count)
-    spot = number_spot(start, end, item.index, count)
-    sheet.keep_clear(spot, 9.0)
-    return replace(item, point=spot)
+def _names(scene: Scene, on: Paper) -> list[Label]:
+    """The names of the vertices beside their marks."""
+    radii: dict[Point, float] = {}
+    for mark in scene.marks:
+        radii[mark.point] = max(radii.get(mark.point, 0.0), RADII.get(mark.role, 8.0))
+    middle = (scene.paper[0] / 2, scene.paper[1] / 2)
+    return [_name(on.at(mark.point), mark, radii[mark.point], middle) for mark in scene.marks if mark.key is not None]
 
 
-def _tag(sheet: Sheet, on: Paper, item: Label, faces: Faces) -> Label:
-    """The letter of a side at its middle; where that is taken (an edge may carry a number), a little beside."""
+def _name(spot: Point, mark: Mark, radius: float, middle: Point) -> Label:
+    spots = tuple(ring(spot, mark.text, "point", radius, middle))
+    return Label(mark.text, spot, "point", hover=mark.text, spots=spots)
+
+
+def _asked(on: Paper, item: Label, faces: Faces, count: int) -> Label:
+    """A label of the scene with its places on paper."""
     spot = on.at(item.point)
-    behind = any(not seen and _same(item.point, face) for face, seen in faces)
-    if sheet.cost(box(item.text, spot)) >= CROWDED:
-        spot = min(about(spot, item.text), key=lambda place: sheet.cost(box(item.text, place)))
-    sheet.keep_clear(spot, 8.0)
-    return replace(item, point=spot, role="back tag" if behind else "tag")
+    said = item.longer or item.text
+    if item.role == "step":
+        start, end = beside_itself(on, item.along or (item.point, item.point), item.index, count)
+        return replace(item, hover=said, spots=tuple(number_spots(start, end, item.index, count)))
+    if item.role == "tag":
+        behind = any(not seen and _same(item.point, face) for face, seen in faces)
+        spots = (Spot(spot), *ring(spot, item.text, "tag", 2.0))
+        return replace(item, hover=said, role="back tag" if behind else "tag", spots=spots)
+    places = led(spot, item.text, item.role, 12.0) if item.target else ring(spot, item.text, item.role, 6.0)
+    return replace(item, hover=said, target=None, spots=tuple(places))
 
 
-def _widened(sheet: Sheet, on: Paper, tag: Label, faces: Faces) -> Label:
+def _widened(desk: Desk, on: Paper, tag: Label, faces: Faces) -> Label:
     """The tag with its constraint's name, where the face it stands on has room for it."""
-    area = box(tag.longer, tag.point)
-    own = box(tag.text, tag.point)
-    corners = [(area[k], area[m]) for k in (0, 2) for m in (1, 3)]
-    roomy = any(seen and _holds(on, face, corners) for face, seen in faces)
-    free = sum(overlap(area, other) for other in sheet.boxes if overlap(own, other) == 0) == 0
-    if tag.role != "tag" or not tag.longer or not roomy or not free:
+    if tag.role != "tag" or not tag.longer or tag.target:
         return tag
-    sheet.boxes.append(area)
+    area, own = Tile(tag.point, halves(tag.longer, "tag")), Tile(tag.point, halves(tag.text, "tag"))
+    corners = [(tag.point[0] + x * area.half[0], tag.point[1] + y * area.half[1]) for x in (-1, 1) for y in (-1, 1)]
+    roomy = any(seen and _holds(on, face, corners) for face, seen in faces)
+    others = Desk(desk.paper, [tile for tile in desk.tiles if tile != own], desk.lines)
+    if not roomy or not others.free(area):
+        return tag
+    desk.tiles.append(area)
     return replace(tag, text=tag.longer)
 
 
 def _holds(on: Paper, face: Polygon, corners: Sequence[Point]) -> bool:
     flat = tuple(on.at(point) for point in face.points)
     return all(contains(flat, corner) for corner in corners)
-
-
-def _word(sheet: Sheet, on: Paper, item: Label) -> Label:
-    spot = on.at(item.point)
-    found = sheet.place(item.text, about(spot, item.text, 30.0 if item.target else 14.0), item.role, item.index)
-    return replace(found, target=spot if item.target else None)
 
 
 def _same(point: Point, face: Polygon) -> bool:

@@ -7,11 +7,21 @@ from dataclasses import dataclass
 from math import floor, hypot, log10
 
 from polywalk.drawing.camera import Camera
-from polywalk.drawing.scene import Label, Line, Point, Scene
-from polywalk.drawing.window import PAPER
+from polywalk.drawing.letters import clipped
+from polywalk.drawing.placing import upright
+from polywalk.drawing.scene import Label, Line, Point, Scene, Spot
+from polywalk.drawing.tiles import USUAL, halves
 
 MARGIN = 52.0
-"""Pixels kept free around the box for the names of its axes."""
+"""Pixels kept free around the box for the names of its axes, on paper that is wide enough; else SHARE of its width."""
+
+SHARE = 0.13
+
+UPRIGHT = 60.0
+"""From so many degrees on the name of an axis is written along it."""
+
+SHORTEST, APART = 36.0, 24.0
+"""An axis shorter than this (pixels) is seen from its end and not written; its numbers are at least so far apart."""
 
 
 @dataclass(frozen=True)
@@ -29,14 +39,16 @@ class Paper:
 
 
 def paper(scene: Scene) -> Paper:
-    """The projection that fits the scene's box onto the paper."""
+    """The projection that fits the scene's box and all its lines onto the paper."""
     camera = Camera(scene.camera, scene.scale)
-    seen = [camera.see(corner) for corner in box(scene)]
+    points = [*box(scene), *(point for line in scene.lines for part in line.parts for point in part)]
+    seen = [camera.see(point) for point in points]
     low = [min(values) for values in zip(*seen, strict=True)][:2]
     high = [max(values) for values in zip(*seen, strict=True)][:2]
-    room = [(size - 2 * MARGIN) / (b - a) for size, a, b in zip(PAPER, low, high, strict=True)]
+    margin = min(MARGIN, SHARE * scene.paper[0])
+    room = [(size - 2 * margin) / (b - a) for size, a, b in zip(scene.paper, low, high, strict=True)]
     unit = min(room)
-    shift = tuple((size - unit * (a + b)) / 2 for size, a, b in zip(PAPER, low, high, strict=True))
+    shift = tuple((size - unit * (a + b)) / 2 for size, a, b in zip(scene.paper, low, high, strict=True))
     return Paper(camera, unit, shift)
 
 
@@ -68,21 +80,47 @@ def frame(scene: Scene, on: Paper) -> tuple[list[Line], list[Label]]:
     for k, axis in enumerate(scene.axes):
         start = _edge(scene, on, k)
         end = tuple(axis.high if j == k else value for j, value in enumerate(start))
+        length = hypot(on.at(end)[0] - on.at(start)[0], on.at(end)[1] - on.at(start)[1])
+        if length < SHORTEST:
+            continue
         lines.append(Line(((on.at(start), on.at(end)),), "axis"))
         out = _outward(on.at(start), on.at(end), middle)
-        for value in ticks(axis.low, axis.high):
+        for value in ticks(axis.low, axis.high, max(1, min(6, int(length / APART)))):
             point = tuple(value if j == k else x for j, x in enumerate(start))
             foot = on.at(point)
             text = f"{value:.6g}".replace("-", "−")
-            labels.append(Label(text, (foot[0] + 14 * out[0], foot[1] + 11 * out[1]), "note"))
+            labels.append(Label(text, foot, "tick", spots=(_tick(foot, out, text),)))
             lines.append(Line(((foot, (foot[0] + 4 * out[0], foot[1] + 4 * out[1])),), "axis"))
             if k < 2:
                 other = tuple(low[j] + high[j] - x if j == 1 - k else x for j, x in enumerate(point))
                 lines.append(Line(((foot, on.at(other)),), "grid"))
-        half = tuple((a + b) / 2 for a, b in zip(on.at(start), on.at(end), strict=True))
-        away = 28.0 + 3.5 * len(axis.title) * abs(out[0])
-        labels.append(Label(axis.title, (half[0] + away * out[0], half[1] + 34 * out[1]), "name"))
+        labels.append(_title(axis.title, on.at(start), on.at(end), out, scene.paper))
     return lines, labels
+
+
+def _tick(foot: Point, out: Point, text: str) -> Spot:
+    """Where the number of a scale stands: off its foot by half its own size."""
+    wide, high = halves(text, "tick")
+    return Spot((foot[0] + (5 + wide) * out[0], foot[1] + (5 + high) * out[1]))
+
+
+def _title(text: str, start: Point, end: Point, out: Point, page: Point) -> Label:
+    """The name of an axis beside its middle, or as near as there is room; too long a name is cut on the drawing."""
+    shown = clipped(text, USUAL, 0.42 * page[0])
+    wide, high = halves(shown, "name")
+    spots = []
+    turn = upright(start, end)
+    if abs(turn) > UPRIGHT:
+        x, y = (start[0] + end[0]) / 2, (start[1] + end[1]) / 2
+        spots = [Spot((x + out[0] * away, y + out[1] * away), turn) for away in (34.0, 40.0, 28.0, 46.0, 22.0)]
+        spots.append(Spot((min(max(end[0], wide + 3), page[0] - wide - 3), end[1] + 4 + high)))
+    for distance in (24.0, 30.0, 38.0, 48.0, 14.0):
+        for share in (0.5, 0.6, 0.4, 0.75, 0.25, 0.9, 0.1, 1.0, 0.0):
+            x, y = (a + share * (b - a) for a, b in zip(start, end, strict=True))
+            centre = (x + out[0] * (distance + wide), y + out[1] * (distance + high))
+            edge = min(max(centre[0], wide + 3), page[0] - wide - 3), min(max(centre[1], high + 3), page[1] - high - 3)
+            spots.append(Spot(edge))
+    return Label(shown, start, "axis name", hover=text, spots=tuple(spots))
 
 
 def _edge(scene: Scene, on: Paper, k: int) -> Point:

@@ -6,10 +6,12 @@ the middle of the region, so that none hides another.
 
 from __future__ import annotations
 
-from dataclasses import dataclass, replace
+from collections.abc import Iterator
+from dataclasses import dataclass
 
-from polywalk.drawing.placing import Sheet, about, aside, number_spot
-from polywalk.drawing.scene import Label, Layer, Line, Mark, Point
+from polywalk.drawing.placing import BESIDE, Sheet, aside, number_spot
+from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Spot
+from polywalk.drawing.settling import led
 from polywalk.drawing.space import exit_point
 from polywalk.drawing.subject import Subject, planar
 from polywalk.drawing.window import Window
@@ -100,7 +102,8 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
             role = "walk rest"
         parts.setdefault(role, []).append(_shifted(frame, index, leg))
         if frame.sheet is not None:
-            frame.sheet.lines.append((frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)))
+            start, end = _shifted(frame, index, leg)
+            frame.sheet.lines.append((frame.sheet.pixel(start), frame.sheet.pixel(end)))
     name = walk_text(frame.subject.view.walks[index])
     parts = parts or {"walk": []}  # a walk that never moves still has its place in the legend
     return [Line(tuple(found), role, index, name, arrow="end") for role, found in parts.items()]
@@ -113,12 +116,28 @@ def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
             continue
         start, end = _shifted(frame, index, leg)
         spot = tuple((a + b) / 2 for a, b in zip(start, end, strict=True))
+        spots: tuple[Spot, ...] = ()
         if frame.sheet is not None:
-            ends = (frame.sheet.pixel(start), frame.sheet.pixel(end))
-            spot = frame.sheet.unpixel(number_spot(*ends, index, frame.count))
-            frame.sheet.keep_clear(spot, 9.0)
-        labels.append(Label(str(leg.pivot.number), spot, "step", index, along=(start, end)))
+            spots = tuple(number_spots(frame.sheet.pixel(start), frame.sheet.pixel(end), index, frame.count))
+        said = f"step {leg.pivot.number} of {frame.subject.view.walks[index].rule}"
+        number = str(leg.pivot.number)
+        labels.append(Label(number, spot, "step", index, along=(start, end), longer=said, spots=spots))
     return labels
+
+
+def number_spots(start: Point, end: Point, index: int, count: int) -> Iterator[Spot]:
+    """Where the number of a step may stand: on its segment, or beside it (pixels)."""
+    yield Spot(number_spot(start, end, index, count))
+    across = aside(start, end, BESIDE)
+    shares = (0.5, 0.4, 0.6, 0.32, 0.68, 0.25, 0.75, 0.18, 0.82)
+    for side in (0.0, 1.0, -1.0, 2.0, -2.0, 3.0, -3.0):
+        for share in shares:
+            yield Spot(
+                (
+                    start[0] + share * (end[0] - start[0]) + side * across[0],
+                    start[1] + share * (end[1] - start[1]) + side * across[1],
+                )
+            )
 
 
 def stays(legs: list[Leg]) -> dict[Point, dict[str, list[int]]]:
@@ -146,8 +165,8 @@ def _stays(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
         if frame.sheet is None:
             labels.append(Label(text, point, "stay", index, target=point))
         else:
-            places = about(frame.sheet.pixel(point), text, 30.0, frame.sheet.pixel(frame.middle))
-            labels.append(replace(frame.sheet.place(text, places, "stay", index), target=point))
+            spots = led(frame.sheet.pixel(point), text, "stay", 12.0, frame.sheet.pixel(frame.middle))
+            labels.append(Label(text, point, "stay", index, target=point, spots=tuple(spots)))
     return labels
 
 

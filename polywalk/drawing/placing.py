@@ -3,11 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from math import atan2, cos, degrees, hypot, radians, sin
 
+from polywalk.drawing.letters import width
 from polywalk.drawing.scene import Label, Point
-from polywalk.drawing.window import PAPER, Window
+from polywalk.drawing.settling import Desk, settled
+from polywalk.drawing.tiles import Tile
+from polywalk.drawing.window import Window
 
 GLYPH = 0.56
 """Mean width of a letter, as a share of the text's size (DejaVu Sans, measured on the names of the scenarios)."""
@@ -26,7 +29,7 @@ Box = tuple[float, float, float, float]  # left, bottom, right, top in pixels
 
 def box(text: str, centre: Point, size: float = SIZE) -> Box:
     """The rectangle that centred text covers, in pixels."""
-    half, tall = GLYPH * size * max(len(text), 1) / 2 + 2, size * 0.66
+    half, tall = width(text, size) / 2 + 2, size * 0.66
     return centre[0] - half, centre[1] - tall, centre[0] + half, centre[1] + tall
 
 
@@ -34,7 +37,7 @@ def boxes(text: str, centre: Point, angle: float, size: float = SIZE) -> list[Bo
     """Boxes that together cover a text turned by an angle: one if it lies flat, else a row of squares."""
     if abs(angle) < 3:
         return [box(text, centre, size)]
-    half, tall = GLYPH * size * max(len(text), 1) / 2, size * 0.66
+    half, tall = width(text, size) / 2, size * 0.66
     count = max(int(half / tall), 1)
     way = (cos(radians(angle)), sin(radians(angle)))
     spots = [(2 * k / count - 1) * (half - tall / 2) for k in range(count + 1)]
@@ -97,11 +100,29 @@ class Sheet:
 
     def cost(self, area: Box) -> float:
         """How much a box would cover: frame, text and marks weigh most, then lines, then the region's fill."""
-        out = sum(max(value, 0.0) for value in (-area[0], -area[1], area[2] - PAPER[0], area[3] - PAPER[1]))
+        out = sum(
+            max(value, 0.0)
+            for value in (-area[0], -area[1], area[2] - self.window.paper[0], area[3] - self.window.paper[1])
+        )
         taken = sum(overlap(area, other) for other in self.boxes)
         crossed = sum(crosses(area, start, end) for start, end in self.lines)
         covered = sum(contains(fill, ((area[0] + area[2]) / 2, (area[1] + area[3]) / 2)) for fill in self.fills)
         return 400 * out + 20 * taken + 60 * crossed + 90 * covered
+
+    def covered(self, pixel: Point) -> bool:
+        """Whether a place lies on a fill that is to be kept clear."""
+        return any(contains(fill, pixel) for fill in self.fills)
+
+    def settle(self, labels: Iterable[Label]) -> tuple[tuple[Label, ...], tuple[Label, ...]]:
+        """The labels where they stand, and those that found no place."""
+        tiles = [Tile(((a + c) / 2, (b + d) / 2), ((c - a) / 2, (d - b) / 2)) for a, b, c, d in self.boxes]
+        desk = Desk(self.window.paper, tiles, list(self.lines))
+        placed, left = settled(desk, [replace(label, point=self.pixel(label.point)) for label in labels])
+        back = [
+            replace(label, point=self.unpixel(label.point), target=label.target and self.unpixel(label.target))
+            for label in placed
+        ]
+        return tuple(back), left
 
     def place(self, text: str, centres: Iterable[Point], role: str, index: int = 0, angle: float = 0.0) -> Label:
         """The label at the best of the given places (pixels); earlier candidates win ties."""

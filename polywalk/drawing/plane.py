@@ -4,14 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from math import hypot
+from string import ascii_lowercase
 
-from polywalk.drawing.placing import NEAR, Sheet, about, beside, upright
+from polywalk.drawing.placing import Sheet, upright
 from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon
+from polywalk.drawing.settling import beside_line, ring
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.subject import Subject, floats, planar
 from polywalk.drawing.window import Window
 from polywalk.model import SIGN, Constraint
 from polywalk.region import vertex_name
+
+RADII = {"vertex": 6.0, "optimum": 8.0, "degenerate": 11.5, "selected": 12.0, "start": 8.0, "evidence": 16.0}
+RADII |= {"lost": 7.0, "gained": 7.0, "old optimum": 11.0}
+"""Pixels around a mark that texts keep clear of, by its role."""
 
 HATCH_GAP, HATCH = 15.0, 7.0
 """Pixels between the short strokes on a constraint's forbidden side, and their length."""
@@ -41,7 +47,8 @@ def forbidden(row: Constraint, sheet: Sheet) -> Point:
     return (x / length, y / length)
 
 
-def _hatch(start: Point, end: Point, out: Point) -> Iterator[tuple[Point, Point]]:
+def hatching(start: Point, end: Point, out: Point) -> Iterator[tuple[Point, Point]]:
+    """Short strokes along a border, to the side it forbids (pixels)."""
     length = hypot(end[0] - start[0], end[1] - start[1])
     along = ((end[0] - start[0]) / length, (end[1] - start[1]) / length)
     stroke = tuple(HATCH * (0.8 * o + 0.6 * s) for o, s in zip(out, along, strict=True))
@@ -69,8 +76,11 @@ def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) 
         start, end = (sheet.pixel(point) for point in ends)
         lines.append(Line((ends,), role, index, row.name, hover))
         if row.sense != "==":
-            strokes = tuple((sheet.unpixel(a), sheet.unpixel(b)) for a, b in _hatch(start, end, forbidden(row, sheet)))
+            strokes = tuple(
+                (sheet.unpixel(a), sheet.unpixel(b)) for a, b in hatching(start, end, forbidden(row, sheet))
+            )
             lines.append(Line(strokes, "hatch", index, row.name))
+            sheet.lines += [(sheet.pixel(a), sheet.pixel(b)) for a, b in strokes]
     wanted.sort(key=lambda item: hypot(item[2][0] - item[3][0], item[2][1] - item[3][1]))
     labels = tuple(_name(sheet, *item) for item in wanted)
     return Layer(lines=tuple(lines), labels=labels), tuple(absent)
@@ -79,7 +89,14 @@ def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) 
 def _name(sheet: Sheet, index: int, row: Constraint, start: Point, end: Point) -> Label:
     out = forbidden(row, sheet)
     text = f"{row.name} ({SIGN['==']})" if row.sense == "==" else row.name
-    return sheet.place(text, beside(start, end, out), "name", index, upright(start, end))
+    spots = beside_line(start, end, out, (text, "name"), upright(start, end))
+    chosen = tuple(sorted(spots, key=lambda spot: sheet.covered(spot.centre)))
+    return Label(text, sheet.unpixel(start), "name", index, spots=chosen, shorter=letter_of(index), longer=row.name)
+
+
+def letter_of(index: int) -> str:
+    """A letter for a constraint, by its place: a to z, then aa, bb, ..."""
+    return ascii_lowercase[index % 26] * (1 + index // 26)
 
 
 def region(shape: Shape, role: str = "region") -> Layer:
@@ -109,10 +126,12 @@ def vertices(subject: Subject, sheet: Sheet | None) -> Layer:
         marks.append(Mark(points[subject.view.vertex], "selected"))
     if sheet is not None:
         middle = sheet.pixel(sheet.window.middle)
-        for point in points:
-            sheet.keep_clear(point, 8.0)
-        labels = [
-            sheet.place(vertex_name(k), about(sheet.pixel(point), vertex_name(k), 15.0, middle, NEAR), "point")
-            for k, point in enumerate(points)
-        ]
+        radii = dict.fromkeys(points, 0.0)
+        for mark in marks:
+            radii[mark.point] = max(radii.get(mark.point, 0.0), RADII[mark.role])
+        for point, radius in radii.items():
+            sheet.keep_clear(point, radius)
+        for k, point in enumerate(points):
+            spots = ring(sheet.pixel(point), vertex_name(k), "point", radii[point], middle)
+            labels.append(Label(vertex_name(k), point, "point", spots=tuple(spots)))
     return Layer(marks=tuple(marks), labels=tuple(labels))

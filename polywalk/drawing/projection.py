@@ -14,7 +14,6 @@ from polywalk.drawing.lettering import beside_itself, labels
 from polywalk.drawing.paper import Paper, frame, paper
 from polywalk.drawing.scene import Axis, Line, Point, Polygon, Scene
 from polywalk.drawing.space import cross, inner
-from polywalk.drawing.window import PAPER
 
 BODY = {"facet", "rest", "region"}
 WALKS = {"walk", "phase 1", "walk rest"}
@@ -30,20 +29,21 @@ def laid_flat(scene: Scene) -> Scene:
     lines = [part for item in scene.lines for part in _lines(on, item, front, count)]
     frame_lines, frame_labels = frame(scene, on)
     faces = tuple((item, item in front) for item in scene.polygons if item.role in BODY)
-    words = labels(scene, on, faces, lines, frame_labels)
+    words, left = labels(scene, on, faces, [*frame_lines, *lines], frame_labels)
     marks = tuple(
         replace(item, point=on.at(item.point), index=0 if item.point in visible or item.key is None else 1)
         for item in scene.marks
     )
-    axes = tuple(Axis("", 0.0, size) for size in PAPER)
+    axes = tuple(Axis("", 0.0, size) for size in scene.paper)
     return replace(
         scene,
         axes=axes,
         scale=(1.0, 1.0),
         polygons=polygons,
         lines=(*frame_lines, *lines),
-        labels=(*frame_labels, *words),
+        labels=words,
         marks=marks,
+        key=left + scene.key,
     )
 
 

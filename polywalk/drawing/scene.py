@@ -10,6 +10,9 @@ from dataclasses import dataclass
 
 Point = tuple[float, ...]
 
+PAPER: tuple[float, float] = (600.0, 460.0)
+"""Width and height in pixels that a drawing is laid out for, unless another paper is asked for; painters scale it."""
+
 
 @dataclass(frozen=True)
 class Polygon:
@@ -48,11 +51,21 @@ class Mark:
 
 
 @dataclass(frozen=True)
+class Spot:
+    """A place where a text may stand, in pixels of the paper: its centre, its turn, the point it is joined to."""
+
+    centre: Point
+    angle: float = 0.0
+    foot: Point | None = None
+
+
+@dataclass(frozen=True)
 class Label:
     """Text centred on a point, moved by ``shift`` pixels (right, up), turned by ``angle`` degrees.
 
     A label with a ``target`` is joined to that point by a thin line; a number that counts a step knows the segment
-    it lies ``along``; a tag is written as its ``longer`` text where there is room.
+    it lies ``along``; a tag is written as its ``longer`` text where there is room. While a scene is made, a label has
+    the ``spots`` it may take, and a ``shorter`` text for where none has room for the whole.
     """
 
     text: str
@@ -65,6 +78,8 @@ class Label:
     hover: str = ""
     along: tuple[Point, Point] | None = None
     longer: str = ""
+    spots: tuple[Spot, ...] = ()
+    shorter: str = ""
 
 
 @dataclass(frozen=True)
@@ -116,6 +131,7 @@ class Scene:
     labels: tuple[Label, ...] = ()
     key: tuple[KeyPart, ...] = ()
     camera: tuple[float, float, float] = (1.0, 1.0, 1.0)
+    paper: Point = PAPER
 
     @property
     def solid(self) -> bool:

@@ -3,29 +3,24 @@
 from __future__ import annotations
 
 import os
-import tempfile
+import re
 import warnings
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
 from polywalk.drawing.compose import Source, scene
+from polywalk.drawing.formats import FORMATS, MARGIN, Size
 from polywalk.drawing.projection import laid_flat
 from polywalk.drawing.scene import Scene
-from polywalk.drawing.static_key import KEY, ROW, TOP, key_lines, paint_key
+from polywalk.drawing.static_key import paint_key, planned
 from polywalk.drawing.strokes import label, line, mark, points, polygon
 from polywalk.drawing.theme import THEMES, Theme
 from polywalk.drawing.view import View, viewed
-from polywalk.drawing.window import PAPER
-from polywalk.errors import DrawingError
-
-LEFT, BOTTOM = 64.0, 54.0
-"""Pixels beside and below the picture for the axes' numbers."""
+from polywalk.drawing.writing import target_of, write
 
 PIXEL = 1 / 96
 """Inches a pixel."""
-
-ENDINGS = (".png", ".svg", ".pdf")
 
 
 @dataclass(frozen=True, repr=False)
@@ -73,9 +68,9 @@ def picture(
         Ends in .png, .svg or .pdf; an existing file is replaced only when the picture is complete. Without a path
         the picture is an SVG that only shows itself, with its letters as text, which keeps notebooks small.
     view : View, optional
-        Axes, walks, selection, camera, light, dark or grey.
+        Axes, walks, selection, camera, light, dark or grey, and the size: "page", "slide", "column" or "bare".
     **changes
-        Fields of View, for short: ``walks=[...]``, ``axes=("pump", "tank")``, ``mode="grey"``.
+        Fields of View, for short: ``walks=[...]``, ``axes=("pump", "tank")``, ``mode="grey"``, ``size="slide"``.
 
     Returns
     -------
@@ -99,33 +94,13 @@ def picture(
     target = None if path is None else target_of(Path(path))
     ending = target.suffix.lower()[1:] if target else "svg"
     looked = viewed(view, changes)
-    data = rendered(scene(source, looked), THEMES[looked.mode], ending, outlines=target is not None)
+    data = rendered(scene(source, looked), THEMES[looked.mode], ending, outlines=target is not None, size=looked.size)
     if target is not None:
         write(target, data)
     return Picture(data, ending, target)
 
 
-def target_of(path: Path) -> Path:
-    """The path, if a picture can be written there; raises DrawingError."""
-    if path.suffix.lower() not in ENDINGS:
-        raise DrawingError(f"expected a file ending in {', '.join(ENDINGS)}, got {path.name!r}.", culprit=path)
-    if not path.parent.is_dir():
-        raise DrawingError(f"the folder {str(path.parent)!r} does not exist; create it first.", culprit=path)
-    return path
-
-
-def write(target: Path, data: bytes) -> None:
-    """Replace a file in one step, so that it is never half-written."""
-    try:
-        with tempfile.NamedTemporaryFile(dir=target.parent, suffix=target.suffix, delete=False) as file:
-            file.write(data)
-        os.chmod(file.name, 0o644)
-        os.replace(file.name, target)
-    except OSError as error:
-        raise DrawingError(f"{str(target)!r} could not be written ({error.strerror}).", culprit=target) from error
-
-
-def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool = True) -> bytes:
+def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool = True, size: Size = "page") -> bytes:
     """The bytes of a scene's picture; the same for the same scene.
 
     An SVG holds its letters as outlines, so that it looks alike everywhere; without them it is a third as large, and
@@ -137,36 +112,40 @@ def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool 
     from matplotlib.backends.backend_agg import FigureCanvasAgg
     from matplotlib.figure import Figure
 
-    rows = key_lines(drawn.key)
-    height = max(PAPER[1] + BOTTOM + TOP, ROW * (len(rows) + 1) + TOP)
-    width = LEFT + PAPER[0] + KEY + 34
     fixed: Any = {
         "svg.hashsalt": "polywalk",
         "svg.fonttype": "path" if outlines else "none",
         "pdf.fonttype": 42,
         "font.family": "DejaVu Sans",
     }
+    flat, form = laid_flat(drawn) if drawn.solid else drawn, FORMATS[size]
+    plan = planned(flat, form)
     with mpl.rc_context(fixed), warnings.catch_warnings():
         warnings.filterwarnings("ignore", "Glyph .* missing")  # an emoji in a name becomes a box, nothing worse
-        figure = Figure(figsize=(width * PIXEL, height * PIXEL), facecolor=theme.paper)
+        figure = Figure(figsize=(form.width * PIXEL, plan.height * PIXEL), facecolor=theme.paper)
         FigureCanvasAgg(figure)
-        base = (height - TOP - PAPER[1]) / height
-        axes = figure.add_axes((LEFT / width, base, PAPER[0] / width, PAPER[1] / height))
-        _paint(axes, laid_flat(drawn) if drawn.solid else drawn, theme)
-        _head(figure, drawn, theme, width, height)
-        paint_key(figure, rows, theme, (LEFT + PAPER[0] + 28, width, height))
+        left, bottom = form.left / form.width, plan.bottom / plan.height
+        axes = figure.add_axes((left, bottom, plan.paper[0] / form.width, plan.paper[1] / plan.height))
+        _paint(axes, flat, theme)
+        for text in plan.head:
+            look: Any = {"fontsize": points(text.size), "fontweight": "bold" if text.bold else "normal"}
+            look |= {"ha": "left", "va": "top", "parse_math": False, "color": theme.text}
+            figure.text(MARGIN / form.width, 1 - text.top / plan.height, text.words, **look)
+        if plan.key:
+            paint_key(figure, plan, theme, form)
         out = BytesIO()
         stamp: dict[str, Any] = {"svg": {"Date": None}, "pdf": {"CreationDate": None}, "png": {"Software": None}}
-        figure.savefig(out, format=ending, dpi=192, facecolor=theme.paper, metadata=stamp[ending])
-    return out.getvalue()
+        figure.savefig(out, format=ending, dpi=192 * form.zoom, facecolor=theme.paper, metadata=stamp[ending])
+    return _resized(out.getvalue(), form.zoom) if ending == "svg" and form.zoom != 1 else out.getvalue()
 
 
-def _head(figure: Any, drawn: Scene, theme: Theme, width: float, height: float) -> None:
-    left = 18 / width
-    text = {"ha": "left", "va": "top", "parse_math": False, "color": theme.text}
-    figure.text(left, 1 - 12 / height, drawn.title, fontsize=points(17), fontweight="bold", **text)
-    for k, words in enumerate(drawn.subtitle.split("\n")):
-        figure.text(left, 1 - (36 + 18 * k) / height, words, fontsize=points(12.5), **text)
+def _resized(data: bytes, zoom: float) -> bytes:
+    """An SVG whose stated width and height are another; what is drawn scales with them."""
+
+    def larger(found: re.Match[bytes]) -> bytes:
+        return b'%b="%.6gpx"' % (found[1], float(found[2]) / 0.75 * zoom)
+
+    return re.sub(rb'(width|height)="([0-9.]+)pt"', larger, data, count=2)
 
 
 def _paint(axes: Any, drawn: Scene, theme: Theme) -> None:

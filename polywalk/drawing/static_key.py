@@ -1,82 +1,138 @@
-"""The key of a static picture: samples and words in a column beside it."""
+"""The head and the key of a static picture: where every line of them stands, and the key's samples."""
 
 from __future__ import annotations
 
-from textwrap import wrap
+from dataclasses import dataclass
 from typing import Any
 
-from polywalk.drawing.scene import KeyPart, KeyRow, Line, Mark
-from polywalk.drawing.strokes import DASH, line, mark, points
+from polywalk.drawing.formats import BOTTOM, MARGIN, Format
+from polywalk.drawing.letters import lines_of
+from polywalk.drawing.scene import KeyPart, KeyRow, Scene
+from polywalk.drawing.static_samples import sample
+from polywalk.drawing.strokes import points
 from polywalk.drawing.theme import Theme
 
-KEY = 425.0
-"""Width of the key in pixels."""
+ROW, INDENT = 14.0, 36.0
+"""Height of a line of the key, and the room for its samples, in pixels."""
 
-LETTERS = 66
-"""Letters a line of the key holds."""
+LETTER, HEADING = 10.5, 11.5
+"""Size of the key's letters and of those of its headings."""
 
-ROW, TOP = 14.0, 84.0
-"""Height of a line of the key, and of the title above it, in pixels."""
+STEP = {"heading": 1.15, "row": 1.0, "gap": 0.6}
+"""Height of the key's kinds of line, in rows."""
 
 
-def key_lines(parts: tuple[KeyPart, ...]) -> list[tuple[str, KeyRow | None, str]]:
-    """The key broken into lines: (kind, row on its first line, text)."""
-    lines: list[tuple[str, KeyRow | None, str]] = []
+@dataclass(frozen=True)
+class HeadLine:
+    """One line above the drawing: its words, and how many pixels below the picture's upper border it starts."""
+
+    words: str
+    top: float
+    size: float
+    bold: bool
+
+
+@dataclass(frozen=True)
+class KeyLine:
+    """One line of the key: its kind, the row whose sample it shows (on a row's first line), its words."""
+
+    kind: str
+    row: KeyRow | None
+    words: str
+
+
+@dataclass(frozen=True)
+class Plan:
+    """Where the head, the drawing and the key of a picture stand; in pixels.
+
+    ``bottom`` is below the drawing, ``key_top`` above the key.
+    """
+
+    height: float
+    paper: tuple[float, float]
+    bottom: float
+    head: tuple[HeadLine, ...]
+    key: tuple[KeyLine, ...]
+    key_top: float
+
+
+def planned(drawn: Scene, form: Format) -> Plan:
+    """The plan of a scene's picture."""
+    paper = (float(drawn.paper[0]), float(drawn.paper[1]))
+    if form.key == "none":
+        return Plan(paper[1] + BOTTOM + 8, paper, BOTTOM, (), (), 0.0)
+    if form.height is not None:
+        return _fixed(drawn, form, form.height)
+    head = tuple(_head(drawn, form.width - 2 * MARGIN, most=40))
+    top = max(head[-1].top + 30, 84.0 if form.key == "beside" else 0.0)
+    key_top = top - 4 if form.key == "beside" else top + paper[1] + BOTTOM
+    lines = key_lines(drawn.key, form.key_width)
+    height = max(top + paper[1] + BOTTOM, key_top + ROW * (sum(STEP[item.kind] for item in lines) + 1))
+    return Plan(height, paper, height - top - paper[1], head, tuple(lines), key_top)
+
+
+def _fixed(drawn: Scene, form: Format, height: float) -> Plan:
+    """The plan of a picture of one height: the key beside head and drawing, what may be left out of it last."""
+    head = tuple(_head(drawn, form.key_left - 2 * MARGIN, most=3))
+    top = max(head[-1].top + 30, 84.0)
+    paper = (float(drawn.paper[0]), min(float(drawn.paper[1]), height - top - BOTTOM))
+    parts = sorted(drawn.key, key=lambda part: part.heading.startswith("Vertices"))
+    lines = _cut(key_lines(tuple(parts), form.key_width), height - 2 * MARGIN)
+    return Plan(height, paper, height - top - paper[1], head, lines, MARGIN + 4)
+
+
+def _head(drawn: Scene, room: float, most: int) -> list[HeadLine]:
+    """Title and subtitle, broken into lines; past the most lines a paragraph may have, it ends in an ellipsis."""
+    found, top = list[HeadLine](), 12.0
+    for k, words in enumerate((drawn.title, *drawn.subtitle.split("\n"))):
+        size, bold, step = (17.0, True, 24.0) if k == 0 else (12.5, False, 18.0)
+        lines = lines_of(words, size, room, bold)
+        if len(lines) > most:
+            lines = [*lines[: most - 1], f"{lines[most - 1][:-2]}…"]
+        for text in lines:
+            found.append(HeadLine(text, top, size, bold))
+            top += step
+    return found
+
+
+def key_lines(parts: tuple[KeyPart, ...], room: float) -> list[KeyLine]:
+    """The key broken into lines."""
+    lines: list[KeyLine] = []
     for part in parts:
-        lines.append(("heading", None, part.heading))
+        lines += [KeyLine("heading", None, text) for text in lines_of(part.heading, HEADING, room, bold=True)]
         for row in part.rows:
-            words = wrap(row.text, LETTERS, subsequent_indent="") or [""]
-            lines += [("row", row if k == 0 else None, text) for k, text in enumerate(words)]
-        lines.append(("gap", None, ""))
+            words = lines_of(row.text, LETTER, room - INDENT)
+            lines += [KeyLine("row", row if k == 0 else None, text) for k, text in enumerate(words)]
+        lines.append(KeyLine("gap", None, ""))
     return lines
 
 
-def paint_key(
-    figure: Any, rows: list[tuple[str, KeyRow | None, str]], theme: Theme, place: tuple[float, float, float]
-) -> None:
-    left, width, height = place
-    axes = figure.add_axes((left / width, 0, KEY / width, 1))
-    axes.set_xlim(0, KEY)
-    axes.set_ylim(0, height)
+def _cut(lines: list[KeyLine], room: float) -> tuple[KeyLine, ...]:
+    """As many lines as there is room for; the last one tells how many rows are left out, and where they are."""
+    if ROW * sum(STEP[item.kind] for item in lines) <= room:
+        return tuple(lines)
+    kept, used = list[KeyLine](), 2.0
+    for item in lines:
+        used += STEP[item.kind]
+        if ROW * used > room:
+            break
+        kept.append(item)
+    left = sum(item.row is not None for item in lines[len(kept) :])
+    return (*kept, KeyLine("row", None, f'and {left} more rows, which size="page" has room for'))
+
+
+def paint_key(figure: Any, plan: Plan, theme: Theme, form: Format) -> None:
+    """Write the key's lines with their samples."""
+    axes = figure.add_axes((form.key_left / form.width, 0, form.key_width / form.width, 1))
+    axes.set_xlim(0, form.key_width)
+    axes.set_ylim(0, plan.height)
     axes.axis("off")
-    top = height - TOP + 4
-    for kind, row, text in rows:
-        if kind == "heading":
-            axes.text(0, top, text, fontsize=points(11.5), fontweight="bold", color=theme.text, va="center")
-        elif kind == "row":
-            _sample(axes, row, theme, top)
-            words = {"fontsize": points(10.5), "color": theme.text, "va": "center", "parse_math": False}
-            axes.text(36, top, text, **words)
-        top -= ROW * (0.6 if kind == "gap" else 1.15 if kind == "heading" else 1.0)
-
-
-def _sample(axes: Any, row: KeyRow | None, theme: Theme, top: float) -> None:
-    """The look of a role, in small, at the start of its line of the key."""
-    if row is None:
-        return
-    style = theme.style(row.role, row.index)
-    if row.tag:
-        axes.text(26, top, row.tag, fontsize=points(10.5), fontweight="bold", color=theme.text, ha="right", va="center")
-        if row.role in {"constraint", "conflict line"}:
-            axes.plot((0, 10), (top, top), color=style.colour, linewidth=points(3), linestyle=DASH[style.dash])
-        return
-    if row.role in {"optimum", "degenerate", "vertex", "moved", "stayed", "breakpoint", "now"}:
-        mark(axes, Mark((14.0, top), row.role), theme)
-    elif row.role in {"basis", "optimal basis", "first basis"}:
-        mark(axes, Mark((14.0, top), row.role), theme, shrink=0.24 if row.role == "first basis" else 0.34)
-    elif row.role in {"objective", "open edge", "pivot", "faint pivot", "exit", "faint exit", "other exit"}:
-        line(axes, Line((((0.0, top), (30.0, top)),), row.role, row.index, arrow="end"), theme)
-    elif row.role in {"rest", "beyond"}:
-        corners = (4, 26, 26, 4), (top - 5, top - 5, top + 5, top + 5)
-        alpha = 1.0 if row.role == "rest" else style.opacity
-        axes.fill(*corners, facecolor=style.fill, edgecolor=style.colour, alpha=alpha)
-    elif row.role == "hatch":
-        for k in range(4):
-            axes.plot((4 + 6 * k, 8 + 6 * k), (top + 1, top - 4), color=theme.text, linewidth=0.7)
-        axes.plot((2, 28), (top + 1, top + 1), color=theme.text, linewidth=1.2)
-    elif row.role == "start":
-        mark(axes, Mark((14.0, top), row.role), theme, shrink=0.75)
-    elif row.role in {"walk", "curve"}:  # without a head, so that its dash is seen
-        line(axes, Line((((0.0, top), (33.0, top)),), row.role, row.index), theme)
-    elif row.role in {"constraint", "conflict line", "level line", "hidden edge", "short", "exchange", "phase 1"}:
-        line(axes, Line((((2.0, top), (26.0, top)),), row.role, row.index), theme)
+    top = plan.height - plan.key_top
+    for item in plan.key:
+        words: Any = {"color": theme.text, "va": "center", "parse_math": False}
+        if item.kind == "heading":
+            axes.text(0, top, item.words, fontsize=points(HEADING), fontweight="bold", **words)
+        elif item.kind == "row":
+            sample(axes, item.row, theme, top)
+            axes.text(INDENT, top, item.words, fontsize=points(LETTER), **words)
+        top -= ROW * STEP[item.kind]

@@ -11,7 +11,18 @@ DASH = {"solid": "-", "dash": (0, (5, 3)), "dot": (0, (1.2, 2)), "dashdot": (0, 
 DASH |= {"longdash": (0, (8, 2)), "longdashdot": (0, (8, 2, 1.5, 2))}
 
 
-SYMBOLS = {"circle": "o", "ring": "o", "diamond": "D", "square ring": "s"}
+SYMBOLS = {
+    "circle": "o",
+    "ring": "o",
+    "diamond": "D",
+    "diamond ring": "D",
+    "square ring": "s",
+    "square": "s",
+    "cross": "x",
+}
+
+FILLS = {"cut off": "////", "added": ".."}
+"""Patterns of areas that are not told by their colour."""
 
 
 def points(pixels: float) -> float:
@@ -32,6 +43,10 @@ def polygon(axes: Any, item: Polygon, theme: Theme) -> None:
         linestyle=DASH[style.dash],
         zorder=DEPTH[item.role],
     )
+    if item.role in FILLS:
+        look = {"facecolor": "none", "edgecolor": style.colour, "hatch": FILLS[item.role], "linewidth": 0.0}
+        x, y = zip(*item.points, strict=True)
+        axes.fill(x, y, alpha=0.6, zorder=DEPTH[item.role], **look)
 
 
 def line(axes: Any, item: Line, theme: Theme) -> None:
@@ -79,9 +94,9 @@ def mark(axes: Any, item: Mark, theme: Theme, shrink: float = 1.0) -> None:
         item.point[0],
         item.point[1],
         SYMBOLS[style.symbol],
-        markersize=points(style.size * shrink * (0.8 if style.symbol == "diamond" else 1)),
+        markersize=points(style.size * shrink * (0.8 if style.symbol.startswith("diamond") else 1)),
         markerfacecolor=("none" if not style.fill else theme.paper) if hollow else style.fill,
-        markeredgecolor=(style.fill or style.colour) if hollow else style.colour,
+        markeredgecolor=style.colour if not style.fill or not hollow else style.fill,
         markeredgewidth=points(max(style.width, 1.2 if hollow else 1.0)),
         zorder=DEPTH[item.role],
     )
@@ -95,7 +110,7 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
         axes.plot(x, y, color=style.colour, linewidth=points(0.9), zorder=DEPTH["note"])
     size = {"step": 10.0}.get(item.role, style.size)
     frame = None
-    if item.role in {"step", "tag", "back tag", "stay", "end", "ends", "target"}:
+    if item.role in {"step", "tag", "back tag", "stay", "end", "ends", "target", "part"}:
         shape = "circle,pad=0.22" if item.role == "step" else "round,pad=0.22"
         frame = {
             "boxstyle": shape,
@@ -104,6 +119,8 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
             "linewidth": 1.4 if item.role == "tag" else 0.8,
         }
         frame |= {"linestyle": "--" if item.role == "back tag" else "-", "alpha": 0.92}
+    elif item.target:  # the line to its point ends where the text begins
+        frame = {"boxstyle": "square,pad=0.15", "facecolor": theme.paper, "edgecolor": "none"}
     axes.text(
         item.point[0],
         item.point[1],

@@ -97,6 +97,12 @@ def subject(source: Model | Region, view: View) -> Subject:
     return Subject(whole, seen, view)
 
 
+def titles_of(model: Model, axes: tuple[str, ...]) -> tuple[str, ...]:
+    """What the axes are called, with their units; a single one gets a second without a name."""
+    titles = tuple(f"{name} [{model.unit(name)}]" if model.unit(name) else name for name in axes)
+    return (*titles, "") if len(titles) == 1 else titles
+
+
 def floats(point: tuple[Fraction, ...]) -> tuple[float, ...]:
     """The point rounded for drawing."""
     return tuple(float(value) for value in point)

@@ -11,9 +11,10 @@ from typing import Any, cast
 from xml.etree import ElementTree
 
 from polywalk.drawing.compose import scene
-from polywalk.drawing.static import Picture, rendered, target_of, write
+from polywalk.drawing.static import Picture, rendered
 from polywalk.drawing.theme import THEMES
 from polywalk.drawing.view import View, viewed
+from polywalk.drawing.writing import target_of, write
 from polywalk.errors import DrawingError
 from polywalk.model import Model
 from polywalk.reviewing import Suspect

@@ -51,6 +51,8 @@ class Theme:
     grid: str
     face: str
     edge: str
+    cut: str
+    added: str
 
     def constraint(self, index: int) -> Style:
         """Constraint number ``index``; past eight the dash changes too."""
@@ -114,6 +116,8 @@ class Theme:
             "name": Style(self.text, size=11.0),
             "ends": Style(self.text, fill=self.paper, size=11.0, width=1.0),
             "note": Style(self.quiet, size=10.0),
+            "tick": Style(self.quiet, size=10.0),
+            "axis name": Style(self.text, size=11.0),
             "point": Style(self.text, size=11.0),
             "basis": Style(self.edge, fill=self.paper, width=1.4, size=34.0),
             "optimal basis": Style(self.text, fill=self.text, width=1.4, size=34.0),
@@ -136,6 +140,17 @@ class Theme:
             "evidence ray": Style(self.text, width=2.6),
             "evidence name": Style(self.text, size=11.0),
             "none": Style(self.text),
+            "cut off": Style(self.cut, fill=self.cut, opacity=0.16, width=0.0),
+            "added": Style(self.added, fill=self.added, opacity=0.16, width=0.0),
+            "part": Style(self.text, fill=self.paper, size=12.0, width=1.0),
+            "old edge": Style(self.text, width=1.4, dash="dash"),
+            "old edge on": Style(self.text, width=1.4, dash="dash"),
+            "new edge": Style(self.edge, width=2.6),
+            "new edge on": Style(self.edge, width=2.6),
+            "old border": Style(self.quiet, width=1.2, dash="dash"),
+            "lost": Style(self.text, width=2.2, size=10.0, symbol="cross"),
+            "gained": Style(self.edge, fill=self.paper, width=2.0, size=10.0, symbol="square"),
+            "old optimum": Style(self.text, width=2.0, size=17.0, symbol="diamond ring"),
             "letter": Style(self.paper, width=0.0),
         }
 
@@ -149,19 +164,35 @@ DEPTH = {
             ("hidden edge",),
             ("level", "level line"),
             ("facet", "rest"),
+            ("cut off", "added"),
             ("evidence line",),
+            ("old border",),
             ("hatch", "constraint"),
+            ("old edge", "old edge on"),
+            ("new edge", "new edge on"),
             ("edge", "rest edge", "short", "open edge", "conflict line", "exchange", "letter"),
             ("pivot", "faint pivot", "exit", "faint exit", "other exit"),
             ("evidence ray", "optimal face", "objective"),
             ("walk rest",),
             ("phase 1", "walk", "onward", "curve"),
             ("first basis",),
-            ("vertex", "basis", "optimal basis", "moved", "stayed", "breakpoint"),
+            ("old optimum",),
+            ("vertex", "lost", "gained", "basis", "optimal basis", "moved", "stayed", "breakpoint"),
             ("evidence", "degenerate", "optimum", "start", "selected", "now"),
             ("back tag",),
-            ("evidence name", "note", "name", "tag", "point", "basis name", "optimal basis name", "target"),
-            ("stay", "step", "end", "ends"),
+            (
+                "evidence name",
+                "note",
+                "tick",
+                "axis name",
+                "name",
+                "tag",
+                "point",
+                "basis name",
+                "optimal basis name",
+                "target",
+            ),
+            ("stay", "step", "end", "ends", "part"),
         )
     )
     for role in roles
@@ -169,9 +200,9 @@ DEPTH = {
 """What is painted over what: later lines lie on top."""
 
 THEMES = {
-    "light": Theme("light", "#FFFFFF", "#16181D", "#6A6F7A", "#E3E4E8", "#E9E7E1", "#2F333B"),
-    "dark": Theme("dark", "#16181D", "#F2F2F0", "#A2A7B3", "#33363E", "#343841", "#D9DAD6"),
-    "grey": Theme("grey", "#FFFFFF", "#000000", "#666666", "#DDDDDD", "#EAEAEA", "#222222"),
+    "light": Theme("light", "#FFFFFF", "#16181D", "#6A6F7A", "#E3E4E8", "#E9E7E1", "#2F333B", "#B23A00", "#00679A"),
+    "dark": Theme("dark", "#16181D", "#F2F2F0", "#A2A7B3", "#33363E", "#343841", "#D9DAD6", "#FFB27A", "#8FD0F5"),
+    "grey": Theme("grey", "#FFFFFF", "#000000", "#666666", "#DDDDDD", "#EAEAEA", "#222222", "#222222", "#222222"),
 }
 
 

@@ -11,6 +11,10 @@ from polywalk.drawing.scene import Label, Line, Mark, Point, Polygon, Scene
 from polywalk.drawing.theme import FONT, Style, Theme
 
 SYMBOLS = {"circle": "circle", "ring": "circle-open", "diamond": "diamond", "square ring": "square-open"}
+SYMBOLS |= {"square": "square", "diamond ring": "diamond-open", "cross": "x"}
+
+FILLS = {"cut off": "/", "added": "."}
+"""Patterns of areas that are not told by their colour."""
 LISTED = {
     "vertex": "vertices",
     "degenerate": "degenerate vertex",
@@ -25,6 +29,9 @@ LISTED = {
     "stayed": "stay",
     "breakpoint": "breakpoint",
     "now": "the model as it is",
+    "lost": "vertex lost",
+    "gained": "vertex gained",
+    "old optimum": "optimum before",
 }
 """Marks by role, as the legend calls them."""
 
@@ -35,6 +42,7 @@ OF_WALK = ("moved", "stayed")
 """Marks in the look of their walk, switched off and on with it."""
 
 IN_LEGEND = {"constraint", "conflict line", "open edge", "level line", "objective", "walk", "phase 1", "optimal face"}
+IN_LEGEND |= {"old edge", "new edge", "old edge on", "new edge on", "old border"}
 IN_LEGEND |= {"curve", "pivot", "faint pivot", "exchange", "exit", "faint exit", "other exit", "letter"}
 
 
@@ -90,7 +98,7 @@ def _mesh(drawn: Scene, role: str, group: list[Polygon], theme: Theme) -> dict[s
         "color": style.fill,
         "opacity": style.opacity,
         "name": html(name),
-        "showlegend": role in {"facet", "conflict"},
+        "showlegend": role in {"facet", "conflict", "cut off", "added"},
     }
     light = {"ambient": 0.75, "diffuse": 0.35, "specular": 0.0, "fresnel": 0.0}
     mesh = {"type": "mesh3d", **_columns(drawn, points), "i": i, "j": j, "k": k, "flatshading": True, "lighting": light}
@@ -102,6 +110,15 @@ def _fill(drawn: Scene, polygon: Polygon, theme: Theme) -> dict[str, Any]:
     line = {"color": style.colour, "width": style.width, "dash": style.dash}
     closed: list[Point | None] = [*polygon.points, polygon.points[0]]
     look = {"mode": "lines", "fill": "toself", "fillcolor": style.fill, "opacity": style.opacity, "line": line}
+    if polygon.role in FILLS:
+        shape = {
+            "shape": FILLS[polygon.role],
+            "fgcolor": style.colour,
+            "bgcolor": style.fill,
+            "size": 8,
+            "solidity": 0.25,
+        }
+        look |= {"fillpattern": shape | {"fgopacity": 0.8, "fillmode": "overlay"}, "opacity": 0.5}
     return _trace(drawn, closed, **look, hoverinfo="skip", showlegend=False, name=html(polygon.name))
 
 
@@ -158,7 +175,19 @@ def _mark_trace(drawn: Scene, role: str, found: list[Mark], theme: Theme) -> dic
     look: dict[str, Any] = {"mode": "markers", "marker": marker, "name": LISTED[role], "showlegend": role != "vertex"}
     if role in OF_WALK:
         look |= {"showlegend": False, "legendgroup": f"walk {found[0].index}"}
-    if role in {"vertex", "evidence", "optimum", "basis", "optimal basis", "breakpoint", "now", *OF_WALK}:
+    if role in {
+        "vertex",
+        "lost",
+        "gained",
+        "old optimum",
+        "evidence",
+        "optimum",
+        "basis",
+        "optimal basis",
+        "breakpoint",
+        "now",
+        *OF_WALK,
+    }:
         look |= {"hoverinfo": "text", "hovertext": [html(mark.hover) for mark in found]}
     else:
         look |= {"hoverinfo": "skip"}

@@ -7,8 +7,8 @@ from fractions import Fraction
 from itertools import pairwise
 
 from polywalk.drawing.placing import Sheet
-from polywalk.drawing.scene import Axis, KeyPart, KeyRow, Label, Line, Mark, Point, Polygon, Scene
-from polywalk.drawing.window import PAPER, Window
+from polywalk.drawing.scene import PAPER, Axis, KeyPart, KeyRow, Label, Line, Mark, Point, Polygon, Scene
+from polywalk.drawing.window import Window
 from polywalk.exact import short
 from polywalk.reviewing import ValueFunction
 from polywalk.reviewing.extended import told

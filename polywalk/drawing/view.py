@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, fields, replace
 from typing import Any, Literal
 
+from polywalk.drawing.formats import FORMATS, Size
 from polywalk.errors import DrawingError
 from polywalk.reviewing import Finding, Review
 from polywalk.walks import Walk
@@ -27,9 +28,13 @@ class View:
         Paths to draw, in the order of the legend.
     step : int or None, optional
         Draw the first walk up to this pivot and the rest of it faintly; None draws it whole.
-    camera : (3,) tuple of float or None, optional
-        Direction from the solid to the eye, z upward; None chooses the direction that keeps vertices apart.
+    camera : (3,) tuple of float, str or None, optional
+        Direction from the solid to the eye, the third axis upward; or "isometric", or "along pump" for the direction of
+        an axis; None chooses the direction that keeps vertices apart.
     mode : {"light", "dark", "grey"}, optional
+    size : {"page", "slide", "column", "bare"}, optional
+        Of a static picture: with its key beside it; 1280 by 720 pixels for a slide; 85 mm wide, the key below, for a
+        column of a paper; the drawing alone.
     findings : tuple of Finding, optional
         Findings whose evidence is marked; ``draw(model, findings=review)`` takes a whole Review.
 
@@ -44,9 +49,15 @@ class View:
     vertex: int | None = None
     walks: tuple[Walk, ...] = ()
     step: int | None = None
-    camera: tuple[float, float, float] | None = None
+    camera: tuple[float, float, float] | str | None = None
     mode: Mode = "light"
     findings: tuple[Finding, ...] = ()
+    size: Size = "page"
+
+    @property
+    def paper(self) -> tuple[float, ...]:
+        """Width and height in pixels of the drawing."""
+        return FORMATS[self.size].paper
 
 
 def viewed(view: View | None, changes: Mapping[str, Any]) -> View:
@@ -73,6 +84,8 @@ def viewed(view: View | None, changes: Mapping[str, Any]) -> View:
     found = replace(view or View(), **changed)
     if found.mode not in ("light", "dark", "grey"):
         raise DrawingError(f"expected the mode light, dark or grey, got {found.mode!r}.", culprit=found.mode)
+    if found.size not in FORMATS:
+        raise DrawingError(f"expected the size {', '.join(FORMATS)}, got {found.size!r}.", culprit=found.size)
     return found
 
 

@@ -7,16 +7,13 @@ from dataclasses import dataclass, replace
 from fractions import Fraction
 from itertools import combinations
 
-from polywalk.drawing.scene import Point
+from polywalk.drawing.scene import PAPER, Point
 from polywalk.drawing.subject import floats
 from polywalk.model import Constraint, Model
 from polywalk.region import Region, region
 
 CUT = "\0window"
 """Start of the name of a constraint that only cuts the region to the window; no user can type it."""
-
-PAPER = (600.0, 460.0)
-"""Width and height in pixels that text and hatching are laid out for; painters scale the whole."""
 
 ROOM = {1: 0.16, 2: 0.16, 3: 0.05}
 """Free room on each side of the region, as a share of its extent: in the plane the constraints' names stand there."""
@@ -30,10 +27,11 @@ LIKE = 4.0
 
 @dataclass(frozen=True)
 class Window:
-    """Lowest and highest drawn value along each axis."""
+    """Lowest and highest drawn value along each axis, and the pixels of the paper it is laid out on."""
 
     low: Point
     high: Point
+    paper: Point = PAPER
 
     @property
     def extent(self) -> Point:
@@ -49,7 +47,7 @@ class Window:
     def scale(self) -> Point:
         """Pixels (in the plane) or shares of the longest side (in space) for a unit along each axis."""
         if len(self.extent) == 2:
-            return tuple(pixels / length for pixels, length in zip(PAPER, self.extent, strict=True))
+            return tuple(pixels / length for pixels, length in zip(self.paper, self.extent, strict=True))
         longest = max(self.extent)
         alike = longest <= LIKE * min(self.extent)
         return tuple(1 / (longest if alike else length) for length in self.extent)
@@ -60,6 +58,7 @@ class Window:
         return Window(
             tuple(a - room for a, room in zip(self.low, more, strict=True)),
             tuple(b + room for b, room in zip(self.high, more, strict=True)),
+            self.paper,
         )
 
     def inside(self, point: Sequence[float], slack: float = 1e-9) -> bool:
@@ -69,7 +68,9 @@ class Window:
         )
 
 
-def around(points: Iterable[Point], directions: Iterable[Point] = (), lines: Iterable[Point] = ()) -> Window:
+def around(
+    points: Iterable[Point], directions: Iterable[Point] = (), lines: Iterable[Point] = (), paper: Point = PAPER
+) -> Window:
     """The window that shows all points, with room for names, and follows the given directions out of sight."""
     found = list(points)
     low = [min(values) for values in zip(*found, strict=True)]
@@ -85,7 +86,7 @@ def around(points: Iterable[Point], directions: Iterable[Point] = (), lines: Ite
         room = ROOM[len(low)] * ((high[axis] - low[axis]) or size)
         low[axis] -= room
         high[axis] += room
-    return Window(tuple(low), tuple(high))
+    return Window(tuple(low), tuple(high), paper)
 
 
 def square(window: Window) -> Window:
@@ -93,12 +94,18 @@ def square(window: Window) -> Window:
     width, height = window.extent
     if max(width, height) > LIKE * min(width, height):
         return window
-    unit = max(width / PAPER[0], height / PAPER[1])
-    grow = [(pixels * unit - length) / 2 for pixels, length in zip(PAPER, (width, height), strict=True)]
+    unit = max(width / window.paper[0], height / window.paper[1])
+    grow = [(pixels * unit - length) / 2 for pixels, length in zip(window.paper, (width, height), strict=True)]
     return Window(
         tuple(a - more for a, more in zip(window.low, grow, strict=True)),
         tuple(b + more for b, more in zip(window.high, grow, strict=True)),
+        window.paper,
     )
+
+
+def lifted(window: Window) -> Window:
+    """The window of a single decision with a second axis, which is not shown."""
+    return Window((window.low[0], -1.0), (window.high[0], 1.0), window.paper)
 
 
 def cut(shape: Region, window: Window) -> Region:

@@ -165,17 +165,17 @@ def test_names_in_the_plane_do_not_cover_one_another() -> None:
 
 @pytest.mark.parametrize("variant", ["base", "tied", "degenerate", "unbounded", "flat", "infeasible"])
 def test_words_on_a_solid_keep_clear_of_one_another(variant: str) -> None:
-    from polywalk.drawing.placing import box, overlap
+    from polywalk.drawing.tiles import Tile, halves
 
     model = harbour_row(variant)
     walks = () if variant == "infeasible" else (pw.walk(model), pw.walk(model, rule="bland"))
     words = laid_flat(scene(model, View(walks=walks))).labels
-    areas = [(label.text, box(label.text, label.point)) for label in words if label.role != "back tag"]
+    tiles = [Tile(label.point, halves(label.text, label.role), label.angle) for label in words]
     clashes = [
-        (one, other)
-        for k, (one, area) in enumerate(areas)
-        for other, second in areas[k + 1 :]
-        if overlap(area, second) > 40  # square pixels: the corners of two boxes may touch, the letters in them do not
+        (words[k].text, words[m].text)
+        for k, tile in enumerate(tiles)
+        for m in range(k + 1, len(tiles))
+        if tile.meets(tiles[m])
     ]
     assert not clashes
 
