@@ -105,6 +105,12 @@ def test_what_cannot_travel_is_told(pool):
     assert "pickle" in str(found).lower()
 
 
+def test_results_that_cannot_be_pickled_come_back_from_threads():
+    with ThreadPoolExecutor(2) as threads:
+        found = pw.sweep(plants(3), what=lambda model: lambda: model.name, executor=threads)
+    assert [result() for result in found.results] == ["model 1", "model 2", "model 3"]
+
+
 def test_ctrl_c_keeps_what_is_done():
     found = pw.sweep(plants(6), what=asked.presses_ctrl_c)
     assert [item.name for item in found.failed] == ["model 3", "model 4", "model 5", "model 6"]
