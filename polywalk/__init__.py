@@ -36,6 +36,7 @@ _ROOMS = {
     "probe": "polywalk.reviewing",
     "review": "polywalk.reviewing",
     "sensitivity": "polywalk.reviewing",
+    "sheet": "polywalk.sheets",
     "suspects": "polywalk.reviewing",
     "value_function": "polywalk.reviewing",
     "versions": "polywalk.reviewing",
