@@ -13,6 +13,7 @@ from polywalk.table import Table
 __version__ = version("polywalk")
 
 _ROOMS = {
+    "BigModel": "polywalk.bigmodel",
     "Budget": "polywalk.budget",
     "from_algebra": "polywalk.reading",
     "from_arrays": "polywalk.reading",

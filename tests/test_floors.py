@@ -126,7 +126,7 @@ NAMES = {"Budget", "Constraint", "Model", "Objective", "PolywalkError", "Region"
 NAMES |= {"exact", "explore", "from_algebra", "from_arrays", "from_scipy", "optimum", "picture", "project", "region"}
 NAMES |= {"compare", "bases", "dual_walk", "farkas", "improving_ray", "scenarios", "walk"}
 NAMES |= {"before_after", "probe", "review", "suspects"}
-NAMES |= {"from_highs", "from_mps", "from_toml", "sweep", "to_mps", "to_toml"}
+NAMES |= {"BigModel", "from_highs", "from_mps", "from_toml", "sweep", "to_mps", "to_toml"}
 NAMES |= {"cones", "difference", "explain", "sensitivity", "sheet", "value_function", "versions"}
 NAMES |= {"completion", "conflict", "escape", "section", "shadow", "suggest_axes"}
 
