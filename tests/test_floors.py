@@ -26,7 +26,7 @@ FLOORS = {
 GROUND = {"errors": (), "exact": ("errors",), "table": ("errors", "exact"), "model": ("errors", "exact", "table")}
 GROUND |= {"sides": ("exact", "model"), "bigmodel": ("errors", "exact", "table", "model", "sides")}
 GROUND |= {"budget": ("errors",), "progress": ()}
-"""Which room of the ground floor may import which: errors < exact < table < model < sides < bigmodel; errors < budget."""
+"""On the ground floor, who may import whom: errors < exact < table < model < sides < bigmodel; errors < budget."""
 
 FLOOR = {room: floor for floor, rooms in FLOORS.items() for room in rooms}
 LATE = ("plotly", "matplotlib", "ipywidgets", "anywidget", "scipy.optimize", "pandas", "sympy", "IPython")
