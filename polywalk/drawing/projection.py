@@ -12,8 +12,12 @@ from itertools import pairwise
 from polywalk.drawing.camera import Camera
 from polywalk.drawing.lettering import beside_itself, labels
 from polywalk.drawing.paper import Paper, frame, paper
-from polywalk.drawing.scene import Axis, Line, Point, Polygon, Scene
+from polywalk.drawing.scene import Axis, Label, Line, Mark, Point, Polygon, Scene
 from polywalk.drawing.space import cross, inner
+from polywalk.drawing.tiles import halves
+
+EDGE = 14.0
+"""Pixels kept free below the lowest and above the highest thing drawn."""
 
 BODY = {"facet", "rest", "region"}
 WALKS = {"walk", "phase 1", "walk rest"}
@@ -34,10 +38,11 @@ def laid_flat(scene: Scene) -> Scene:
         replace(item, point=on.at(item.point), index=0 if item.point in visible or item.key is None else 1)
         for item in scene.marks
     )
-    axes = tuple(Axis("", 0.0, size) for size in scene.paper)
+    low, high = _heights((*frame_lines, *lines), words, marks)
     return replace(
         scene,
-        axes=axes,
+        axes=(Axis("", 0.0, scene.paper[0]), Axis("", low, high)),
+        paper=(scene.paper[0], high - low),
         scale=(1.0, 1.0),
         polygons=polygons,
         lines=(*frame_lines, *lines),
@@ -45,6 +50,14 @@ def laid_flat(scene: Scene) -> Scene:
         marks=marks,
         key=left + scene.key,
     )
+
+
+def _heights(lines: tuple[Line, ...], labels: tuple[Label, ...], marks: tuple[Mark, ...]) -> tuple[float, float]:
+    """The part of the paper's height that anything is drawn on."""
+    found = [point[1] for line in lines for part in line.parts for point in part]
+    found += [label.point[1] + side * halves(label.text, label.role)[1] for label in labels for side in (-1, 1)]
+    found += [mark.point[1] + side * EDGE for mark in marks for side in (-1, 1)]
+    return min(found) - EDGE, max(found) + EDGE
 
 
 def _all(on: Paper, points: tuple[Point, ...]) -> tuple[Point, ...]:

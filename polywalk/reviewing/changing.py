@@ -136,7 +136,7 @@ def _amount(part: Part) -> object:
 
 
 def _rows(found: Difference) -> Table:
-    columns = ("constraint", "change", "rule before", "rule after", "before", "after", "at the optimum")
+    columns = ("constraint", "change", "rule before", "rule after", "standing before", "standing after", "at the optimum")
     rows = []
     for row in found.rows:
         one, other = row.before, row.after

@@ -9,8 +9,8 @@ from polywalk.drawing.theme import THEMES
 from polywalk.sheets.markup import Html, element, joined
 from polywalk.sheets.samples import sample
 
-ELSEWHERE = "Vertices, with the constraints active there"
-"""The part of a picture's key that the sheet has as a table of its own."""
+ELSEWHERE = {"Vertices, with the constraints active there", "Vertices lost and gained"}
+"""Parts of a picture's key that the sheet has as tables."""
 
 MEANINGS = {
     "region": "what the model allows: every point of the pale area is a plan (the feasible region)",
@@ -53,7 +53,7 @@ UNSAID = {"grid", "axis", "tick", "axis name", "note", "name", "point", "part", 
 
 def legend(drawn: Scene) -> Html:
     """The legend of one picture."""
-    parts = [(part.heading, part.rows) for part in drawn.key if part.heading != ELSEWHERE]
+    parts = [(part.heading, part.rows) for part in drawn.key if part.heading not in ELSEWHERE]
     known = {row.role for _, rows in parts for row in rows}
     lists = [_list("Also drawn", _unsaid(drawn, known))]
     for heading, rows in parts:

@@ -11,6 +11,9 @@ from polywalk.table import Table, cell
 VOID = {"meta", "img", "br", "link"}
 """Elements without an end."""
 
+LONG = 22
+"""Words of more letters than this may be broken anywhere."""
+
 
 class Html(str):
     """Text that is markup already; any other text is escaped when it becomes part of an element."""
@@ -65,7 +68,7 @@ def table(source: Table, caption: str | None = None) -> Html:
     notes = paragraphs(source.notes, "note")
     if not source.columns or not source.rows:
         return joined([element("p", caption or source.title), notes])
-    head = element("tr", *(element("th", name, scope="col") for name in source.columns))
+    head = element("tr", *(element("th", name, scope="col", class_=_kind(name)) for name in source.columns))
     rows = [element("tr", _cell(row[0], "th"), *(_cell(value, "td") for value in row[1:])) for row in source.rows]
     whole = element(
         "table", element("caption", caption or source.title), element("thead", head), element("tbody", *rows)
@@ -76,9 +79,14 @@ def table(source: Table, caption: str | None = None) -> Html:
 def _cell(value: object, name: str) -> Html:
     text, exact = cell(value), _exact(value)
     number = isinstance(value, int) or hasattr(value, "denominator")
-    kind = "number" if number and not isinstance(value, bool) else None
+    kind = "number" if number and not isinstance(value, bool) else _kind(text)
     hover = exact if exact != text else None
     return element(name, text, class_=kind, title=hover, scope="row" if name == "th" else None)
+
+
+def _kind(text: str) -> str | None:
+    """How a cell's text is set: a word that would not fit may break anywhere."""
+    return "long" if any(len(word) > LONG for word in text.split()) else None
 
 
 def _exact(value: object) -> str:

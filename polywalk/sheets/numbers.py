@@ -73,8 +73,9 @@ def walks(content: Content) -> Html:
         places = [whole.columns.index(name) for name in SHOWN]
         rows = tuple(tuple(row[place] for place in places) for row in whole.rows)
         parts.append(table(Table(whole.title, SHOWN, rows, whole.notes), "Every rule from the same start"))
-    chart = rendered(scene(content.walks), THEMES["light"], "svg")
-    parts.append(chart_html(chart, "The objective after each pivot of the walks that are drawn"))
+    chart = scene(content.walks)
+    drawn = rendered(chart, THEMES["light"], "svg", size="bare")
+    parts += [chart_html(drawn, "The objective after each pivot of the walks that are drawn"), legend(chart)]
     return joined([*parts, *(_walk(walk) for walk in content.walks)])
 
 

@@ -25,13 +25,7 @@ def page(content: Content, parts: dict[str, tuple[str, Html]], date: Html, paper
     the same model and options.
     """
     style = f"{_own('sheet.css')}\n@page {{ size: {PAPERS[paper]} portrait; margin: 16mm 14mm; }}\n"
-    scripts = (
-        [_own("guard.js"), _plotly(), _own("sheet.js")]
-        if any('class="turnable"' in body for _, body in parts.values())
-        else []
-    )
-    if not scripts and "source" in parts:
-        turns = any('class="turnable"' in body for _, body in parts.values())
+    turns = any('class="turnable"' in body for _, body in parts.values())
     scripts = [_own("guard.js"), _plotly()] if turns else []
     scripts += [_own("sheet.js")] if turns or "source" in parts else []
     body = [_header(content, date), _contents(parts)]

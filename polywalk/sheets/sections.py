@@ -33,7 +33,7 @@ def model(content: Content) -> Html:
     lines = [
         element(
             "tr",
-            element("th", name, scope="row"),
+            element("th", name, scope="row", class_="long"),
             element("td", rule, class_="rule"),
             element("td", found.unit(name)),
             element("td", row.origin),

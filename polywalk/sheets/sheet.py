@@ -24,7 +24,7 @@ SECTIONS: dict[str, tuple[str, Callable[[Content], Html]]] = {
     "summary": ("In short", overview.summary),
     "change": ("What the change does", numbers.changes),
     "picture": ("The picture", sections.picture),
-    "legend": ("What the marks say", sections.explained),
+    "legend": ("Legend", sections.explained),
     "model": ("The model", sections.model),
     "vertices": ("Vertices", sections.vertices),
     "findings": ("Findings", sections.findings),
