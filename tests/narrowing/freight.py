@@ -12,18 +12,20 @@ from polywalk.bigmodel import BigModel
 DEPOTS, TOWNS, TOTALS = 44, 81, 36
 
 
-def freight(seed: int, groups: int = 6) -> BigModel:
+def freight(seed: int, shared: int = 12, own: int = 20) -> BigModel:
     """DEPOTS x TOWNS shipments and TOTALS weighed sums of them: 44 * 81 + 36 = 3,600 variables.
 
-    Each depot has a supply, each town a demand, each lane a capacity. A total belongs to a group of lanes: it weighs
-    the shipments of ``groups`` depots (tonne-kilometres, hours, litres of fuel).
+    Each depot has a supply, each town a demand, each lane a capacity. A total (tonne-kilometres, hours, litres of fuel)
+    weighs ``shared`` lanes that all totals count, each in its own way, and ``own`` lanes of its own.
     """
     draw = np.random.default_rng(seed)
     lanes = DEPOTS * TOWNS
     place = np.arange(lanes).reshape(DEPOTS, TOWNS)
     rows = [(place[d], np.ones(TOWNS)) for d in range(DEPOTS)] + [(place[:, t], np.ones(DEPOTS)) for t in range(TOWNS)]
+    common = draw.choice(lanes, shared, replace=False)
     for k in range(TOTALS):
-        used = place[draw.choice(DEPOTS, groups, replace=False)].ravel()
+        alone = draw.choice(np.setdiff1d(place.ravel(), common), own, replace=False)
+        used = np.concatenate([common, alone])
         weights = np.round(draw.uniform(0.5, 4.0, len(used)), 1)
         rows.append((np.append(used, lanes + k), np.append(weights, -1.0)))
     supply, demand = draw.integers(180, 260, DEPOTS), draw.integers(60, 100, TOWNS)
