@@ -2,12 +2,12 @@
 
 Run: python tests/bench/bench_shadow.py
 The peers, measured in the same run: "cold", HiGHS solving the model for its own objective, from nothing, with
-the tolerance used here; "warm", HiGHS solving it again for a random direction in the kept variables, from the last basis
-(mean of 30). The target: 20 cold and half a warm one for each linear program of the shadow; for two variables of
+the tolerance used here; "warm", HiGHS solving it again for a random direction in the kept variables, from the last
+basis (mean of 30). The target: 20 cold and half a warm one for each linear program of the shadow; for two variables of
 the year 30 cold; at most 2 (vertices + facets) + 10 linear programs; at most 3 times the memory HiGHS takes.
 Models: Harbour Row over 900 hours (3,600 variables), onto the tank's level in two hours drawn by seed and the
-objective, within 0.5% of the optimum; freight (3,600 variables, seeded, tests/narrowing/freight.py), onto three totals drawn by
-seed; Harbour Row over 8,760 hours, onto the pump and the tank of an hour.
+objective, within 0.5% of the optimum; freight (3,600 variables, seeded, tests/narrowing/freight.py), onto three
+totals drawn by seed; Harbour Row over 8,760 hours, onto the pump and the tank of an hour.
 """
 
 from __future__ import annotations
