@@ -20,8 +20,10 @@ READY = """async () => {
 
 LIGHT = """async () => {
   await window.jupyterapp.commands.execute('apputils:change-theme', { theme: 'JupyterLab Light' });
-  if (window.innerWidth < 600) window.jupyterapp.shell.collapseLeft();
+  if (window.innerWidth < 600) window.jupyterapp.shell.collapseLeft?.();
 }"""
+
+DARK = "() => window.jupyterapp.commands.execute('apputils:change-theme', { theme: 'JupyterLab Dark' })"
 
 RUN = "() => window.jupyterapp.commands.execute('notebook:run-all-cells')"
 
@@ -84,12 +86,12 @@ class Lab:
         page.set_default_timeout(PATIENCE)
         page.on("pageerror", lambda error: self.errors.append(f"{error}\n{error.stack}"))
 
-    def open(self, *cells: str) -> None:
-        """Write a notebook with these cells, open it and run it."""
+    def open(self, *cells: str, where: str = "lab/tree") -> None:
+        """Write a notebook with these cells, open it (in JupyterLab, or under "notebooks" in Notebook 7) and run it."""
         book = nbformat.v4.new_notebook(cells=[nbformat.v4.new_code_cell(cell) for cell in cells])
         book.metadata["kernelspec"] = {"name": "python3", "display_name": "Python 3", "language": "python"}
         nbformat.write(book, self.root / f"{self.name}.ipynb")
-        self.page.goto(f"{self.address}/lab/tree/{self.name}.ipynb?reset")
+        self.page.goto(f"{self.address}/{where}/{self.name}.ipynb?reset")
         self.page.evaluate(READY)
         self.page.evaluate(LIGHT)
         self.page.evaluate(RUN)
@@ -138,6 +140,21 @@ class Lab:
         """How large the scene is drawn."""
         return float(self.page.evaluate(ZOOM, which))
 
+    def dark(self) -> None:
+        """The dark theme."""
+        self.page.evaluate(DARK)
+        self.until("print(explorer.state.dark)", "True")
+
+    def panel(self, title: str) -> None:
+        """Open a panel of the explorer."""
+        tab = self.page.get_by_role("tab", name=title)
+        tab.click()
+        self.page.wait_for_function("(tab) => tab.ariaSelected === 'true'", arg=tab.element_handle())
+
+    def verdict(self) -> str:
+        """The line on top of the explorer."""
+        return str(self.page.locator(".polywalk-verdict").first.inner_text())
+
     def shoot(self, what: str) -> None:
         """Keep a screenshot."""
         self.page.screenshot(path=self.shots / f"{self.name}-{what}.png")
@@ -145,3 +162,12 @@ class Lab:
     def close(self) -> None:
         """End the notebook's kernel."""
         self.page.evaluate(END)
+
+
+def apart(places: dict[int, tuple[float, float]], pixels: float = 26) -> dict[int, tuple[float, float]]:
+    """The places that are farther than this from every other one."""
+    return {
+        index: (x, y)
+        for index, (x, y) in places.items()
+        if all(abs(x - u) + abs(y - v) > pixels for other, (u, v) in places.items() if other != index)
+    }

@@ -51,7 +51,7 @@ stage "layout (ruff format)" "$python" -m ruff format --check .
 stage "types (mypy --strict)" "$python" -m mypy
 stage "unit, property and doctests" "$python" -m pytest -q -m "not browser"
 stage "notebooks (nbval)" "$python" -m pytest -q --nbval notebooks --nbval-cell-timeout=300
-stage "browser (JupyterLab in Chromium)" in_browser
+stage "browser (JupyterLab, Notebook 7)" in_browser
 
 printf '\n== summary\n%s' "$summary"
 if [ "$failures" -gt 0 ]; then

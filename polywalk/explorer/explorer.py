@@ -243,6 +243,6 @@ def _side_by_side(left: list[widgets.Widget], right: list[widgets.Widget]) -> wi
     """Two columns, one below the other where the page is narrow."""
     columns = [
         widgets.VBox(items, layout=widgets.Layout(flex=f"{grow} 1 {basis}", min_width="0", padding="0 6px"))
-        for items, grow, basis in ((left, 5, "min(100%, 460px)"), (right, 4, "min(100%, 340px)"))
+        for items, grow, basis in ((left, 1, "min(100%, 460px)"), (right, 1, "min(100%, 460px)"))
     ]
     return widgets.Box(columns, layout=widgets.Layout(display="flex", flex_flow="row wrap", width="100%"))

@@ -149,13 +149,13 @@ class State(Traits):
         with self._as_one():
             if self.review and self.finding is not None:
                 self._kept = self.review.findings[self.finding]
-            self.finding, self.step, self.vertex = None, None, None
+            self.finding, self.step = None, None
             self.set_trait("region", seen)
+            self.vertex = checking.again(vertex, seen)
             self.set_trait("stale", True)
             self.set_trait("whole", draft.whole)
             with self._taken():
                 self.model, self.off = draft.model, draft.off
-            self.vertex = checking.again(vertex, seen)
             if self.axes is None or not set(self.axes) <= set(self.model.variables):
                 self.axes = checking.first_axes(self.model)  # type: ignore[assignment]
             self.number = checking.number_left(self.number, self.whole)

@@ -69,8 +69,12 @@ def _arguments(model: Model, every: bool) -> dict[str, Any]:
 
 
 def _algebra(row: Row, model: Model, every: bool = False) -> str:
-    terms = [f"{'' if a == 1 else f'{full(a)}*'}{x}" for a, x in zip(row, model.variables, strict=True) if a or every]
-    return " + ".join(terms).replace("+ -1*", "- ").replace("+ -", "- ") or "0"
+    terms = [_term(a, name) for a, name in zip(row, model.variables, strict=True) if a or every]
+    return " + ".join(terms).replace("+ -", "- ") or "0"
+
+
+def _term(factor: Fraction, name: str) -> str:
+    return f"{'-' * (factor < 0)}{name}" if abs(factor) == 1 else f"{full(factor)}*{name}"
 
 
 def _bounds(model: Model) -> tuple[dict[str, tuple[object, object]], set[str]]:

@@ -1,4 +1,4 @@
-"""JupyterLab on a free loopback port, a Chromium, and a notebook in it. Screenshots go to artefacts/.
+"""JupyterLab and Notebook 7 on a free loopback port, a Chromium, a notebook in it. Screenshots go to artefacts/.
 
 The browser is POLYWALK_BROWSER, else the machine's Chromium, else Playwright's own build.
 """
@@ -51,6 +51,9 @@ def server(tmp_path_factory: pytest.TempPathFactory) -> Iterator[tuple[str, Path
     quiet = home / "settings" / "@jupyterlab" / "apputils-extension"
     quiet.mkdir(parents=True)
     (quiet / "notification.jupyterlab-settings").write_text('{"fetchNews": "false"}')
+    exposed = '{"JupyterNotebookApp": {"expose_app_in_browser": true}}'
+    (home / "config").mkdir()
+    (home / "config" / "jupyter_notebook_config.json").write_text(exposed)
     own = {f"JUPYTER_{part}_DIR": str(home / part.lower()) for part in ("CONFIG", "DATA", "RUNTIME")}
     own["JUPYTERLAB_SETTINGS_DIR"] = str(home / "settings")
     command = [sys.executable, "-m", "jupyterlab", *OPTIONS.split(), f"--port={port}", f"--ServerApp.root_dir={root}"]

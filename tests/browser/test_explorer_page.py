@@ -3,19 +3,13 @@
 from __future__ import annotations
 
 import pytest
-from lab import ZOOM, Lab
+from lab import ZOOM, Lab, apart
 
 pytestmark = pytest.mark.browser
 
 HARBOUR = """
 import polywalk as pw
 explorer = pw.explore(pw.scenarios.harbour_row(), rules=("dantzig", "bland"))
-explorer
-"""
-FLAT = """
-import polywalk as pw
-model = pw.from_algebra(maximize="x + 2*y", constraints={"both": "x + y <= 5"}, bounds={"x": (0, 4), "y": (0, 3)})
-explorer = pw.explore(model)
 explorer
 """
 
@@ -29,6 +23,7 @@ def test_click_rotate_and_step_through_a_walk(lab: Lab) -> None:
     lab.drawn()
     lab.shoot("1 first display")
     assert "optimum" in lab.page.locator(".polywalk-verdict").inner_text()
+    lab.panel("Vertices")
     rows = lab.page.get_by_role("grid", name="vertices").locator("tbody tr")
     assert rows.count() == int(lab.ask("print(len(explorer.state.region.vertices))"))
     the_wheel_zooms_only_where_one_works(lab)
@@ -76,7 +71,7 @@ def clicks_select(lab: Lab) -> int:
         lab.until("print(explorer.state.vertex)", str(index))
         lab.redrawn(drawn)
     name = f"V{index}"
-    lab.page.get_by_role("heading", name=f"Vertex {name}").wait_for()
+    lab.page.get_by_role("heading", name=f"Selected vertex: {name}").wait_for()
     selected = lab.page.get_by_role("grid", name="vertices").locator("tr[aria-selected=true] td", has_text=name)
     selected.first.wait_for()
     return index
@@ -85,6 +80,7 @@ def clicks_select(lab: Lab) -> int:
 def a_drag_turns_and_queues(lab: Lab, selected: int) -> tuple[float, ...]:
     """A drag from a vertex turns the scene and selects nothing; an update waits for its end and keeps the camera."""
     page, before = lab.page, lab.camera()
+    lab.panel("Walk")
     x, y = lab.vertices()[min(set(lab.vertices()) - {selected})]
     page.mouse.move(x, y)
     page.mouse.down()
@@ -140,22 +136,6 @@ def test_two_explorers_share_one_plotly_and_errors_are_seen(lab: Lab) -> None:
     assert lab.errors == []
 
 
-def test_two_variables_click_and_dark_theme(lab: Lab) -> None:
-    lab.open(FLAT)
-    lab.drawn()
-    lab.shoot("1 light")
-    places = lab.vertices()
-    x, y = places[2]
-    lab.page.mouse.click(x, y)
-    lab.until("print(explorer.state.vertex)", "2")
-    drawn = lab.drawings()
-    lab.page.evaluate("() => window.jupyterapp.commands.execute('apputils:change-theme', {theme: 'JupyterLab Dark'})")
-    lab.until("print(explorer.state.dark)", "True")
-    lab.redrawn(drawn)
-    lab.shoot("2 dark")
-    assert lab.errors == []
-
-
 def test_a_narrow_page_stacks_the_panels_and_the_picture_fits(lab: Lab) -> None:
     lab.page.set_viewport_size({"width": 390, "height": 900})
     lab.open(HARBOUR)
@@ -168,14 +148,6 @@ def test_a_narrow_page_stacks_the_panels_and_the_picture_fits(lab: Lab) -> None:
     }"""
     lab.shoot("1 narrow")
     lab.page.wait_for_function(fits)
+    lab.panel("Walk")
     lab.page.get_by_role("button", name="Step on").scroll_into_view_if_needed()
     lab.shoot("2 narrow, the walk")
-
-
-def apart(places: dict[int, tuple[float, float]], pixels: float = 26) -> dict[int, tuple[float, float]]:
-    """The places that are farther than this from every other one."""
-    return {
-        index: (x, y)
-        for index, (x, y) in places.items()
-        if all(abs(x - u) + abs(y - v) > pixels for other, (u, v) in places.items() if other != index)
-    }
