@@ -136,7 +136,8 @@ def _amount(part: Part) -> object:
 
 
 def _rows(found: Difference) -> Table:
-    columns = ("constraint", "change", "rule before", "rule after", "standing before", "standing after", "at the optimum")
+    versions = ("rule before", "rule after", "standing before", "standing after")
+    columns = ("constraint", "change", *versions, "at the optimum")
     rows = []
     for row in found.rows:
         one, other = row.before, row.after

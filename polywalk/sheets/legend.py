@@ -38,6 +38,9 @@ MEANINGS = {
     "open edge": "an edge without end",
     "old edge on": "an edge without end of the version before",
     "new edge on": "an edge without end of the version after",
+    "onward": "a walk that goes on without end",
+    "moved": "after a pivot that moves",
+    "stayed": "after a stay, a pivot that does not move",
     "hatch": "strokes: the side that a constraint forbids",
     "evidence": "a place that a finding is about",
     "evidence line": "a constraint that a finding is about",
@@ -47,7 +50,8 @@ MEANINGS = {
 }
 """What each role of a picture means, for those that the picture's own key has no words for."""
 
-UNSAID = {"grid", "axis", "tick", "axis name", "note", "name", "point", "part", "back", "back tag", "evidence name"}
+UNSAID = {"grid", "axis", "tick", "axis name", "note", "name", "point", "part", "back", "back tag", "end", "ends"}
+UNSAID |= {"evidence name"}
 """Roles of words and of the frame, which say themselves what they are, and of backs, told with their fronts."""
 
 
