@@ -47,13 +47,24 @@ function render({ model, el }) {
     held = false;
     model.send({ kind: "released" });
   };
-  input.addEventListener("input", () => {
+  const moved = () => {
     held = true;
     say();
     model.set("place", Number(input.value));
     model.save_changes(); // while the kernel works, only the newest state waits to be sent
-  });
+  };
+  input.addEventListener("input", moved);
   input.addEventListener("change", release);
+  input.addEventListener("keydown", (event) => { // the page around may keep the keys that a slider acts on by itself
+    const steps = { ArrowRight: 1, ArrowUp: 1, ArrowLeft: -1, ArrowDown: -1, PageUp: 10, PageDown: -10 };
+    const by = { ...steps, Home: -Infinity, End: Infinity }[event.key];
+    if (by === undefined || event.ctrlKey || event.altKey || event.metaKey) return;
+    event.preventDefault();
+    event.stopPropagation();
+    input.value = Math.min(Number(input.max), Math.max(0, Number(input.value) + by));
+    moved();
+  });
+  input.addEventListener("keyup", release);
   input.addEventListener("blur", release);
 
   show();

@@ -125,7 +125,7 @@ def a_bad_value_is_refused_and_an_exact_one_taken(lab: Lab) -> None:
     page.keyboard.press("Enter")
     lab.until(RHS, "37/3")
     alert.wait_for(state="detached")
-    page.get_by_role("button", name="Reset").click()
+    page.get_by_role("button", name="Reset", exact=True).click()
     lab.until(RHS, "12")
 
 
