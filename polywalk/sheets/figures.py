@@ -12,12 +12,12 @@ from polywalk.sheets.markup import Html, element
 
 def figure_html(name: str, source: Source, view: View, still: bytes, caption: str) -> Html:
     """The figure element: its data, the place it is drawn in, the still picture, the caption."""
-    drawn = figure(source, view)
+    drawn, data_id = figure(source, view), f"{name}-data"
     del drawn["layout"]["title"]
     drawn["layout"]["margin"] = {"l": 50, "r": 10, "t": 10, "b": 44}
     drawn["layout"]["modebar"] = {"remove": ["sendChartToCloud", "lasso2d", "select2d", "toImage"]}
-    data = element("script", data_of(drawn), type="application/json", id=f"{name}-data")
-    place = element("div", class_="turnable", id=name, role="group", aria_label=caption)
+    data = element("script", data_of(drawn), type="application/json", id=data_id)
+    place = element("div", class_="turnable", id=f"{name}-figure", data_from=data_id, role="group", aria_label=caption)
     image = element("img", src=f"data:image/svg+xml;base64,{b64encode(still).decode()}", alt=caption, class_="still")
     hint = element("span", " Drag to turn or move, wheel to zoom, hover for numbers.", class_="screen")
     return element("figure", data, place, image, element("figcaption", caption, hint))

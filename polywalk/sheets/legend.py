@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 
 from polywalk.drawing import Scene
+from polywalk.drawing.projection import laid_flat
 from polywalk.drawing.theme import THEMES
 from polywalk.sheets.markup import Html, element, joined
 from polywalk.sheets.samples import sample
@@ -57,7 +58,8 @@ UNSAID |= {"evidence name"}
 
 def legend(drawn: Scene) -> Html:
     """The legend of one picture."""
-    parts = [(part.heading, part.rows) for part in drawn.key if part.heading not in ELSEWHERE]
+    shown = laid_flat(drawn) if drawn.solid else drawn  # which says what found no room on paper
+    parts = [(part.heading, part.rows) for part in shown.key if part.heading not in ELSEWHERE]
     known = {row.role for _, rows in parts for row in rows}
     lists = [_list("Also drawn", _unsaid(drawn, known))]
     for heading, rows in parts:

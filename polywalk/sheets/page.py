@@ -8,7 +8,7 @@ from importlib.metadata import version
 from importlib.resources import files
 
 from polywalk.sheets.content import Content
-from polywalk.sheets.markup import Html, element, joined
+from polywalk.sheets.markup import Html, clean, element, joined
 from polywalk.sheets.overview import CAUTION
 
 EMPTY = "47DEQpj8HBSa+/TImW+5JCeuQeRkm5NMpJWZG3hSuFU="
@@ -62,11 +62,15 @@ def _own(name: str) -> str:
 
 
 def _plotly() -> str:
-    """plotly.js as the plotly package carries it, in a form that can stand inside a script element."""
+    """plotly.js as the plotly package carries it, in a form that can stand in a page: what HTML forbids is escaped."""
     from plotly.offline import get_plotlyjs
 
-    text: str = get_plotlyjs()
-    return text.replace("</script", "<\\/script").replace("<!--", "<\\!--")
+    text: str = get_plotlyjs().replace("\r\n", "\n")
+    text = text.replace("</script", "<\\/script").replace("<!--", "<\\!--")
+    for letter in sorted(set(text)):
+        if clean(letter) != letter:
+            text = text.replace(letter, f"\\u{ord(letter):04x}")
+    return text
 
 
 def _header(content: Content, date: Html) -> Html:

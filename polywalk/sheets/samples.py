@@ -57,7 +57,7 @@ def _mark(style: Style, role: str, theme: Theme) -> Html:
         fill = theme.paper
     look = {"fill": fill, "stroke": style.colour, "stroke_width": f"{max(style.width, 1):g}"}
     x = WIDE / 2
-    if style.symbol == "diamond":
+    if style.symbol.startswith("diamond"):
         corners = ((x, MIDDLE - half), (x + half, MIDDLE), (x, MIDDLE + half), (x - half, MIDDLE))
         return element("polygon", points=" ".join(f"{a:g},{b:g}" for a, b in corners), **look)
     if style.symbol == "cross":

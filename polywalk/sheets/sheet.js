@@ -7,7 +7,7 @@
     return Boolean(canvas.getContext("webgl2") || canvas.getContext("webgl"));
   };
   for (const place of document.querySelectorAll(".turnable")) {
-    const figure = JSON.parse(document.getElementById(`${place.id}-data`).textContent);
+    const figure = JSON.parse(document.getElementById(place.dataset.from).textContent);
     if (!window.Plotly || !canDraw(figure)) continue;
     place.closest("figure").classList.add("live");
     const options = { displaylogo: false, responsive: true };
