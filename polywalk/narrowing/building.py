@@ -40,7 +40,7 @@ def built(rows: Iterable[Row], variables: tuple[str, ...], exact: bool) -> tuple
     return constraints, facets
 
 
-def row_of(edge: Edge, exact: bool) -> Row:
+def row_of(edge: Edge, exact: bool, held: str = "") -> Row:
     """The row of an inequality: its first coefficient positive, so that x >= 0 reads as such."""
     direction, limit, scale = _plain(edge, exact)
     turned = next(value for value in direction if value) < 0
@@ -49,21 +49,28 @@ def row_of(edge: Edge, exact: bool) -> Row:
     forth, back = edge.proof and edge.proof.times(factor), edge.backward and edge.backward.times(-factor)
     if not edge.is_equality:
         sense: Sense = ">=" if turned else "<="
-        return Row(Constraint(named(forth), coefficients, sense, sign * limit), forth)
+        return Row(Constraint(named(forth, held), coefficients, sense, sign * limit), forth)
     first, second = (back, forth) if turned else (forth, back)
-    return Row(Constraint(named(first), coefficients, "==", sign * limit), first, second)
+    return Row(Constraint(named(first, held), coefficients, "==", sign * limit), first, second)
 
 
-def named(proof: Proof | None) -> str:
-    """What a facet is called: the constraints that stop it, the largest multipliers first."""
+def named(proof: Proof | None, held: str = "") -> str:
+    """What a facet is called: the constraints that stop it, the largest multipliers first.
+
+    The row ``held`` that keeps the objective near its optimum comes before all others, and the one that only says what
+    the objective is before none.
+    """
     if proof is None:
         return "outline"
-    found = [name for name, _ in proof.named(NAMED + 2)]
-    names = [name for name in found if name != VALUE] or found
-    count = proof.count - (len(found) - len(names))
-    if count <= NAMED + 1:
-        return " & ".join(names[:count])
-    return " & ".join([*names[:NAMED], f"{count - NAMED} more"])
+    found = [name for name, _ in proof.named(NAMED + 3)]
+    first = [held] if held and proof.includes(held) else []
+    others = [name for name in found if name not in {VALUE, held}]
+    count = proof.count - len(first) - proof.includes(VALUE)
+    if not first and not others:
+        return found[0]
+    if len(first) + count <= NAMED + 1:
+        return " & ".join([*first, *others[:count]])
+    return " & ".join([*first, *others[:NAMED], f"{count - NAMED} more"])
 
 
 def _plain(edge: Edge, exact: bool) -> tuple[tuple[Fraction, ...], Fraction, Fraction]:

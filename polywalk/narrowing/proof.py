@@ -42,6 +42,10 @@ class Exact:
         """How many there are."""
         return len(self.given)
 
+    def includes(self, name: str) -> bool:
+        """Whether a row takes part."""
+        return any(name == other for other, _ in self.given)
+
     def times(self, factor: Fraction) -> Exact:
         """The same, multiplied."""
         return replace(self, factor=self.factor * factor)
@@ -82,6 +86,11 @@ class Rounded:
     def count(self) -> int:
         """How many there are."""
         return len(self._ordered[0])
+
+    def includes(self, name: str) -> bool:
+        """Whether a row takes part."""
+        place = self.program.big.row_places.get(name)
+        return place is not None and place in self._ordered[0]
 
     def times(self, factor: Fraction) -> Rounded:
         """The same, multiplied."""

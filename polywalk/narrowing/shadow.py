@@ -93,13 +93,14 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
         if not found.generators:
             raise
         found.wrap()
-    rows = _complete(found) if found.is_complete else _partial(found)
+    near = wide.held[0][0] if wide.held else ""
+    rows = _complete(found, near) if found.is_complete else _partial(found, near)
     return _shadow(wide, list(rows), asks.runs, touch, found.is_complete)
 
 
-def _complete(found: Outline) -> Iterable[building.Row]:
+def _complete(found: Outline, near: str) -> Iterable[building.Row]:
     edges = sorted(merged(found) if found.touch else found.edges, key=_turn)
-    return [building.row_of(edge, not found.touch) for edge in (*edges, *found.equalities)]
+    return [building.row_of(edge, not found.touch, near) for edge in (*edges, *found.equalities)]
 
 
 def _turn(edge: Edge) -> tuple[float, ...]:
@@ -109,10 +110,12 @@ def _turn(edge: Edge) -> tuple[float, ...]:
     return (atan2(row[1], row[0]),) if len(row) == 2 else row
 
 
-def _partial(found: Outline) -> Iterable[building.Row]:
+def _partial(found: Outline, near: str) -> Iterable[building.Row]:
     """The facets of the hull so far, proved or not."""
     proved = {(edge.direction, edge.limit): edge for edge in found.edges}
-    return [building.row_of(proved.get((face.direction, face.limit), face), not found.touch) for face in found.faces()]
+    return [
+        building.row_of(proved.get((face.direction, face.limit), face), not found.touch, near) for face in found.faces()
+    ]
 
 
 def _shadow(wide: Widened, rows: list[building.Row], runs: int, touch: float, complete: bool) -> Shadow:

@@ -51,7 +51,7 @@ class Tolerances:
     lucky: float = 1e-3
     digits: int = 14
     violation: Fraction = Fraction(1, 10**6)
-    zero: float = 1e-9
+    zero: float = 1e-7
 
 
 TOLERANCES = Tolerances()

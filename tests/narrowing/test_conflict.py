@@ -160,7 +160,9 @@ def test_a_partial_plan_is_completed_or_forbidden() -> None:
     yes = completion(big, {"pump[7]": 4})
     assert yes.verdict == "possible"
     assert dict(yes.values)["pump[7]"] == 4
-    assert all(row.holds(big.to_model().point(dict(yes.values))) for row in big.to_model().constraints)
+    model = big.to_model()
+    point = model.point(dict(yes.values))
+    assert all(row.holds(point) for row in model.constraints)
     no = completion(big, {"pump[7]": "4.5"})
     assert no.verdict == "impossible"
     assert no.conflict is not None
