@@ -175,6 +175,9 @@ class Solver:
             self._solver.cancelSolve()
             done.wait(PATIENCE)
             raise
+        self._solver.HandleUserInterrupt = (
+            False  # a run in this thread must not be called back: Ctrl-C would strike there
+        )
 
     def forget(self) -> None:
         """Drop the basis: the next run starts cold."""
