@@ -70,8 +70,7 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         )
         self._drawn: Any = None
         self._reported: Any = None
-        if not is_slow(model):
-            self.state.settle()
+        self._begin(state)
         given = self.state, self.message
         self.bar, self.axes, self.vertices = ModelBar(*given), AxesBar(*given), VertexPanel(*given)
         self.constraints, self.findings = ConstraintPanel(*given), FindingPanel(*given)
@@ -86,6 +85,14 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
             self.state.observe(watch, name)
         self._open = True
         self.show()
+
+    def _begin(self, given: dict[str, Any]) -> None:
+        """Select the optimum, unless something else was asked for, and review the model."""
+        seen = self.state.region
+        best = seen.optimal if seen is not None and seen.vertices else None
+        if best is not None and not {"vertex", "step"} & set(given):
+            self.state.vertex = best.vertices[0]
+        self.state.settle()
 
     def _arranged(self) -> list[widgets.Widget]:
         help_line = words(self.message, f"<p>{escape(HELP)}</p>")

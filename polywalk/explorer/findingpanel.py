@@ -7,11 +7,13 @@ from typing import Any
 
 import ipywidgets as widgets
 
+from polywalk.errors import PolywalkError
 from polywalk.explorer.errands import SOME_MINUTES, Errand, Order
 from polywalk.explorer.forms import Panel, button, column, heading, row, text_box, words
 from polywalk.explorer.rows import Rows
-from polywalk.explorer.settling import PATIENCE, is_slow, list_and_settle
+from polywalk.explorer.settling import PATIENCE, Settled, is_slow, settle
 from polywalk.model import Model
+from polywalk.region import Region, region
 from polywalk.reviewing import Finding, Suspects, suspects
 from polywalk.table import Table
 
@@ -23,9 +25,11 @@ class FindingPanel(Panel):
         guard = self.message.guard
         self.status, self.words = words(self.message), words(self.message)
         self.rows = Rows(label="findings", layout=self.message.look(widgets.Layout), on_select=guard(self._picked))
-        said = {"budget": PATIENCE, "task": "listing the vertices and reviewing the model"}
-        said["remedy"] = "fix variables or switch constraints off."
-        self.listing = Errand(self.message, "List the vertices and review", self._large, self._listed, **said)
+        said = {"budget": PATIENCE, "remedy": "fix variables or switch constraints off."}
+        task = "listing the vertices"
+        self.listing = Errand(self.message, "List the vertices", self._unlisted, self._listed, task=task, **said)
+        task = "the review"
+        self.reviewing = Errand(self.message, "Review", self._unreviewed, self._reviewed, task=task, **said)
         self.all = button(self.message, "Mark none", self._unmarked, "Select no finding")
         self.allowed = text_box(self.message, "A plan that should be allowed", "300px", placeholder="4, 4, 4")
         self.forbidden = text_box(self.message, "A plan that should not", "300px", placeholder="5, 3, 4")
@@ -39,8 +43,8 @@ class FindingPanel(Panel):
         self._searched: Suspects | None = None
         m = self.message
         facts = row(m, self.allowed, self.forbidden, self.here)
-        slip = [facts, self.search.box, self.suspects, self.told, row(m, self.try_it)]
-        found = [self.status, self.listing.box, self.rows, row(m, self.all), self.words]
+        slip = [facts, row(m, self.search.box, self.try_it), self.told, self.suspects]
+        found = [self.status, self.listing.box, self.reviewing.box, self.rows, row(m, self.all), self.words]
         self.box = column(m, *found, heading(m, "Which slip would explain it?"), *slip)
 
     def _picked(self, place: int | None) -> None:
@@ -52,18 +56,27 @@ class FindingPanel(Panel):
 
     # a large model
 
-    def _large(self) -> Order:
-        state = self.state
-        return list_and_settle, (state.whole, state.model, state.number)
+    def _unlisted(self) -> Order:
+        return region, (self.state.model, PATIENCE)
 
-    def _listed(self, result: Any) -> None:
-        seen, settled = result
+    def _listed(self, seen: Region) -> None:
         if seen.model == self.state.model:
-            self.state.settle(settled, seen)
+            self.state.show_region(seen)
+
+    def _unreviewed(self) -> Order:
+        state = self.state
+        if state.region is None:
+            raise PolywalkError("the vertices are not listed yet, and the review needs them.")
+        return settle, (state.region, state.whole, state.number)
+
+    def _reviewed(self, found: Settled) -> None:
+        if found.review.model == self.state.model:
+            self.state.settle(found)
 
     def close(self) -> None:
         super().close()
         self.listing.drop()
+        self.reviewing.drop()
         self.search.drop()
 
     # suspects
@@ -83,8 +96,16 @@ class FindingPanel(Panel):
         self.told.value = f"<p>{escape(table.title)}</p>" + "".join(f"<p>{escape(note)}</p>" for note in table.notes)
 
     def _tried(self) -> None:
-        if self._searched is not None and self.suspects.selected is not None:
-            self.state.model = self._searched.found[self.suspects.selected].model
+        """Take the suspect's model, and choose the number that it changed or that is missing."""
+        if self._searched is None or self.suspects.selected is None:
+            return
+        one, state = self._searched.found[self.suspects.selected], self.state
+        before = {row.name for row in state.whole.constraints}
+        state.model = one.model
+        added = [row.name for row in state.whole.constraints if row.name not in before]
+        names = [*added, *(row.name for row in state.whole.constraints if row.name == one.place)]
+        if names:
+            state.number = ("right-hand side", names[0])
 
     def show(self) -> None:
         state = self.state
@@ -92,7 +113,9 @@ class FindingPanel(Panel):
         rows = tuple((item.severity, item.title, item.code) for item in listed)
         self.rows.fill(Table("findings", ("severity", "finding", "code"), rows), state.finding)
         self.status.value = self._status()
-        self.listing.box.layout.display = None if is_slow(state.model) else "none"
+        slow = is_slow(state.model)
+        self.listing.box.layout.display = None if slow and state.region is None else "none"
+        self.reviewing.box.layout.display = None if slow and state.region is not None and state.stale else "none"
         self.all.disabled = state.finding is None
         self.words.value = "" if state.finding is None else in_full(listed[state.finding])
 

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field
 
 from polywalk.budget import Budget
 from polywalk.model import Model
-from polywalk.region import Region, region
+from polywalk.region import Region
 from polywalk.region.engine import SMALL_WORK, work
 from polywalk.reviewing import Finding, Review, review, sensitivity
 from polywalk.reviewing.crowding import crowding
@@ -70,9 +70,3 @@ def settle(seen: Region, whole: Model, number: tuple[Kind, str]) -> Settled:
     known = kind == "cost" or name in {row.name for row in seen.model.constraints}
     model = seen.model if known else whole
     return Settled(review(seen.model), sensitivity(seen).tables(), stops(model, kind, name), crowding(seen))
-
-
-def list_and_settle(whole: Model, model: Model, number: tuple[Kind, str]) -> tuple[Region, Settled]:
-    """The same for a large model, with its region; for a child process."""
-    seen = region(model, PATIENCE)
-    return seen, settle(seen, whole, number)

@@ -113,11 +113,13 @@ class State(Traits):
         """Go back to the model as it was given; this can be undone, too."""
         self._edit(self.history.first)
 
-    def settle(self, found: Settled | None = None, seen: Region | None = None) -> None:
+    def show_region(self, seen: Region) -> None:
+        """Show the region of a large model, listed elsewhere."""
+        with self._as_one():
+            self.set_trait("region", seen)
+
+    def settle(self, found: Settled | None = None) -> None:
         """Review the model as it is now, and end ``stale``; or take what was worked out elsewhere."""
-        if seen is not None:
-            with self._as_one():
-                self.set_trait("region", seen)
         if self.region is None:
             return
         kept = self.review.findings[self.finding] if self.review and self.finding is not None else self._kept

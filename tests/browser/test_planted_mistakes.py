@@ -71,17 +71,12 @@ def test_three_planted_mistakes(lab: Lab) -> None:
             fact(lab, log, "A plan that should not", "4, 6, 4")
             searched(lab, log)
             suspect(lab, log, "pump + chips + tank")
-            with log.action("set the limit to 12", 3):
+            with log.action("set the limit to 12", 2):
                 lab.panel("Constraints")
-                lab.page.get_by_role("grid", name="constraints").locator("tbody tr").last.click()
                 lab.page.get_by_label("Exact value").fill("12")
                 lab.page.keyboard.press("Enter")
                 optimum(lab)
         else:
-            with log.action("select the optimum", 2):
-                lab.panel("Vertices")
-                lab.page.get_by_role("grid", name="vertices").locator("tr", has_text="optimal").first.click()
-                lab.page.get_by_role("heading", name="Selected vertex: V").wait_for()
             with log.action("say that it should not be", 2):
                 lab.panel("Findings")
                 lab.page.get_by_role("button", name="The selected vertex should not").click()
@@ -110,8 +105,11 @@ def searched(lab: Lab, log: Log) -> None:
 
 
 def suspect(lab: Lab, log: Log, meant: str) -> None:
-    with log.action(f"try {meant}", 2):
-        lab.page.get_by_role("grid", name="suspects").locator("tbody tr", has_text=meant).first.click()
+    row = lab.page.get_by_role("grid", name="suspects").locator("tbody tr", has_text=meant).first
+    first = row.get_attribute("aria-selected") == "true"
+    with log.action(f"try {meant}", 1 if first else 2):
+        if not first:
+            row.click()
         lab.page.get_by_role("button", name="Try the selected suspect").click()
         lab.page.wait_for_function("() => document.querySelector('.polywalk-verdict').innerText.includes('optimum')")
 

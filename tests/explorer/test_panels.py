@@ -225,17 +225,25 @@ def test_a_large_model_opens_at_once_and_its_vertices_wait_behind_a_button() -> 
     explorer.findings.listing.start.click()
     explorer.findings.listing.stop.click()
     explorer.findings.listing.wait()
-    assert "listing the vertices and reviewing the model was stopped" in explorer.message.value
+    assert "listing the vertices was stopped" in explorer.message.value
     assert explorer.state.region is None
 
 
-def test_what_was_listed_for_a_large_model_is_shown() -> None:
-    from polywalk.explorer.settling import list_and_settle
-
+def test_what_was_listed_for_a_large_model_is_shown_then_reviewed(monkeypatch: pytest.MonkeyPatch) -> None:
+    for room in ("explorer", "state", "findingpanel"):
+        monkeypatch.setattr(f"polywalk.explorer.{room}.is_slow", lambda _: True)
     box = pw.scenarios.cube(4)
     explorer = pw.explore(box)
-    explorer.state.set_trait("region", None)
-    explorer.findings._listed(list_and_settle(box, box, explorer.state.number))
-    assert explorer.state.region == pw.region(box)
-    assert not explorer.state.stale
+    state, panel = explorer.state, explorer.findings
+    state.set_number(2, "right-hand side", "x1 upper")
+    assert state.region is None
+    panel.listing.start.click()
+    panel.listing.wait()
+    assert state.region == pw.region(state.model)
     assert len(explorer.vertices.rows.rows) == 16
+    assert state.stale
+    panel.reviewing.start.click()
+    panel.reviewing.wait()
+    assert not state.stale
+    assert state.review.model == state.model
+    assert explorer.message.value == ""
