@@ -9,7 +9,6 @@ Huangfu & Hall, Parallelizing the dual revised simplex method, Math. Prog. Comp.
 
 from __future__ import annotations
 
-import os
 from collections.abc import Sequence
 from threading import Event, Thread
 from time import monotonic
@@ -20,6 +19,7 @@ import numpy as np
 from polywalk.bigmodel import BigModel
 from polywalk.errors import SolverError
 from polywalk.narrowing.tolerances import TOLERANCES
+from polywalk.reading.highs import highspy, quiet_solver
 
 Status = Literal["optimal", "infeasible", "unbounded", "unclear"]
 
@@ -40,35 +40,9 @@ PATIENCE = 0.7
 """Seconds an interrupted HiGHS may take to stop before it is left alone: Ctrl-C answers within a second."""
 
 
-def highspy() -> Any:
-    """The module, or the error that says how to get it."""
-    try:
-        import highspy as found
-    except ImportError as missing:
-        raise SolverError(
-            "expected the package highspy, which solves large models, and it is not installed; "
-            'install it with: pip install "polywalk[large]".'
-        ) from missing
-    return found
-
-
-def quiet_solver() -> Any:
-    """A Highs object that writes nothing; the first one of a process would print a banner from C."""
-    module = highspy()
-    try:
-        kept = os.dup(1)
-    except OSError:  # no standard output to keep quiet
-        kept = None
-    try:
-        if kept is not None:
-            with open(os.devnull, "wb") as nowhere:
-                os.dup2(nowhere.fileno(), 1)
-        found = module.Highs()
-    finally:
-        if kept is not None:
-            os.dup2(kept, 1)
-            os.close(kept)
-    found.setOptionValue("output_flag", False)
+def precise_solver() -> Any:
+    """A quiet Highs object with this room's tighter tolerances."""
+    found = quiet_solver()
     for name in ("primal_feasibility_tolerance", "dual_feasibility_tolerance"):
         found.setOptionValue(name, TOLERANCES.solver)
     return found
@@ -97,7 +71,7 @@ class Solver:
         self._lasts = 0.0 if big.nonzeros <= DIRECT else SHORT
         self._cold_iterations: int | None = None
         self._module = highspy()
-        self._solver = quiet_solver()
+        self._solver = precise_solver()
         self._load()
 
     def _load(self) -> None:

@@ -19,7 +19,7 @@ def highspy() -> Any:
     except ImportError as missing:
         raise SolverError(
             "expected the package highspy, which reads files and solves large models, and it is not installed; "
-            'install it with: pip install "polywalk[large]".'
+            "install it with: pip install highspy."
         ) from missing
     return found
 
