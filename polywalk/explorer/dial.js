@@ -55,7 +55,8 @@ function render({ model, el }) {
   };
   input.addEventListener("input", moved);
   input.addEventListener("change", release);
-  input.addEventListener("keydown", (event) => { // the page around may keep the keys that a slider acts on by itself
+  const pressed = (event) => { // at the window, first of all: the page around keeps arrow keys from what is inside
+    if (event.target !== input) return;
     const steps = { ArrowRight: 1, ArrowUp: 1, ArrowLeft: -1, ArrowDown: -1, PageUp: 10, PageDown: -10 };
     const by = { ...steps, Home: -Infinity, End: Infinity }[event.key];
     if (by === undefined || event.ctrlKey || event.altKey || event.metaKey) return;
@@ -63,7 +64,8 @@ function render({ model, el }) {
     event.stopPropagation();
     input.value = Math.min(Number(input.max), Math.max(0, Number(input.value) + by));
     moved();
-  });
+  };
+  window.addEventListener("keydown", pressed, true);
   input.addEventListener("keyup", release);
   input.addEventListener("blur", release);
 
@@ -71,6 +73,7 @@ function render({ model, el }) {
   const watched = ["label", "stops", "marks", "place"];
   for (const name of watched) model.on(`change:${name}`, show);
   return () => {
+    window.removeEventListener("keydown", pressed, true);
     for (const name of watched) model.off(`change:${name}`, show);
   };
 }

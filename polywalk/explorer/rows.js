@@ -60,7 +60,8 @@ function render({ model, el }) {
     mark();
     if (focused) lines()[model.get("selected") ?? 0]?.focus();
   };
-  table.addEventListener("keydown", (event) => {
+  const pressed = (event) => { // at the window, first of all: the page around keeps arrow keys from what is inside
+    if (!table.contains(event.target)) return;
     const last = lines().length - 1;
     const now = lines().indexOf(document.activeElement);
     const next = { ArrowDown: now + 1, ArrowUp: now - 1, Home: 0, End: last, Enter: now, " ": now }[event.key];
@@ -68,12 +69,14 @@ function render({ model, el }) {
     event.preventDefault();
     event.stopPropagation();
     select(Math.min(last, Math.max(0, next)), true);
-  });
+  };
+  window.addEventListener("keydown", pressed, true);
 
   fill();
   for (const name of ["columns", "rows", "numbers", "label"]) model.on(`change:${name}`, fill);
   model.on("change:selected", mark);
   return () => {
+    window.removeEventListener("keydown", pressed, true);
     for (const name of ["columns", "rows", "numbers", "label"]) model.off(`change:${name}`, fill);
     model.off("change:selected", mark);
   };

@@ -33,7 +33,8 @@ function render({ model, el }) {
     if (list.children.length !== tabs.length) list.replaceChildren(...tabs);
     mark();
   };
-  list.addEventListener("keydown", (event) => {
+  const pressed = (event) => { // at the window, first of all: the page around keeps arrow keys from what is inside
+    if (!list.contains(event.target)) return;
     const last = list.children.length - 1;
     const now = model.get("shown");
     const next = { ArrowRight: now + 1, ArrowLeft: now - 1, Home: 0, End: last }[event.key];
@@ -41,12 +42,14 @@ function render({ model, el }) {
     event.preventDefault();
     event.stopPropagation();
     open((next + last + 1) % (last + 1), true);
-  });
+  };
+  window.addEventListener("keydown", pressed, true);
 
   fill();
   model.on("change:titles", fill);
   model.on("change:shown", mark);
   return () => {
+    window.removeEventListener("keydown", pressed, true);
     model.off("change:titles", fill);
     model.off("change:shown", mark);
   };

@@ -164,13 +164,14 @@ function render({ model, el }) {
   const report = () => requestAnimationFrame(() => {
     for (const [, part] of scenes(plot)) model.send({ kind: "camera", camera: part._scene.getCamera() });
   });
-  plot.addEventListener("keydown", (event) => {
+  window.addEventListener("keydown", (event) => { // at the window: the page around keeps arrow keys from what is inside
+    if (!plot.contains(event.target)) return;
     const known = ["ArrowLeft", "ArrowRight", "ArrowUp", "ArrowDown", "Home", "End"];
     if (!known.includes(event.key) || event.ctrlKey || event.altKey || event.metaKey) return;
     event.preventDefault();
     event.stopPropagation();
     model.send({ kind: "key", key: event.key });
-  }, { signal: ended.signal });
+  }, until);
 
   const fit = new ResizeObserver(([entry]) => {
     const width = entry.contentRect.width;

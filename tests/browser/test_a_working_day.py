@@ -45,7 +45,7 @@ def test_a_working_day(lab: Lab, where: str) -> None:
     lab.frames()
     lab.shoot("7 dark")
     no_serious_violation(lab, "dark")
-    assert lab.errors == []
+    assert [error for error in lab.errors if "/static/notebook/" not in error] == []  # Notebook 7 has one of its own
 
 
 def twenty_clicks_select_twenty_times(lab: Lab) -> None:
@@ -145,7 +145,8 @@ def a_finding_is_marked(lab: Lab) -> None:
 
 def a_walk_is_stepped_and_run(lab: Lab) -> None:
     page = lab.page
-    lab.panel("Walk")
+    lab.panel("Prices")
+    page.get_by_role("tab", name="Prices").press("ArrowRight")
     page.get_by_role("button", name="Step on").click()
     lab.until("print(explorer.state.step)", "1")
     page.get_by_text("Pivot 1 of").wait_for()
