@@ -147,7 +147,7 @@ class Lab:
 
     def panel(self, title: str) -> None:
         """Open a panel of the explorer."""
-        tab = self.page.get_by_role("tab", name=title)
+        tab = self.page.locator(".polywalk-tabs").first.get_by_role("tab", name=title)
         tab.click()
         self.page.wait_for_function("(tab) => tab.ariaSelected === 'true'", arg=tab.element_handle())
 

@@ -146,7 +146,7 @@ def a_finding_is_marked(lab: Lab) -> None:
 def a_walk_is_stepped_and_run(lab: Lab) -> None:
     page = lab.page
     lab.panel("Prices")
-    page.get_by_role("tab", name="Prices").press("ArrowRight")
+    page.locator(".polywalk-tabs").get_by_role("tab", name="Prices").press("ArrowRight")
     page.get_by_role("button", name="Step on").click()
     lab.until("print(explorer.state.step)", "1")
     page.get_by_text("Pivot 1 of").wait_for()
