@@ -2,18 +2,14 @@
 
 from __future__ import annotations
 
-from base64 import b64encode
 from collections.abc import Iterator
-from dataclasses import replace
 from html import escape
 from typing import Any
 
 import ipywidgets as widgets
 
 from polywalk.drawing import scene
-from polywalk.drawing.compacting import compact
 from polywalk.drawing.interactive import painted
-from polywalk.drawing.static import rendered
 from polywalk.drawing.theme import THEMES
 from polywalk.explorer import texts
 from polywalk.explorer.axesbar import AxesBar
@@ -28,6 +24,7 @@ from polywalk.explorer.resting import Rest
 from polywalk.explorer.settling import is_slow
 from polywalk.explorer.shadows import in_region
 from polywalk.explorer.state import State
+from polywalk.explorer.stills import still
 from polywalk.explorer.tabs import tabbed
 from polywalk.explorer.vertexpanel import VertexPanel
 from polywalk.explorer.view import FigureView
@@ -189,15 +186,6 @@ class Explorer(widgets.VBox):  # type: ignore[misc]
         parts = [texts.verdict(state), still(state), constraint_table(state)._repr_html_()]
         parts += [state.region._repr_html_()] if state.region else []
         return "".join([*parts, state.review._repr_html_() if state.review else ""])
-
-
-def still(state: State) -> str:
-    """The static picture, always light, as an image element that needs no other file."""
-    if state.region is None:
-        return ""
-    drawn = rendered(scene(state.region, replace(state.view, mode="light")), THEMES["light"], "svg", outlines=False)
-    source = f"data:image/svg+xml;base64,{b64encode(compact(drawn.decode()).encode()).decode()}"
-    return f'<img alt="picture of the region" style="max-width: 100%" src="{source}">'
 
 
 def _family(widget: widgets.Widget) -> Iterator[widgets.Widget]:
