@@ -2,8 +2,8 @@
 
 Run: python tests/bench/bench_review.py
 Three variables, an objective. "capacities" and "tangents" as in bench_region; "empty": capacities and a demand that
-they cannot meet, beside the bare enumeration of the capacities. Medians of rounds run in turn, in CPU time. The slope is that of
-the line through (log rows, log milliseconds).
+they cannot meet, beside the bare enumeration of the capacities. Medians of rounds run in turn, in CPU time. The
+slope is that of the line through (log rows, log milliseconds).
 """
 
 from __future__ import annotations
@@ -33,7 +33,9 @@ def bare(rows: Rows) -> None:
 def reviewed(rows: Rows, family: str) -> Model:
     """The rows as a model with an objective; in the empty family with a demand above all capacities."""
     model = model_of(rows).with_objective({"x": 3, "y": 5, "z": 4}, "max")
-    return model.with_constraint("demand", {"x": 1, "y": 1, "z": 1}, ">=", Fraction(200)) if family == "empty" else model
+    return (
+        model.with_constraint("demand", {"x": 1, "y": 1, "z": 1}, ">=", Fraction(200)) if family == "empty" else model
+    )
 
 
 def seconds(work: Callable[[], object]) -> float:

@@ -6,6 +6,7 @@ Whatever found no room is named in the key. Widths are those matplotlib measures
 import random
 from collections.abc import Iterator
 from functools import cache
+from itertools import pairwise
 
 import pytest
 
@@ -121,7 +122,7 @@ def test_no_name_in_the_plane_lies_on_a_line() -> None:
             for line in drawn.lines
             if line.role in {"constraint", "edge", "hatch", "level line"}
             for part in line.parts
-            for a, b in zip(part, part[1:], strict=False)
+            for a, b in pairwise(part)
         ]
         for label, tile in tiles(drawn):
             count += 1
@@ -165,7 +166,7 @@ def test_a_camera_is_named_or_refused() -> None:
     ):
         assert scene(model, View(camera=name)).camera == way
     for camera in ("along boiler", (0.0, 0.0, 0.0), (1.0, 1.0)):
-        with pytest.raises(pw.PolywalkError, match="expected (the|a) camera"):
+        with pytest.raises(pw.PolywalkError, match=r"expected (the|a) camera"):
             pw.draw(model, camera=camera)
     with pytest.raises(pw.PolywalkError, match="expected the size"):
         pw.picture(model, size="poster")
