@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
+from functools import cached_property
 from itertools import combinations
 
 from polywalk.drawing.scene import PAPER, Point
@@ -33,7 +34,7 @@ class Window:
     high: Point
     paper: Point = PAPER
 
-    @property
+    @cached_property
     def extent(self) -> Point:
         """Length along each axis."""
         return tuple(b - a for a, b in zip(self.low, self.high, strict=True))
@@ -43,7 +44,7 @@ class Window:
         """Its centre."""
         return tuple((a + b) / 2 for a, b in zip(self.low, self.high, strict=True))
 
-    @property
+    @cached_property
     def scale(self) -> Point:
         """Pixels (in the plane) or shares of the longest side (in space) for a unit along each axis."""
         if len(self.extent) == 2:
