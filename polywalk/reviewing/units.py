@@ -6,7 +6,7 @@ import re
 from collections import Counter
 from collections.abc import Iterator, Mapping
 
-from polywalk.errors import ModelError, unknown
+from polywalk.errors import unknown
 from polywalk.exact import Row
 from polywalk.model import Model
 from polywalk.reviewing.case import Case
@@ -23,7 +23,7 @@ def read_unit(text: str) -> Unit:
     """A unit as symbols with powers: "EUR/MWh" is (("EUR", 1), ("MWh", -1)); "" and "1" are pure numbers.
 
     Symbols are taken as they are: "MWh" is one symbol, not "MW*h", and kW is not a thousandth of MW. After a "/" only
-    the next symbol is divided by.
+    the next symbol is divided by. Text of another form, such as "MW (thermal)", is one symbol as it stands.
 
     Examples
     --------
@@ -36,7 +36,7 @@ def read_unit(text: str) -> Unit:
     while text[place:].strip():
         found = _PART.match(text, place)
         if found is None or (place and not found[1]):
-            raise ModelError(f"expected a unit such as EUR/MWh or kg*m^2, got {text!r}.", text)
+            return ((text.strip(), 1),)
         if found[2] != "1":
             powers[found[2]] += int(found[3] or 1) * (-1 if found[1] == "/" else 1)
         place = found.end()
@@ -59,13 +59,12 @@ def unit_text(unit: Unit) -> str:
 
 
 def units_given(model: Model, given: Mapping[tuple[str, str], str]) -> Given:
-    """The caller's units of coefficients, names checked; raises UnknownName, ModelError."""
+    """The caller's units of coefficients, names checked; raises UnknownName."""
     rows = [OBJECTIVE, *(row.name for row in model.constraints)]
-    for (row, variable), text in given.items():
+    for row, variable in given:
         model.index(variable)
         if row not in rows:
             raise unknown("constraint", row, rows, "the model (coefficient_units)")
-        read_unit(text)
     return tuple((row, variable, text) for (row, variable), text in given.items())
 
 
