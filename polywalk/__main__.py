@@ -5,13 +5,13 @@ from __future__ import annotations
 import argparse
 import os
 import sys
-import tempfile
 from collections.abc import Sequence
 from pathlib import Path
 
 from polywalk.bigmodel import BigModel
 from polywalk.drawing import draw
-from polywalk.errors import ModelError, PolywalkError
+from polywalk.drawing.writing import write
+from polywalk.errors import DrawingError, ModelError, PolywalkError
 from polywalk.model import Model
 from polywalk.narrowing import conflict, escape, section, shadow, suggest_axes
 from polywalk.reading.mps import from_mps
@@ -213,25 +213,11 @@ def _comparison(walks: Sequence[Walk]) -> str:
 
 def _drawn(target: Path, model: Model, walks: Sequence[Walk]) -> int:
     try:
-        _write(target, draw(region(model), walks=walks).to_html(include_plotlyjs=True))
-    except OSError as error:
-        return _failed(target, error.strerror or str(error))
+        write(target, draw(region(model), walks=walks).to_html(include_plotlyjs=True).encode())
+    except DrawingError as error:
+        return _failed(target, str(error))
     print(f"\nThe picture, to be opened in a browser: {target}")
     return CLEAN
-
-
-def _write(target: Path, text: str) -> None:
-    """The whole file or none of it: written beside the target, then put in its place."""
-    handle, name = tempfile.mkstemp(dir=target.parent, prefix=target.name, suffix=".part")
-    part = Path(name)
-    try:
-        with os.fdopen(handle, "w", encoding="utf-8") as file:
-            file.write(text)
-        part.chmod(0o644)  # a temporary file is private; a picture is for sharing
-        part.replace(target)
-    except BaseException:
-        part.unlink(missing_ok=True)
-        raise
 
 
 def _failed(target: Path, reason: str) -> int:

@@ -104,12 +104,30 @@ class ImprovingRay(Shown):
 
 
 def farkas(model: Model) -> Farkas | None:
-    """The proof that no point satisfies the model, or None where one does."""
+    """The proof that no point satisfies the model, or None where one does.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> proof = pw.farkas(pw.scenarios.harbour_row("infeasible"))
+    >>> {name: int(weight) for name, weight in proof.multipliers.items() if weight}
+    {'harbour main': 1, 'town contract': -1}
+    >>> pw.farkas(pw.scenarios.harbour_row()) is None
+    True
+    """
     return farkas_of(solve(model))
 
 
 def improving_ray(model: Model) -> ImprovingRay | None:
-    """The proof that the model is unbounded, or None where it is infeasible or has an optimum."""
+    """The proof that the model is unbounded, or None where it is infeasible or has an optimum.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> ray = pw.improving_ray(pw.scenarios.harbour_row("unbounded"))
+    >>> [int(step) for step in ray.direction], int(ray.change)
+    ([0, 1, 0], 18)
+    """
     return ray_of(solve(model))
 
 

@@ -103,6 +103,13 @@ def optimum(model: Model) -> Optimum:
     Optimum
         Of several optimal points, or several optimal multipliers, one; see ``Optimum.face`` for all points.
 
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> best = pw.optimum(pw.scenarios.harbour_row())
+    >>> int(best.value), int(best.multipliers["harbour main"])
+    (292, 18)
+
     References
     ----------
     Chvátal, Linear Programming, 1983.

@@ -103,6 +103,13 @@ def section(big: BigModel | Model, keep: Sequence[str], at: Values = "optimum") 
     UnknownName, ModelError, NumberError
         A kept variable or a value's name that is not there, a variable without a value, a value beyond the bounds of
         its variable, a model without optimum for "optimum".
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> found = pw.section(pw.scenarios.harbour_row(), keep=("pump", "chips"), at={"tank": 2})
+    >>> found.model.variables, found.model.constraint("harbour main").rhs
+    (('pump', 'chips'), Fraction(10, 1))
     """
     big = sparse(big)
     if isinstance(keep, str) or not keep:

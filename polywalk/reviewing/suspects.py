@@ -168,6 +168,13 @@ def suspects(
         Nothing is said to be wrong, or what is said contradicts itself or the model.
     UnknownName, NumberError
         A plan with a name that is not there or an entry that is no number.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> found = pw.suspects(pw.scenarios.harbour_row("infeasible")).found
+    >>> {one.place for one in found[:5]}
+    {'town contract'}
     """
     seen, present = symptom_of(model, allowed, forbidden, optimum, symptom)
     if not present:

@@ -41,6 +41,13 @@ class Walk(Shown):
     end : {"optimal", "unbounded", "infeasible", "cycling", "stopped"}
     cycle : tuple of Pivot
         The pivots of one round, where the walk came back to a dictionary it had met; else empty.
+
+    Examples
+    --------
+    >>> import polywalk as pw
+    >>> walk = pw.walk(pw.scenarios.harbour_row(), rule="bland")
+    >>> walk.end, len(walk.pivots), int(walk.value)
+    ('optimal', 6, 292)
     """
 
     model: Model
