@@ -27,7 +27,7 @@ GROUND = {"errors": (), "exact": ("errors",), "table": ("errors", "exact"), "row
 GROUND |= {"model": ("errors", "exact", "table", "rows")}
 GROUND |= {"sides": ("exact", "model"), "bigmodel": ("errors", "exact", "table", "model", "sides")}
 GROUND |= {"budget": ("errors",), "progress": ()}
-"""On the ground floor, who may import whom: errors < exact < table, rows < model < sides < bigmodel; errors < budget."""
+"""Who may import whom on the ground floor: errors < exact < table, rows < model < sides < bigmodel; errors < budget."""
 
 FLOOR = {room: floor for floor, rooms in FLOORS.items() for room in rooms}
 LATE = ("plotly", "matplotlib", "ipywidgets", "anywidget", "scipy.optimize", "pandas", "sympy", "IPython")
