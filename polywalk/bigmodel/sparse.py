@@ -76,6 +76,10 @@ class BigModel(Shown):
     {'x': 1.0, 'y': 1.0}
     >>> big.with_rhs("y upper", 5).to_model().constraint("y upper").rhs
     Fraction(5, 1)
+
+    References
+    ----------
+    Duff, Erisman & Reid, Direct Methods for Sparse Matrices, 1986, chapter 2 (a matrix stored by rows; from memory).
     """
 
     variables: tuple[str, ...]

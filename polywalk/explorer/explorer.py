@@ -230,6 +230,10 @@ def explore(model: Model, **state: Any) -> Explorer:
     >>> explorer.state.set_number("3/2", "right-hand side", "x upper")
     >>> explorer.state.region.value
     Fraction(7, 2)
+
+    References
+    ----------
+    Own design; no published source.
     """
     return Explorer(model, **state)
 

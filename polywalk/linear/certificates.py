@@ -44,6 +44,10 @@ class Farkas(Shown):
     need        -1          x + y ≥ 3
     cap x       1           x ≤ 1
     cap y       1           y ≤ 1
+
+    References
+    ----------
+    See `farkas`.
     """
 
     model: Model
@@ -90,6 +94,10 @@ class ImprovingRay(Shown):
     variable  per step
     x         1
     y         1
+
+    References
+    ----------
+    See `improving_ray`.
     """
 
     model: Model
@@ -106,6 +114,16 @@ class ImprovingRay(Shown):
 def farkas(model: Model) -> Farkas | None:
     """The proof that no point satisfies the model, or None where one does.
 
+    Parameters
+    ----------
+    model : Model
+        Of any kind; integer marks are ignored (the relaxation).
+
+    Returns
+    -------
+    Farkas or None
+        One multiplier a constraint; added up, the constraints contradict themselves.
+
     Examples
     --------
     >>> import polywalk as pw
@@ -114,6 +132,11 @@ def farkas(model: Model) -> Farkas | None:
     {'harbour main': 1, 'town contract': -1}
     >>> pw.farkas(pw.scenarios.harbour_row()) is None
     True
+
+    References
+    ----------
+    Farkas, Theorie der einfachen Ungleichungen, J. reine angew. Math. 124, 1902; Chvátal, Linear Programming, 1983,
+    chapter 16.
     """
     return farkas_of(solve(model))
 
@@ -121,12 +144,26 @@ def farkas(model: Model) -> Farkas | None:
 def improving_ray(model: Model) -> ImprovingRay | None:
     """The proof that the model is unbounded, or None where it is infeasible or has an optimum.
 
+    Parameters
+    ----------
+    model : Model
+        Of any kind; integer marks are ignored (the relaxation).
+
+    Returns
+    -------
+    ImprovingRay or None
+        A feasible point and a direction, both (n,) tuples of Fraction.
+
     Examples
     --------
     >>> import polywalk as pw
     >>> ray = pw.improving_ray(pw.scenarios.harbour_row("unbounded"))
     >>> [int(step) for step in ray.direction], int(ray.change)
     ([0, 1, 0], 18)
+
+    References
+    ----------
+    Chvátal, Linear Programming, 1983, chapter 3 (a column without a leaving slack).
     """
     return ray_of(solve(model))
 

@@ -112,7 +112,8 @@ def optimum(model: Model) -> Optimum:
 
     References
     ----------
-    Chvátal, Linear Programming, 1983.
+    Chvátal, Linear Programming, 1983, chapters 2 and 3 (the method) and 5 (the proof by duality); Bland, New finite
+    pivoting rules for the simplex method, Math. Oper. Res. 2, 1977.
     """
     solved = solve(model)
     last = solved.dictionary

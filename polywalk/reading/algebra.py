@@ -75,6 +75,10 @@ def from_algebra(
     heat demand  pump + 2 chips ≥ 11
     pump lower   pump ≥ 0             bounds
     free (no bound of their own): chips
+
+    References
+    ----------
+    Own notation, close to Python's; no published source.
     """
     goal, aim = _objective(minimize, maximize)
     rows = [row for label, text in _named(constraints) for row in _rows(label, text)]

@@ -80,6 +80,10 @@ def from_highs(solver: Any, *, name: str = "", notes: Sequence[str] = ()) -> Big
     >>> row = solver.addConstr(x + 2 * y <= 6, name="labour")
     >>> pw.from_highs(solver).row("labour")
     {'x': 1.0, 'y': 2.0}
+
+    References
+    ----------
+    Huangfu & Hall, Parallelizing the dual revised simplex method, Math. Prog. Comp. 10, 2018 (HiGHS).
     """
     if not (hasattr(solver, "getLp") and hasattr(solver, "getHessianNumNz")):
         raise ModelError(f"expected a highspy.Highs object, got {type(solver).__name__}.", solver)

@@ -61,6 +61,11 @@ def from_mps(path: Source) -> BigModel:
     >>> pw.to_mps(pw.scenarios.harbour_row(), path)
     >>> pw.from_mps(path).to_model().constraint("harbour main").rhs
     Fraction(12, 1)
+
+    References
+    ----------
+    Murtagh, Advanced Linear Programming: Computation and Practice, 1981 (the format; from memory); Huangfu & Hall,
+    Parallelizing the dual revised simplex method, Math. Prog. Comp. 10, 2018 (HiGHS).
     """
     highspy()
     text = text_of(path)

@@ -46,6 +46,10 @@ def to_mps(model: Model | BigModel, path: Source) -> None:
     part       count  of which
     variables  3      0 free, 1 with two bounds, 0 fixed, 0 integer
     rows       5      0 equalities, 0 with two sides, 0 without a side
+
+    References
+    ----------
+    Murtagh, Advanced Linear Programming: Computation and Practice, 1981 (the format; from memory).
     """
     big = BigModel.from_model(model) if isinstance(model, Model) else model
     put_text(path, "\n".join(_lines(_split(big))) + "\n")

@@ -69,6 +69,10 @@ def from_toml(path: Source) -> Model:
     heat demand  1/3 pump + chips ≤ 4
     pump lower   pump ≥ 0              bounds
     free (no bound of their own): chips
+
+    References
+    ----------
+    TOML v1.0.0, toml.io, 2021 (the syntax; the keys are our own).
     """
     text = text_of(path)
     try:

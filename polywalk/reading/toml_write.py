@@ -51,6 +51,10 @@ def to_toml(model: Model, path: Source) -> None:
     <BLANKLINE>
     >>> pw.from_toml(path) == model
     True
+
+    References
+    ----------
+    See `from_toml`.
     """
     put_text(path, toml_text(model))
 

@@ -32,8 +32,8 @@ def klee_minty(n: int = 3, form: str = "2/5", epsilon: object = "1/4") -> Model:
 
     Raises
     ------
-    ModelError, UnknownName
-        A size or epsilon out of its range, another form.
+    ModelError, UnknownName, NumberError
+        A size or epsilon out of its range, another form, an epsilon that is no number.
 
     Examples
     --------
@@ -140,6 +140,20 @@ def goldfarb(n: int = 3) -> Model:
 def cube(n: int = 3) -> Model:
     """The unit cube, maximizing the sum of all variables: 2**n vertices, 2n facets.
 
+    Parameters
+    ----------
+    n : int, optional
+        Number of variables, from 1 to 12.
+
+    Returns
+    -------
+    Model
+
+    Raises
+    ------
+    ModelError
+        A size out of its range.
+
     Examples
     --------
     >>> from polywalk.scenarios import cube
@@ -148,7 +162,7 @@ def cube(n: int = 3) -> Model:
 
     References
     ----------
-    Ziegler, Lectures on Polytopes, Springer 1995.
+    Ziegler, Lectures on Polytopes, Springer 1995, lecture 0 (cubes and cross-polytopes).
     """
     _check_size(n, 12)
     names = [f"x{j}" for j in range(1, n + 1)]
@@ -158,6 +172,20 @@ def cube(n: int = 3) -> Model:
 def cross_polytope(n: int = 3) -> Model:
     """All points with sum of absolute values at most 1, free variables, maximizing the first: 2n vertices, 2**n facets.
 
+    Parameters
+    ----------
+    n : int, optional
+        Number of variables, from 1 to 8.
+
+    Returns
+    -------
+    Model
+
+    Raises
+    ------
+    ModelError
+        A size out of its range.
+
     Examples
     --------
     >>> from polywalk.scenarios import cross_polytope
@@ -166,7 +194,7 @@ def cross_polytope(n: int = 3) -> Model:
 
     References
     ----------
-    Ziegler, Lectures on Polytopes, Springer 1995.
+    Ziegler, Lectures on Polytopes, Springer 1995, lecture 0 (cubes and cross-polytopes).
     """
     _check_size(n, 8)
     rows = {}

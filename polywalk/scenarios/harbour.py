@@ -72,6 +72,10 @@ def harbour_row(variant: str = "base") -> Model:
     tank lower          tank ≥ 0                  bounds
     tank upper          tank ≤ 4                  bounds
     units: pump in MW, chips in MW, tank in MW
+
+    References
+    ----------
+    Own model; no published source.
     """
     if variant not in VARIANTS:
         raise unknown("variant", variant, VARIANTS, "Harbour Row")

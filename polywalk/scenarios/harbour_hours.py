@@ -35,6 +35,10 @@ TIMBER = 0.6
 def harbour_day() -> BigModel:
     """Harbour Row over one winter day: `harbour_year` (24).
 
+    Returns
+    -------
+    BigModel
+
     Examples
     --------
     >>> from polywalk.scenarios import harbour_day
@@ -43,6 +47,10 @@ def harbour_day() -> BigModel:
     part       count  of which
     variables  96     0 free, 72 with two bounds, 0 fixed, 0 integer
     rows       145    48 equalities, 0 with two sides, 0 without a side
+
+    References
+    ----------
+    See `harbour_year`.
     """
     return harbour_year(DAY)
 
@@ -88,6 +96,10 @@ def harbour_year(hours: int = YEAR) -> BigModel:
     >>> year = harbour_year()
     >>> year.n, year.m, year.row("quay pipe[7]")
     (35040, 52561, {'pump[7]': 1.0, 'tank[7]': 1.0})
+
+    References
+    ----------
+    Own model; no published source.
     """
     if isinstance(hours, bool) or not isinstance(hours, int) or hours < 2:
         raise ModelError(f"expected at least 2 whole hours, got {hours!r}.", hours)

@@ -13,6 +13,10 @@ def beale() -> Model:
 
     Optimum -1/20 at (1/25, 0, 1, 0).
 
+    Returns
+    -------
+    Model
+
     Examples
     --------
     >>> from polywalk.scenarios import beale
@@ -35,6 +39,10 @@ def beale() -> Model:
 def chvatal() -> Model:
     """Four variables, three rows: Dantzig's rule with lowest-index ties circles through six bases. Optimum 1.
 
+    Returns
+    -------
+    Model
+
     Examples
     --------
     >>> from polywalk.scenarios import chvatal
@@ -43,7 +51,7 @@ def chvatal() -> Model:
 
     References
     ----------
-    Chvatal, Linear Programming, Freeman 1983, chapter 3.
+    Chvátal, Linear Programming, Freeman 1983, chapter 3 (coefficients from memory).
     """
     return _four_variables(
         "Chvátal",
@@ -55,6 +63,10 @@ def chvatal() -> Model:
 
 def kuhn() -> Model:
     """Four variables, three rows: Dantzig's rule circles when leaving ties go to the first row. Optimum -2.
+
+    Returns
+    -------
+    Model
 
     Examples
     --------
@@ -84,6 +96,10 @@ def circling() -> Model:
 
     Optimum 2 at (2, 1, 0); the region has 5 vertices and 5 facets. Found by search, starting from Marshall &
     Suurballe; no published source. With two decisions no rule of ties can circle (their theorem).
+
+    Returns
+    -------
+    Model
 
     Examples
     --------

@@ -200,9 +200,11 @@ def bases(model: Model, vertex: object, limit: int = 5_000) -> Bases:
     Raises
     ------
     WalkError
-        No such vertex; a region without vertices.
+        No such vertex; a region without vertices; a limit that is no number of bases.
     UnknownName, NumberError
         A point that is no point of the model's decisions.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -218,6 +220,12 @@ def bases(model: Model, vertex: object, limit: int = 5_000) -> Bases:
     B2     press, y lower   yes
     >>> print(found.route(pw.walk(model)))
     dantzig with lowest-index: B1 (0 stays), optimal here
+
+    References
+    ----------
+    Gal, On the structure of the set bases of a degenerate point, J. Optim. Theory Appl. 45, 1985 (bases as a graph of
+    degenerate pivots; from memory); Whitney, On the abstract properties of linear dependence, Amer. J. Math. 57, 1935
+    (exchange reaches all of them).
     """
     if isinstance(limit, bool) or not isinstance(limit, int) or limit < 1:
         raise WalkError(f"expected as limit a number of bases, 1 or more, got {limit!r}.", culprit=limit)

@@ -66,6 +66,8 @@ def compare(  # noqa: PLR0917 (the order of walk, as far as it goes)
     ------
     WalkError
         An unknown rule, a start that is no vertex or basis, a region with a line, no start at all.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -73,6 +75,11 @@ def compare(  # noqa: PLR0917 (the order of walk, as far as it goes)
     >>> print(pw.compare(pw.scenarios.klee_minty(3), rules=["dantzig", "bland"]).recommendation)
     recommendation: bland needs 5 pivots from rest (V0), fewer than any other. It holds for this model and these \
 starts, and proves nothing for others.
+
+    References
+    ----------
+    Moore, The shortest path through a maze, Proc. Int. Symp. on the Theory of Switching, 1959 (the shortest paths).
+    Each rule names its own source (see `walk`); the ranking has no published source.
     """
     check_numbers(seed, limit)
     pairs = _pairs(rules, leaving)

@@ -105,6 +105,11 @@ def dual_walk(
     pivot  phase  entering  leaving  step  kind  objective  point
     1      dual   y         need     3     step  6          (0, 3)
     2      dual   x         mix      1     step  7          (1, 2)
+
+    References
+    ----------
+    Lemke, The dual method of solving the linear programming problem, Naval Res. Logist. Quart. 1, 1954; Bland, New
+    finite pivoting rules for the simplex method, Math. Oper. Res. 2, 1977 ("lowest-index", in the dual).
     """
     check_numbers(0, limit)
     opened, rule = dictionary_of(model), _dual_rule(leaving)

@@ -48,6 +48,10 @@ class Walk(Shown):
     >>> walk = pw.walk(pw.scenarios.harbour_row(), rule="bland")
     >>> walk.end, len(walk.pivots), int(walk.value)
     ('optimal', 6, 292)
+
+    References
+    ----------
+    See `walk`.
     """
 
     model: Model

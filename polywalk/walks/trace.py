@@ -76,7 +76,9 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     ------
     WalkError
         An unknown rule, a rule that chooses what it may not, a start that is no vertex or basis or not optimal for the
-        start objective, a region with a line.
+        start objective, a region with a line, a seed or limit that is no whole number.
+    BudgetError
+        A start by its vertex, of which there are too many to list.
 
     Examples
     --------
@@ -88,6 +90,13 @@ def walk(  # noqa: PLR0917 (the order is the published one)
     pivot  phase  entering  leaving  step  kind  objective  point
     1      2      x         labour   2     step  6          (2, 0)
     2      2      y         y upper  3     step  7.5        (0.5, 3)
+
+    References
+    ----------
+    Dantzig, Linear Programming and Extensions, 1963; Chvátal, Linear Programming, 1983, chapters 2 and 3 (dictionaries;
+    Phase I by an auxiliary variable); Vanderbei, Linear Programming: Foundations and Extensions, chapter 5 (Phase I by
+    the dual method; from memory). Each rule names its own source in ``polywalk.walks.entering`` and
+    ``polywalk.walks.leaving``.
     """
     check_numbers(seed, limit)
     opened = dictionary_of(model)
