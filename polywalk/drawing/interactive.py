@@ -34,7 +34,11 @@ def draw(source: Source, view: View | None = None, **changes: Any) -> go.Figure:
     Raises
     ------
     DrawingError
-        The axes do not fit the model, or a field that View does not have.
+        More than three axes, a value that does not fit, or a field that View does not have.
+    UnknownName, DuplicateName
+        An axis that is no variable, or given twice.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -43,6 +47,10 @@ def draw(source: Source, view: View | None = None, **changes: Any) -> go.Figure:
     >>> figure = pw.draw(model, walks=[pw.walk(model)])
     >>> figure.layout.title.text
     '<b>Feasible region</b>'
+
+    References
+    ----------
+    Okabe & Ito, Color Universal Design, 2008 (the colours; the drawing is our own).
     """
     import plotly.graph_objects as go
 

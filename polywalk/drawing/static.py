@@ -80,7 +80,11 @@ def picture(
     Raises
     ------
     DrawingError
-        Another ending, a folder that does not exist or may not be written, or axes that do not fit the model.
+        Another ending, a folder that does not exist or may not be written, or a view as for `draw`.
+    UnknownName, DuplicateName
+        An axis that is no variable, or given twice.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -90,6 +94,10 @@ def picture(
     >>> with tempfile.TemporaryDirectory() as folder:
     ...     pw.picture(model, pathlib.Path(folder) / "region.pdf")
     picture of a region (pdf, region.pdf)
+
+    References
+    ----------
+    Okabe & Ito, Color Universal Design, 2008 (the colours; the drawing is our own).
     """
     target = None if path is None else target_of(Path(path))
     ending = target.suffix.lower()[1:] if target else "svg"

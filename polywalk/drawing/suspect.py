@@ -44,7 +44,11 @@ def before_after(
     Raises
     ------
     DrawingError
-        Another ending, a folder that does not exist, axes that do not fit the model.
+        Another ending, a folder that does not exist or may not be written, or a view as for `draw`.
+    UnknownName, DuplicateName
+        An axis that is no variable, or given twice.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -53,6 +57,10 @@ def before_after(
     >>> suspect = pw.suspects(model, allowed=[(2, 3, 1)]).found[0]
     >>> pw.before_after(model, suspect)
     picture of a region (svg)
+
+    References
+    ----------
+    See `picture`.
     """
     target = None if path is None else target_of(Path(path))
     ending = target.suffix.lower()[1:] if target else "svg"

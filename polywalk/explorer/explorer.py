@@ -216,8 +216,8 @@ def explore(model: Model, **state: Any) -> Explorer:
 
     Raises
     ------
-    UnknownName, WalkError, DrawingError
-        A rule, vertex, step or axis that is not there.
+    UnknownName, WalkError, DrawingError, ModelError
+        A rule, vertex, step, axis or number that is not there.
 
     Examples
     --------

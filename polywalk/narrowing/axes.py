@@ -100,7 +100,10 @@ def suggest_axes(
     ------
     ModelError
         Without an objective or an optimum.
-    SolverError, UnknownName
+    UnknownName, NumberError
+        A name that is not there, a distance that is no number.
+    SolverError
+        HiGHS is missing, or stopped without an answer.
 
     Examples
     --------
@@ -109,6 +112,11 @@ def suggest_axes(
     >>> from polywalk.scenarios import harbour_row
     >>> suggest_axes(BigModel.from_model(harbour_row()), within="5%").names
     ('pump', 'chips', 'tank')
+
+    References
+    ----------
+    Mahadevan & Schilling, The effects of alternate optimal solutions in constraint-based genome-scale metabolic models,
+    Metabolic Engineering 5, 2003 (every variable's range near the optimum).
     """
     big = sparse(big)
     held = near(big, within)

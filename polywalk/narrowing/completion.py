@@ -70,9 +70,17 @@ def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
     plan : mapping of str to number
         The values of some variables.
 
+    Returns
+    -------
+    Completion
+        A whole plan with these values, or the conflict that forbids them.
+
     Raises
     ------
-    UnknownName, NumberError, SolverError
+    UnknownName, NumberError
+        A name that is not there, a value that is no number.
+    SolverError
+        HiGHS is missing, or stopped without an answer.
 
     Examples
     --------
@@ -86,6 +94,11 @@ def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
     pump as planned     pump = 5
     chips as planned    chips = 0
     units: pump in MW, chips in MW
+
+    References
+    ----------
+    Applegate, Cook, Dash & Espinoza, Exact solutions to linear programming problems, Oper. Res. Lett. 35, 2007 (a
+    solver's basis read exactly); for what stops it see `conflict`.
     """
     big = sparse(big)
     asked = tuple((name, exact(value)) for name, value in plan.items())

@@ -54,6 +54,11 @@ def escape(big: BigModel | Model) -> Model | None:
     constraint   rule       origin
     chips lower  chips ≥ 0
     units: chips in MW
+
+    References
+    ----------
+    Schrijver, Theory of Linear and Integer Programming, 1986, chapter 8 (directions that never leave a polyhedron).
+    Which constraints are kept has no published source.
     """
     big = sparse(big)
     if big.goal is None:

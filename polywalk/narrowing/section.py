@@ -110,6 +110,11 @@ def section(big: BigModel | Model, keep: Sequence[str], at: Values = "optimum") 
     >>> found = pw.section(pw.scenarios.harbour_row(), keep=("pump", "chips"), at={"tank": 2})
     >>> found.model.variables, found.model.constraint("harbour main").rhs
     (('pump', 'chips'), Fraction(10, 1))
+
+    References
+    ----------
+    Applegate, Cook, Dash & Espinoza, Exact solutions to linear programming problems, Oper. Res. Lett. 35, 2007 (the
+    optimum read exactly from a solver's basis).
     """
     big = sparse(big)
     if isinstance(keep, str) or not keep:

@@ -39,6 +39,11 @@ def region(model: Model, budget: Budget | None = None) -> Region:
     >>> half_line = pw.region(pw.Model(("x",), (cap,)))
     >>> half_line.status, half_line.vertices[0].point, half_line.rays[0].direction
     ('unbounded', (Fraction(3, 2),), (Fraction(-1, 1),))
+
+    References
+    ----------
+    Motzkin, Raiffa, Thompson & Thrall, The double description method, Contributions to the Theory of Games II, 1953;
+    Fukuda & Prodon, Double description method revisited, LNCS 1120, 1996 (by cddlib).
     """
     found = generators(model, budget)
     names = [row.name for row in model.constraints]

@@ -39,6 +39,8 @@ def project(whole: Region, onto: Sequence[str], budget: Budget | None = None) ->
     ------
     UnknownName, DuplicateName, ModelError
         A name that is no variable, a name given twice, no name at all.
+    BudgetError
+        The budget gave out before the facets were listed.
 
     Examples
     --------
@@ -53,6 +55,10 @@ def project(whole: Region, onto: Sequence[str], budget: Budget | None = None) ->
     constraint        rule   origin
     x lower           x ≥ 0
     y lower & labour  x ≤ 4
+
+    References
+    ----------
+    Ziegler, Lectures on Polytopes, 1995, lecture 1 (a projection of a polyhedron is one; its facets as in `region`).
     """
     model = whole.model
     places = _places(model, onto)

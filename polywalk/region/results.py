@@ -50,6 +50,11 @@ class Region(Shown):
     V0      0  0  x lower, y lower  no
     V1      0  4  x lower, labour   no
     V2      4  0  y lower, labour   no
+
+    References
+    ----------
+    Ziegler, Lectures on Polytopes, 1995, lecture 2 (faces); Büeler, Enge & Fukuda, Exact volume computation for
+    polytopes: a practical study, DMV Seminar 29, 2000 (volume).
     """
 
     model: Model

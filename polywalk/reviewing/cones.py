@@ -152,6 +152,11 @@ def cones(source: Model | Region) -> Cones:
     Cones
         Without members where the region is empty.
 
+    Raises
+    ------
+    BudgetError
+        The vertices are too many to list.
+
     Examples
     --------
     >>> import polywalk as pw
@@ -167,6 +172,10 @@ def cones(source: Model | Region) -> Cones:
     made of labour (2, 1); y upper (0, 1)
     >>> found.best({"x": 2, "y": 1})
     ('V2', 'V3')
+
+    References
+    ----------
+    Ziegler, Lectures on Polytopes, 1995, chapter 7 (the normal fan).
     """
     whole = source if isinstance(source, Region) else region(source)
     goal: Goal = whole.model.objective.goal if whole.model.objective else "max"

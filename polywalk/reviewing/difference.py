@@ -182,6 +182,8 @@ def difference(before: Model | Region, after: Model | Region) -> Difference:
     ------
     ModelError
         The variables are not the same.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -191,6 +193,10 @@ def difference(before: Model | Region, after: Model | Region) -> Difference:
     ...     print(line)
     The change cuts off 39 of 827/6 (28%) and adds nothing.
     5 vertices are lost, 4 gained and 8 kept.
+
+    References
+    ----------
+    Own choice of what to compare; no published source.
     """
     old = before if isinstance(before, Region) else region(before)
     new = after if isinstance(after, Region) else region(after)
@@ -209,10 +215,16 @@ def versions(models: Sequence[Model | Region], names: Sequence[str] | None = Non
     names : sequence of str, optional
         What each is called; default: "version 1", "version 2", ...
 
+    Returns
+    -------
+    Versions
+
     Raises
     ------
     ModelError
         No version, names for another number of versions, variables that differ.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -221,6 +233,10 @@ def versions(models: Sequence[Model | Region], names: Sequence[str] | None = Non
     >>> found = pw.versions([model, model.with_rhs("harbour main", 10)], ["as drafted", "narrow main"])
     >>> [step.cut_off.volume for step in found.steps]
     [Fraction(39, 1)]
+
+    References
+    ----------
+    See `difference`.
     """
     if not models:
         raise ModelError("expected at least one version of a model, got none.", models)

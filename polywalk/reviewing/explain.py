@@ -138,6 +138,11 @@ def explain(
     which prices  nearest are the only optimal ones: doors 1.5, hours 1
     signs         no optimum gives doors and hours a price of this sign
     solver tolerance: 1e-06 of a right-hand side, 1e-06 of the optimal value, 1e-06 of a price (below size 1, as of 1)
+
+    References
+    ----------
+    Schrijver, Theory of Linear and Integer Programming, 1986, chapter 7 (duality, complementary slackness); the
+    tolerances as in ``polywalk.reviewing.tolerances``.
     """
     model = source.model if isinstance(source, Region) else source
     whole = source if isinstance(source, Region) else region(model) if is_small(model) else None

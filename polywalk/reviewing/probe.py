@@ -147,6 +147,11 @@ def probe(model: Model, plan: Mapping[str, object] | Iterable[object]) -> Probe:
     >>> import polywalk as pw
     >>> pw.probe(pw.scenarios.harbour_row(), {"pump": 5, "chips": 0}).verdict
     'outside'
+
+    References
+    ----------
+    Kuhn & Tucker, Nonlinear programming, 1951 (the nearest plan is proved by their conditions); Goldfarb & Idnani, A
+    numerically stable dual method for solving strictly convex quadratic programs, Math. Program. 27, 1983.
     """
     if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
         raise ModelError(f"expected a plan as names and values or a list of values, got {plan!r}.", plan)

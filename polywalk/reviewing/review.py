@@ -102,6 +102,12 @@ def review(
     error | no plan satisfies every constraint: harbour main and town contract contradict each other
     error | conflict: harbour main and town contract
     note | raising harbour main by 2, to 14, alone restores feasibility
+
+    References
+    ----------
+    Gleeson & Ryan, Identifying minimally infeasible subsystems of inequalities, ORSA J. Computing 2, 1990 (conflicts);
+    Telgen, Identifying redundant constraints and implicit equalities, Management Science 29, 1983. What else is
+    checked, and how severe it is, has no published source unless its module names one.
     """
     case = Case(
         model, limits or Limits(), _weights(model, weights or {}), units_given(model, coefficient_units or {}), budget

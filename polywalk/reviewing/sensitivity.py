@@ -230,6 +230,11 @@ def sensitivity(source: Model | Region) -> Sensitivity:
     >>> price = sensitivity(model).price("hours")
     >>> price.left, price.right, price.low, price.high
     (Fraction(1, 1), Fraction(1, 1), Fraction(12, 1), Fraction(24, 1))
+
+    References
+    ----------
+    Aucamp & Steinberg, The computation of shadow prices in linear programming, J. Oper. Res. Soc. 33, 1982; Jansen, de
+    Jong, Roos & Terlaky, Sensitivity analysis in linear programming: just be careful!, Eur. J. Oper. Res. 101, 1997.
     """
     model = source.model if isinstance(source, Region) else source
     best = optimum(model)

@@ -147,7 +147,7 @@ def suspects(
     ----------
     model : Model
     allowed, forbidden : list of plans, optional
-        Plans (mappings or sequences, every variable) that should be allowed, or should not.
+        Plans that should be allowed, or should not: mappings of str to number, or (n,) sequences of numbers.
     optimum : number or plan, optional
         What the optimal value should be (within a solver's tolerance), or a plan that should be optimal.
     symptom : {"infeasible", "empty", "unbounded"}, optional
@@ -175,6 +175,11 @@ def suspects(
     >>> found = pw.suspects(pw.scenarios.harbour_row("infeasible")).found
     >>> {one.place for one in found[:5]}
     {'town contract'}
+
+    References
+    ----------
+    McFadden, Conditional logit analysis of qualitative choice behavior, Frontiers in Econometrics, 1974 (how the
+    weights of the ranking were fitted). The slips and the search have no published source.
     """
     seen, present = symptom_of(model, allowed, forbidden, optimum, symptom)
     if not present:

@@ -153,6 +153,11 @@ def value_function(source: Model | Region, *, rhs: str | None = None, cost: str 
     at 24 the optimal value is 42
     below 0 the model is infeasible
     now 18: optimal value 36
+
+    References
+    ----------
+    Gal, Postoptimal Analyses, Parametric Programming, and Related Topics, 1979; Gass & Saaty, The computational
+    algorithm for the parametric objective function, Naval Res. Logist. Quart. 2, 1955.
     """
     model = source.model if isinstance(source, Region) else source
     if (rhs is None) == (cost is None):

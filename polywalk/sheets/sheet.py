@@ -109,7 +109,9 @@ def sheet(
         Another ending, a folder that does not exist or may not be written, axes that do not fit, a review of another
         model, another paper.
     UnknownName
-        A section that does not exist.
+        A section that does not exist, an axis that is no variable.
+    BudgetError
+        The vertices are too many to list.
 
     Examples
     --------
@@ -117,6 +119,10 @@ def sheet(
     >>> found = pw.sheet(pw.scenarios.harbour_row("two decisions"), date="2026-01-31", sections=["summary", "model"])
     >>> "The best plan is V4: pump = 5 MW, chips = 5 MW" in found.html
     True
+
+    References
+    ----------
+    Own layout; no published source.
     """
     target = None if path is None else target_of(Path(path), (".html", ".htm"))
     change = source if isinstance(source, Difference) else None

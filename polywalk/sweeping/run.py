@@ -63,6 +63,10 @@ def sweep(
         from concurrent.futures import ProcessPoolExecutor
         with ProcessPoolExecutor() as pool:
             found = pw.sweep(hours, executor=pool)
+
+    References
+    ----------
+    Quinlan, PEP 3148: futures, execute computations asynchronously, 2009 (executors).
     """
     if isinstance(what, str) and what not in QUESTIONS:
         raise unknown("question", what, QUESTIONS, "a sweep")
