@@ -2,7 +2,7 @@
 
 from polywalk.reviewing.codes import CODES
 from polywalk.reviewing.cones import Cones, cones
-from polywalk.reviewing.difference import Difference, Versions, difference, versions
+from polywalk.reviewing.difference import Difference, difference
 from polywalk.reviewing.expectations import EXPECTATIONS
 from polywalk.reviewing.explain import Explanation, explain
 from polywalk.reviewing.findings import Finding, Proof, Review
@@ -12,6 +12,7 @@ from polywalk.reviewing.review import CHECKS, review
 from polywalk.reviewing.sensitivity import Sensitivity, sensitivity
 from polywalk.reviewing.suspects import Suspect, Suspects, suspects
 from polywalk.reviewing.value import ValueFunction, value_function
+from polywalk.reviewing.versions import Versions, versions
 
 __all__ = [
     "CHECKS",

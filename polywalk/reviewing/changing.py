@@ -14,7 +14,8 @@ from polywalk.reviewing.telling import listed
 from polywalk.table import Table, cell
 
 if TYPE_CHECKING:
-    from polywalk.reviewing.difference import Difference, Versions
+    from polywalk.reviewing.difference import Difference
+    from polywalk.reviewing.versions import Versions
 
 DIMENSIONS = {1: "length", 2: "area", 3: "volume"}
 
