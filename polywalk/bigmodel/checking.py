@@ -4,15 +4,23 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from math import isfinite
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 import numpy as np
+from numpy.typing import NDArray
 
 from polywalk.errors import DuplicateName, ModelError, unknown
 from polywalk.model import GOAL
 
 if TYPE_CHECKING:
     from polywalk.bigmodel.sparse import BigModel, Floats
+
+
+def frozen(values: Any, kind: type) -> Any:
+    """A read-only copy of these numbers."""
+    array: NDArray[Any] = np.array(values, dtype=kind)
+    array.setflags(write=False)
+    return array
 
 
 def check(big: BigModel) -> None:

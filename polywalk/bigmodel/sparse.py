@@ -15,8 +15,9 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from polywalk.bigmodel.checking import check
+from polywalk.bigmodel.checking import check, frozen
 from polywalk.bigmodel.exchange import from_model, to_model
+from polywalk.bigmodel.keeping import only
 from polywalk.bigmodel.naming import dropped, moved
 from polywalk.bigmodel.telling import overview
 from polywalk.errors import unknown
@@ -103,7 +104,7 @@ class BigModel(Shown):
         if not len(self.cost):
             object.__setattr__(self, "cost", np.zeros(len(self.variables)))
         for label in _ARRAYS:
-            object.__setattr__(self, label, _frozen(getattr(self, label), np.int64 if label in _WHOLE else np.float64))
+            object.__setattr__(self, label, frozen(getattr(self, label), np.int64 if label in _WHOLE else np.float64))
         object.__setattr__(self, "constant", float(self.constant))
         check(self)
 
@@ -165,9 +166,13 @@ class BigModel(Shown):
         pairs = zip(self.indices[part], self.data[part], strict=True)
         return {self.variables[column]: float(value) for column, value in pairs}
 
+    @cached_property
+    def _unit_of(self) -> dict[str, str]:
+        return dict(self.units)
+
     def unit(self, name: str) -> str:
         """The unit of a variable or row, or "" where none was given."""
-        return dict(self.units).get(name, "")
+        return self._unit_of.get(name, "")
 
     def csr(self) -> Any:
         """The matrix as a scipy.sparse.csr_array; the arrays are shared and read-only."""
@@ -211,6 +216,10 @@ class BigModel(Shown):
         lower[place] = upper[place] = float(exact(value))
         return replace(self, lower=lower, upper=upper)
 
+    def only(self, *variables: str) -> BigModel:
+        """A copy with these variables and the rows that have no others; its last note names the rows left out."""
+        return only(self, variables)
+
     # to the exact model and back
 
     def to_model(self) -> Model:
@@ -238,9 +247,3 @@ class BigModel(Shown):
 
 _WHOLE = ("indptr", "indices")
 _ARRAYS = (*_WHOLE, "data", "row_lower", "row_upper", "lower", "upper", "cost")
-
-
-def _frozen(values: Any, kind: type) -> Any:
-    array: NDArray[Any] = np.array(values, dtype=kind)
-    array.setflags(write=False)
-    return array

@@ -116,6 +116,53 @@ def test_a_row_goes_with_its_coefficients_and_its_unit():
     assert plant().without("sum lower", "sum upper").rows == ("tie", "cap")
 
 
+def test_a_few_variables_keep_the_rows_that_have_no_others():
+    random = np.random.default_rng(5)
+    dropped = 0
+    for _ in range(60):
+        n, m = 5, 7
+        cells = random.integers(-1, 2, (m, n)) * (random.random((m, n)) < 0.6)
+        big = BigModel(
+            variables=tuple("abcde"),
+            rows=tuple(f"r{i}" for i in range(m)),
+            indptr=np.arange(m + 1) * n,  # the zeros are stored: they must not count
+            indices=np.tile(np.arange(n), m),
+            data=cells.ravel(),
+            row_lower=np.full(m, -2),
+            row_upper=random.integers(1, 9, m),
+            lower=np.zeros(n),
+            upper=np.full(n, 4),
+            cost=np.arange(n),
+            goal="min",
+            integers=("a", "d"),
+            units=(("d", "MW"), ("r3", "EUR"), ("e", "kg")),
+        )
+        keep = tuple(random.permutation(list("abcde"))[:3])
+        part, whole = big.only(*keep), big.to_model()
+        places = [whole.index(name) for name in keep]
+        others = [j for j in range(n) if j not in places]
+        expected = {
+            (row.name, tuple(row.coefficients[j] for j in places), row.sense, row.rhs)
+            for row in whole.constraints
+            if not any(row.coefficients[j] for j in others) and any(row.coefficients)
+        }
+        found = part.to_model()
+        assert {(row.name, row.coefficients, row.sense, row.rhs) for row in found.constraints} == expected
+        assert found.variables == keep
+        assert found.integers == tuple(name for name in ("a", "d") if name in keep)
+        assert found.objective.coefficients == tuple(Fraction(j) for j in places)
+        assert dict(part.units) == {name: big.unit(name) for name in (*keep, *part.rows) if big.unit(name)}
+        left = [f"r{i}" for i in range(m) if cells[i, places].any() and cells[i, others].any()]
+        dropped += len(left)
+        assert len(part.notes) == bool(left)
+        assert all(name in part.notes[0] for name in left[:4])
+    assert dropped > 100
+    with pytest.raises(UnknownName):
+        big.only("a", "z")
+    with pytest.raises(ModelError, match="names of the variables"):
+        big.only()
+
+
 def test_fixing_keeps_the_variable():
     big = plant().fix("y", 2)
     assert (big.lower[1], big.upper[1], big.n) == (2, 2, 2)
