@@ -32,11 +32,11 @@ class View:
         Direction from the solid to the eye, the third axis upward; or "isometric", or "along pump" for the direction of
         an axis; None chooses the direction that keeps vertices apart.
     mode : {"light", "dark", "grey"}, optional
+    findings : tuple of Finding, optional
+        Findings whose evidence is marked; ``draw(model, findings=review)`` takes a whole Review.
     size : {"page", "slide", "column", "bare"}, optional
         Of a static picture: with its key beside it; 1280 by 720 pixels for a slide; 85 mm wide, the key below, for a
         column of a paper; the drawing alone.
-    findings : tuple of Finding, optional
-        Findings whose evidence is marked; ``draw(model, findings=review)`` takes a whole Review.
 
     Examples
     --------
