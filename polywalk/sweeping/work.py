@@ -30,9 +30,10 @@ def _parts(number: Fraction) -> tuple[type[Fraction], tuple[int, int]]:
 
 
 ForkingPickler.register(Fraction, _parts)
-"""Between processes a Fraction travels as two integers: half the time of the text that it is pickled to by itself."""
+"""Between processes a Fraction travels as two integers: a region takes a quarter less time on its way than with the text it is pickled to by itself."""
 
 NUMBER = re.compile(r"≈?(?<![\w.])-?\d+(?:[./]\d+)*(?:e[+-]?\d+)?(?![\w.]*\w)(?!-\w)")
+VERTEX = re.compile(r"\bV\d+\b")
 
 
 def answers(what: str | Callable[[Model], Any], models: list[tuple[str, Model]]) -> list[Item]:
@@ -104,12 +105,12 @@ def _count(number: int, one: str, many: str) -> str:
 
 
 def general(text: str) -> str:
-    """The text with every number as #, so that hours that say the same fall together.
+    """The text with every number, and the number of every vertex, as #, so that hours that say the same fall together.
 
     Examples
     --------
     >>> from polywalk.sweeping.work import general
-    >>> general("demand[7] misses 2.5 of 1/3 in row x2")
-    'demand[#] misses # of # in row x2'
+    >>> general("demand[7] misses 2.5 of 1/3 at V4 in row x2")
+    'demand[#] misses # of # at V# in row x2'
     """
-    return NUMBER.sub("#", text)
+    return VERTEX.sub("V#", NUMBER.sub("#", text))
