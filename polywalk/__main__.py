@@ -27,7 +27,7 @@ DEMO_PICTURE = Path("harbour-row.html")
 DRAWN = 3
 """Variables of a picture."""
 
-CLEAN, BAD_INPUT, FOUND_ERRORS = 0, 2, 3
+CLEAN, BAD_INPUT, FOUND_ERRORS, INTERRUPTED = 0, 2, 3, 130
 
 EXAMPLES = """\
 without a file:
@@ -40,9 +40,10 @@ examples:
   python -m polywalk plant.toml --onto pump tank --section
 
 exit codes:
-  0  clean: no finding of severity error
-  2  bad input: a file, name or option that cannot be used; the reason is on the error stream
-  3  the review has findings of severity error, among them no plan at all and no end of improvement
+  0    clean: no finding of severity error
+  2    bad input: a file, name or option that cannot be used; the reason is on the error stream
+  3    the review has findings of severity error, among them no plan at all and no end of improvement
+  130  interrupted by Ctrl-C
 """
 
 
@@ -57,7 +58,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     Returns
     -------
     int
-        0 clean, 2 bad input, 3 findings of severity error.
+        0 clean, 2 bad input, 3 findings of severity error, 130 interrupted.
 
     Examples
     --------
@@ -81,19 +82,19 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return CLEAN
     except KeyboardInterrupt:
         print("interrupted", file=sys.stderr)
-        return 130
+        return INTERRUPTED
 
 
 def _parser() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(
         prog="python -m polywalk",
-        description="Show a linear model brought down to one to three decisions: its vertices with their active "
+        description="Show a linear model brought down to one to three decisions: its vertices with their active\n"
         "constraints, a review, the pivots of walks, and a picture to turn in a browser.",
         epilog=EXAMPLES,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument(
-        "file", nargs="?", metavar="FILE", help="an MPS file (.mps, .mps.gz) or a model file of polywalk (.toml)"
+        "file", nargs="?", metavar="FILE", help="an MPS file (.mps, .mps.gz) or a model file (.toml, .toml.gz)"
     )
     parser.add_argument(
         "--onto",
@@ -143,6 +144,8 @@ def _demo(wanted: argparse.Namespace) -> int:
 def _file(wanted: argparse.Namespace) -> int:
     for rule in wanted.rules:
         entering_rule(rule)  # a slip is told before the long work
+    if wanted.section and wanted.within:
+        raise ModelError("--within has no meaning with --section, which stays at the optimum; leave one out.", "within")
     source = read(wanted.file)
     print(source)
     model = _narrowed(source, wanted)

@@ -148,6 +148,7 @@ def test_a_large_conflict_is_told_and_not_drawn(plant, tmp_path, capsys):
         (["{plant}", "--onto", "pump", "chips", "tank", "objective"], ""),
         (["{plant}", "--rules", "blond"], "no entering rule 'blond'"),
         (["{plant}", "--onto", "pump", "--within", "much"], "much"),
+        (["{plant}", "--onto", "pump", "--section", "--within", "5%"], "leave one out"),
         (["--onto", "pump"], "name the file first"),
         (["{broken}"], "line 1"),
     ],
@@ -176,6 +177,7 @@ def test_the_help_needs_no_manual(capsys):
         "exit codes:",
         "steepest-edge",
         "5%",
+        "130",
     ):
         assert part in told
     assert "%%" not in told
