@@ -10,6 +10,7 @@ from itertools import pairwise
 from math import lcm
 
 import numpy as np
+from numpy.typing import NDArray
 
 from polywalk.bigmodel import BigModel
 from polywalk.exact import exact
@@ -76,6 +77,13 @@ class Program:
         for i, (line, scale) in enumerate(zip(self.lines, self.scales, strict=True)):
             for j, value in line:
                 found[j].append((i, Fraction(value, scale)))
+        return found
+
+    @cached_property
+    def row_sizes(self) -> NDArray[np.float64]:
+        """The largest size of a coefficient in every row, (m,) floats."""
+        found = np.zeros(self.big.m)
+        np.maximum.at(found, np.repeat(np.arange(self.big.m), np.diff(self.big.indptr)), np.abs(self.big.data))
         return found
 
     @cached_property

@@ -75,11 +75,14 @@ class Rounded:
 
     @cached_property
     def _ordered(self) -> tuple[Any, Any]:
-        """Places (columns after rows) and values, the largest first, without what is only rounding."""
+        """Places (columns after rows) and values, the largest first, without what is only rounding.
+
+        A multiplier counts by what it adds: times the largest coefficient of its row.
+        """
         values = np.concatenate([self.rows, self.columns])
-        sizes = np.abs(values)
-        used = np.flatnonzero(sizes > max(TOLERANCES.zero, TOLERANCES.zero * sizes.max(initial=0.0)))
-        order = used[np.argsort(-sizes[used], kind="stable")]
+        shares = np.abs(np.concatenate([self.rows * self.program.row_sizes, self.columns]))
+        used = np.flatnonzero(shares > max(TOLERANCES.zero, TOLERANCES.zero * shares.max(initial=0.0)))
+        order = used[np.argsort(-np.abs(values[used]), kind="stable")]
         return order, values[order]
 
     @property

@@ -18,6 +18,7 @@ import numpy as np
 
 from polywalk.bigmodel import BigModel
 from polywalk.errors import SolverError
+from polywalk.narrowing.rescaling import SMALLEST, row_factors
 from polywalk.narrowing.tolerances import TOLERANCES
 from polywalk.reading.highs import highspy, quiet_solver
 
@@ -41,10 +42,12 @@ PATIENCE = 0.7
 
 
 def precise_solver() -> Any:
-    """A quiet Highs object with this room's tighter tolerances."""
+    """A quiet Highs object with this room's tighter tolerances, that keeps every coefficient it can."""
     found = quiet_solver()
     for name in ("primal_feasibility_tolerance", "dual_feasibility_tolerance"):
         found.setOptionValue(name, TOLERANCES.solver)
+    found.setOptionValue("small_matrix_value", SMALLEST)
+    found.setOptionValue("infinite_bound", float("inf"))  # a side of 1e20 is one
     return found
 
 
@@ -70,6 +73,7 @@ class Solver:
         self.big, self.runs = big, 0
         self._lasts = 0.0 if big.nonzeros <= DIRECT else SHORT
         self._cold_iterations: int | None = None
+        self._factors = row_factors(big)
         self._module = highspy()
         self._solver = precise_solver()
         self._load()
@@ -79,13 +83,13 @@ class Solver:
         program.num_col_, program.num_row_ = big.n, big.m
         program.col_cost_ = np.zeros(big.n)
         program.col_lower_, program.col_upper_ = big.lower, big.upper
-        program.row_lower_, program.row_upper_ = big.row_lower, big.row_upper
+        program.row_lower_, program.row_upper_ = (side * self._factors for side in (big.row_lower, big.row_upper))
         program.a_matrix_.format_ = self._module.MatrixFormat.kRowwise
         program.a_matrix_.start_, program.a_matrix_.index_ = big.indptr, big.indices
-        program.a_matrix_.value_ = big.data
+        program.a_matrix_.value_ = big.data * np.repeat(self._factors, np.diff(big.indptr))
         program.sense_ = self._module.ObjSense.kMaximize
         if self._solver.passModel(program) == self._module.HighsStatus.kError:
-            raise SolverError("HiGHS refused the model; look for coefficients beyond 1e15.", big.name)
+            raise SolverError("HiGHS refused the model; look for numbers that are infinite or not numbers.", big.name)
 
     def aim(self, places: Sequence[int], values: Sequence[float]) -> None:
         """What to maximize: the costs of these columns; the others keep theirs."""
@@ -182,7 +186,7 @@ class Solver:
     def duals(self) -> tuple[Any, Any]:
         """The last multipliers of rows and reduced costs of columns, (m,) and (n,) floats."""
         found = self._solver.getSolution()
-        return np.array(found.row_dual), np.array(found.col_dual)
+        return np.array(found.row_dual) * self._factors, np.array(found.col_dual)
 
     def ray(self) -> Any | None:
         """The ray along which the last run found no end, (n,) floats; None where HiGHS keeps none."""

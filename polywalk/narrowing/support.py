@@ -196,8 +196,14 @@ class FloatReach(_Asked):
         if status == "unbounded":
             self._aim(self.cone_solver, direction)
             self._run(self.cone_solver)
-            ray = self._kept(self.cone_solver)
-            return Reach((0, *whole([snapped(value) for value in ray])))
+            ray = whole([snapped(value) for value in self._kept(self.cone_solver)])
+            if value_of(direction, (0, *ray)) <= 0:
+                raise SolverError(
+                    "HiGHS calls the model unbounded, and there is no ray; look for bounds, right-hand sides and "
+                    "coefficients of very different sizes (it takes values beyond 1e20 for infinite).",
+                    self.solver.status_text,
+                )
+            return Reach((0, *ray))
         generator = whole([Fraction(1), *map(snapped, self._kept(self.solver))])
         size = max(map(abs, direction)) or 1
         return Reach(generator, snapped(self.solver.value) * size, self._proof(size))
