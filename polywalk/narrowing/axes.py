@@ -90,7 +90,8 @@ def suggest_axes(
     among : sequence of str, optional
         The variables to rank; all by default.
     seconds : float, optional
-        When to stop measuring. The variables that earlier solutions differ on most are measured first.
+        When to stop measuring; finding the optimum and the first few plans comes on top. The variables that earlier
+        solutions differ on most are measured first.
 
     Returns
     -------
