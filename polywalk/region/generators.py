@@ -17,9 +17,13 @@ from polywalk.budget import Budget
 from polywalk.exact import Row, integer_row, primitive
 from polywalk.model import Constraint, Model
 from polywalk.region.engine import generators_of
+from polywalk.region.sieve import Sieve
 from polywalk.region.spans import echelon, reduced
 
 Whole = Sequence[int]
+
+MANY = 1_000
+"""Slacks from which the sieve is quicker than integers alone."""
 
 
 @dataclass(frozen=True)
@@ -61,13 +65,16 @@ def generators(model: Model, budget: Budget | None = None) -> Generators:
         points=tuple([place for place, head in ordered if head[0]]),
         rays=tuple([place for place, head in ordered if not head[0]]),
         lines=tuple([primitive(row) for row in along[0]]),
-        active=tuple([_active(kept, whole, head) for _, head in ordered]),
+        active=_active(kept, whole, [head for _, head in ordered]),
     )
 
 
-def _active(kept: list[int], whole: Sequence[Whole], head: Whole) -> tuple[int, ...]:
-    """The places of the constraints that are zero at (1, point) or (0, ray), both times a positive number."""
-    return tuple([place for place in kept if not sum(map(mul, whole[place], head))])
+def _active(kept: list[int], whole: Sequence[Whole], heads: Sequence[Whole]) -> tuple[tuple[int, ...], ...]:
+    """The places of the constraints that are zero at each (1, point) or (0, ray), all times a positive number."""
+    if len(kept) * len(heads) < MANY:
+        return tuple([tuple([k for k in kept if not sum(map(mul, whole[k], head))]) for head in heads])
+    zeros = Sieve([whole[place] for place in kept]).zeros(heads)
+    return tuple([tuple([kept[k] for k in found]) for found in zeros])
 
 
 def _whole(row: Constraint) -> list[int]:

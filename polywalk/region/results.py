@@ -79,12 +79,17 @@ class Region(Shown):
     def edges(self) -> tuple[Edge, ...]:
         """The edges, sorted; none where the region has a line."""
         count, names = len(self.base), [row.name for row in self.model.constraints]
-        return tuple([self._edge(start, other, count, names) for start, other in self._pairs])
+        sets = [frozenset(places) for places in self._active]
+        found = []
+        for start, other in self._pairs:
+            active = tuple([names[place] for place in self._active[start] if place in sets[other]])
+            end, ray = (other, None) if other < count else (None, other - count)
+            found.append(Edge(start, end, ray, active))
+        return tuple(found)
 
-    def _edge(self, start: int, other: int, count: int, names: list[str]) -> Edge:
-        there = self._active[other]
-        active = tuple([names[place] for place in self._active[start] if place in there])
-        return Edge(start, other, None, active) if other < count else Edge(start, None, other - count, active)
+    @cached_property
+    def _neighbours(self) -> list[list[int]]:
+        return faces.neighbours(self._pairs, len(self.base))
 
     @cached_property
     def equalities(self) -> tuple[str, ...]:
@@ -112,7 +117,7 @@ class Region(Shown):
         count = len(self.base)
         corners = tuple(k for k in faces.members(pattern) if k < count)
         if self.dimension == 3 and not self.lines:
-            corners = faces.around(pattern, self._pairs, count)
+            corners = faces.around(pattern, self._neighbours)
         names = tuple(self.model.constraints[place].name for place in places)
         return Facet(names, corners, tuple(k - count for k in faces.members(pattern) if k >= count))
 
@@ -124,7 +129,7 @@ class Region(Shown):
         """
         if self.dimension != 2 or self.lines:
             return ()
-        return faces.around((1 << len(self._active)) - 1, self._pairs, len(self.base))
+        return faces.around((1 << len(self._active)) - 1, self._neighbours)
 
     @cached_property
     def ranges(self) -> dict[str, tuple[Fraction | None, Fraction | None]]:
