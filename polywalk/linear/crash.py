@@ -21,7 +21,13 @@ from polywalk.linear.dictionary import Dictionary
 
 
 class Swap(NamedTuple):
-    """A pivot outside the walk, by names: the entering and the leaving slack."""
+    """A pivot outside the walk.
+
+    Parameters
+    ----------
+    entering, leaving : str
+        The names of the slacks.
+    """
 
     entering: str
     leaving: str

@@ -25,7 +25,14 @@ Values = Mapping[str, object] | Sequence[object] | Literal["optimum"] | Any
 
 @dataclass(frozen=True)
 class Snap:
-    """A float that was taken for the simple fraction beside it."""
+    """A float that was taken for the simple fraction beside it.
+
+    Parameters
+    ----------
+    variable : str
+    given : float
+    taken : Fraction
+    """
 
     variable: str
     given: float

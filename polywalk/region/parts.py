@@ -25,6 +25,7 @@ class Vertex:
         In the order of the model's variables.
     active : tuple of str
         Every constraint that holds with equality here, in the model's order; equalities are among them.
+    model : Model
     """
 
     point: Row
@@ -62,6 +63,7 @@ class Ray:
         In the smallest integers.
     active : tuple of str
         The constraints whose slack does not change along it, in the model's order.
+    model : Model
     """
 
     direction: Row
@@ -119,7 +121,13 @@ class Facet:
 
 @dataclass(frozen=True)
 class Face:
-    """A face named by what generates it: numbers of vertices (or base points), rays and lines of the region."""
+    """A face named by what generates it.
+
+    Parameters
+    ----------
+    vertices, rays, lines : tuple of int
+        Numbers of vertices (or base points), rays and lines of the region.
+    """
 
     vertices: tuple[int, ...]
     rays: tuple[int, ...]

@@ -99,6 +99,8 @@ class Sensitivity(Shown):
     directions : tuple of (n,) tuple of Fraction
         Directions in which the optimal points go on for ever; both ways of a line.
     duals : OptimalDuals or None
+    proof : Optimum or None
+        What was found instead, where there are no prices.
     """
 
     model: Model
