@@ -14,6 +14,7 @@ from polywalk.drawing.writing import write
 from polywalk.errors import DrawingError, ModelError, PolywalkError
 from polywalk.model import Model
 from polywalk.narrowing import conflict, escape, section, shadow, suggest_axes
+from polywalk.narrowing.widening import VALUE_AXES
 from polywalk.reading.mps import from_mps
 from polywalk.reading.toml import from_toml
 from polywalk.region import region
@@ -101,8 +102,8 @@ def _parser() -> argparse.ArgumentParser:
         nargs="+",
         default=[],
         metavar="NAME",
-        help='one to three variables, or "objective"; by default those of a small model, else the three that plans '
-        "near the optimum disagree on most",
+        help='one to three variables, "objective" or "suboptimality" (its distance from the optimum); by default those '
+        "of a small model, else the three that plans near the optimum disagree on most",
     )
     parser.add_argument(
         "--section",
@@ -173,7 +174,7 @@ def _narrowed(source: Model | BigModel, wanted: argparse.Namespace) -> Model:
         return small or source.to_model()  # type: ignore[union-attr]
     big = source if isinstance(source, BigModel) else BigModel.from_model(source)
     for name in wanted.onto:
-        if name != "objective":
+        if name not in VALUE_AXES:
             big.index(name)
     wrong = conflict(source)
     has_goal = big.goal is not None

@@ -16,8 +16,27 @@ from polywalk.narrowing.widening import VALUE
 NAMED = 2
 """Constraints that a facet is named after; more would not fit beside a line."""
 
+MANY = 9
+"""Constraints from which on a second one says no more than the first."""
+
 PLAIN = 10**6
 """Integers up to this size are coefficients someone could have typed; larger ones are scaled."""
+
+
+@dataclass(frozen=True)
+class Wording:
+    """How facets are written.
+
+    Parameters
+    ----------
+    near : str
+        The row that keeps the objective near its optimum; a facet is named after it first.
+    value : int or None
+        The axis that is the objective's value: its coefficient becomes 1, so that the others are prices.
+    """
+
+    near: str = ""
+    value: int | None = None
 
 
 @dataclass(frozen=True)
@@ -40,9 +59,10 @@ def built(rows: Iterable[Row], variables: tuple[str, ...], exact: bool) -> tuple
     return constraints, facets
 
 
-def row_of(edge: Edge, exact: bool, held: str = "") -> Row:
+def row_of(edge: Edge, exact: bool, wording: Wording = Wording()) -> Row:
     """The row of an inequality: its first coefficient positive, so that x >= 0 reads as such."""
-    direction, limit, scale = _plain(edge, exact)
+    direction, limit, scale = _plain(edge, exact, wording.value)
+    held = wording.near
     turned = next(value for value in direction if value) < 0
     sign = -1 if turned else 1
     coefficients, factor = tuple(sign * value for value in direction), sign * scale
@@ -70,17 +90,20 @@ def named(proof: Proof | None, held: str = "") -> str:
         return found[0]
     if len(first) + count <= NAMED + 1:
         return " & ".join([*first, *others[:count]])
-    return " & ".join([*first, *others[:NAMED], f"{count - NAMED} more"])
+    told = NAMED if count < MANY else 1
+    return " & ".join([*first, *others[:told], f"{count - told} more"])
 
 
-def _plain(edge: Edge, exact: bool) -> tuple[tuple[Fraction, ...], Fraction, Fraction]:
+def _plain(edge: Edge, exact: bool, value: int | None) -> tuple[tuple[Fraction, ...], Fraction, Fraction]:
     """Coefficients, right-hand side, and what the multipliers are to be multiplied with.
 
     The smallest integers, as in the projection of a region, where they are short; else the largest coefficient is 1,
-    and where they carry rounding they become decimals.
+    and where they carry rounding they become decimals. Where the objective's value takes part, its coefficient is 1.
     """
     largest, scale = max(map(abs, edge.direction)), edge.limit.denominator
-    if largest * scale <= PLAIN:
+    if value is not None and edge.direction[value]:
+        largest = abs(edge.direction[value])
+    elif largest * scale <= PLAIN:
         return tuple(Fraction(scale * value) for value in edge.direction), scale * edge.limit, Fraction(scale)
     row = [Fraction(value, largest) for value in edge.direction]
     limit = edge.limit / largest

@@ -9,7 +9,7 @@ from math import atan2
 
 from polywalk.bigmodel import BigModel
 from polywalk.exact import exact as number
-from polywalk.model import Constraint, Model, Objective
+from polywalk.model import Constraint, Goal, Model, Objective
 from polywalk.narrowing import building
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
@@ -20,7 +20,7 @@ from polywalk.narrowing.proof import Proof
 from polywalk.narrowing.results import Shadow
 from polywalk.narrowing.support import EmptyModelError, ExactReach, FloatReach, InexactError
 from polywalk.narrowing.tolerances import TOLERANCES
-from polywalk.narrowing.widening import OBJECTIVE, Widened, widened
+from polywalk.narrowing.widening import SUBOPTIMALITY, VALUE_AXES, Widened, widened
 
 
 def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, exact: bool | None = None) -> Shadow:
@@ -33,8 +33,9 @@ def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, ex
     ----------
     big : BigModel or Model
     onto : sequence of str
-        One to three variables; "objective" stands for the objective's value. The shadow has an objective where it
-        is one of these, or depends on these alone.
+        One to three variables; "objective" stands for the objective's value, "suboptimality" for its distance from
+        the optimum (0 at the best plan). The shadow has an objective where it is one of these, or depends on these
+        alone.
     within : number or str, optional
         Only plans whose objective is at most so far from the optimum: 20 in the objective's unit, or "5%" of it.
     exact : bool, optional
@@ -93,14 +94,14 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
         if not found.generators:
             raise
         found.wrap()
-    near = wide.held[0][0] if wide.held else ""
-    rows = _complete(found, near) if found.is_complete else _partial(found, near)
+    wording = building.Wording(wide.near, _value_axis(wide.big, wide.keep))
+    rows = _complete(found, wording) if found.is_complete else _partial(found, wording)
     return _shadow(wide, list(rows), asks.runs, touch, found.is_complete)
 
 
-def _complete(found: Outline, near: str) -> Iterable[building.Row]:
+def _complete(found: Outline, wording: building.Wording) -> Iterable[building.Row]:
     edges = sorted(merged(found) if found.touch else found.edges, key=_turn)
-    return [building.row_of(edge, not found.touch, near) for edge in (*edges, *found.equalities)]
+    return [building.row_of(edge, not found.touch, wording) for edge in (*edges, *found.equalities)]
 
 
 def _turn(edge: Edge) -> tuple[float, ...]:
@@ -110,11 +111,12 @@ def _turn(edge: Edge) -> tuple[float, ...]:
     return (atan2(row[1], row[0]),) if len(row) == 2 else row
 
 
-def _partial(found: Outline, near: str) -> Iterable[building.Row]:
+def _partial(found: Outline, wording: building.Wording) -> Iterable[building.Row]:
     """The facets of the hull so far, proved or not."""
     proved = {(edge.direction, edge.limit): edge for edge in found.edges}
     return [
-        building.row_of(proved.get((face.direction, face.limit), face), not found.touch, near) for face in found.faces()
+        building.row_of(proved.get((face.direction, face.limit), face), not found.touch, wording)
+        for face in found.faces()
     ]
 
 
@@ -142,12 +144,20 @@ def _objective(big: BigModel, keep: tuple[int, ...]) -> Objective | None:
     """The objective, where it is an axis or depends on the kept variables alone."""
     if big.goal is None:
         return None
-    if OBJECTIVE in [big.variables[j] for j in keep]:
-        return Objective(big.goal, tuple(Fraction(int(big.variables[j] == OBJECTIVE)) for j in keep))
+    place = _value_axis(big, keep)
+    if place is not None:
+        goal: Goal = "min" if big.variables[keep[place]] == SUBOPTIMALITY else big.goal
+        return Objective(goal, tuple(Fraction(int(k == place)) for k in range(len(keep))))
     cost = costs(big)
     if any(value and j not in keep for j, value in enumerate(cost)):
         return None
     return Objective(big.goal, tuple(number(cost[j]) for j in keep), number(big.constant))
+
+
+def _value_axis(big: BigModel, keep: tuple[int, ...]) -> int | None:
+    """The place of the axis that is the objective's value or its distance from the optimum."""
+    names = [big.variables[j] for j in keep]
+    return next((names.index(name) for name in VALUE_AXES if name in names), None)
 
 
 def _empty(wide: Widened, runs: int, touch: float, proof: Proof | None) -> Shadow:

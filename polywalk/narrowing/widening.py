@@ -18,19 +18,28 @@ from polywalk.narrowing.certify import BASIC, Statuses
 OBJECTIVE = "objective"
 """What the objective's value is called as an axis."""
 
+SUBOPTIMALITY = "suboptimality"
+"""What the distance of the objective from its optimum is called as an axis (Boyd & Vandenberghe, Convex Optimization,
+Cambridge 2004, section 1.3 onwards: a plan is e-suboptimal where its objective is within e of the optimum).
+"""
+
+VALUE_AXES = (OBJECTIVE, SUBOPTIMALITY)
+
 VALUE = "objective's value"
 """The row that says what it is."""
 
 
 @dataclass(frozen=True)
 class Widened:
-    """The model to take the shadow of, the kept columns, exact sides, what to tell, and a basis to start from."""
+    """The model to take the shadow of, the kept columns, exact sides, what to tell, a basis to start from, and
+    the row that keeps the objective near its optimum."""
 
     big: BigModel
     keep: tuple[int, ...]
     held: tuple[tuple[str, Fraction], ...]
     notes: tuple[str, ...]
     start: Statuses | None = None
+    near: str = ""
 
 
 def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
@@ -43,11 +52,18 @@ def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
     """
     _check(onto)
     names = list(onto)
-    wide, held, notes, start = big, list[tuple[str, Fraction]](), list[str](), None
-    if within is not None:
-        wide, held, notes, start = _near(big, within)
-    if OBJECTIVE in names and OBJECTIVE not in big.variables:
-        wide = _with_value(wide)
+    wide, held, notes, start, close = big, list[tuple[str, Fraction]](), list[str](), None, ""
+    asked = [name for name in VALUE_AXES if name in names and name not in big.variables]
+    for name in asked:
+        if big.goal is None:
+            raise ModelError(f"expected a model with an objective for the axis {name!r}; it has none.", name)
+    found = _optimum(big) if within is not None or SUBOPTIMALITY in asked else None
+    if within is not None and found is not None:
+        wide, held, notes, start = _near(big, within, found)
+        close = wide.rows[-1]
+    for name in asked:
+        wide, side = _with_value(wide, name, found)
+        held += [(wide.rows[-1], side)] if name == SUBOPTIMALITY else []
         start = start and ([*start[0], BASIC], [*start[1], 0])
     keep = tuple(wide.index(name) for name in names)
     marked = [name for name in names if name in big.integers]
@@ -55,7 +71,7 @@ def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
     if big.integers:
         what = " and ".join([*marked, *([f"{others} other variables"] if others else [])])
         notes.append(f"integer marks are relaxed: {what}")
-    return Widened(wide, keep, tuple(held), tuple(notes), start)
+    return Widened(wide, keep, tuple(held), tuple(notes), start, close)
 
 
 def _check(onto: Sequence[str]) -> None:
@@ -66,27 +82,35 @@ def _check(onto: Sequence[str]) -> None:
             raise DuplicateName(f"the variable {name!r} is given twice; name each one once.", name)
 
 
-def _with_value(big: BigModel) -> BigModel:
-    """One more variable that equals the objective, with the row that says so."""
-    if big.goal is None:
-        raise ModelError(f"expected a model with an objective for the axis {OBJECTIVE!r}; it has none.", OBJECTIVE)
+def _optimum(big: BigModel) -> Best | None:
+    """The optimum to stay near, or to measure from; None where there is no plan."""
+    found = best(big)
+    if found.outcome == "infeasible":
+        return None
+    if found.outcome == "unbounded" or found.value is None:
+        raise ModelError(
+            "expected a model with an optimum to stay near, got an unbounded one; see escape(big) for why.", big.name
+        )
+    return found
+
+
+def _with_value(big: BigModel, name: str, found: Best | None) -> tuple[BigModel, Fraction]:
+    """One more variable that equals the objective, or its distance from the optimum, with the row that says so."""
+    sign, side = 1, exact(big.constant)
+    if name == SUBOPTIMALITY:
+        sign = 1 if big.goal == "min" else -1
+        side = sign * (side - (found.value or 0 if found else 0))
     used = np.flatnonzero(big.cost)
-    entries = [*used.tolist(), big.n], [*(-big.cost[used]).tolist(), 1.0]
-    return with_row(with_variable(big, OBJECTIVE), VALUE, entries, big.constant, big.constant)
+    entries = [*used.tolist(), big.n], [*(-sign * big.cost[used]).tolist(), 1.0]
+    return with_row(with_variable(big, name), VALUE, entries, float(side), float(side)), side
 
 
 Near = tuple[BigModel, list[tuple[str, Fraction]], list[str], Statuses | None]
 
 
-def _near(big: BigModel, within: object) -> Near:
+def _near(big: BigModel, within: object, found: Best) -> Near:
     """One more row that keeps the objective near its optimum, whose basis stays one when the new row is basic."""
-    found = best(big)
-    if found.outcome == "infeasible":
-        return big, [], [], None
-    if found.outcome == "unbounded" or found.value is None:
-        raise ModelError(
-            "expected a model with an optimum to stay near, got an unbounded one; see escape(big) for why.", big.name
-        )
+    assert found.value is not None
     distance, said = _distance(within, found.value)
     better = 1 if big.goal == "min" else -1
     side = found.value + better * distance - exact(big.constant)
@@ -100,8 +124,8 @@ def _near(big: BigModel, within: object) -> Near:
 
 def near(big: BigModel, within: object) -> BigModel | None:
     """The big model with its objective held near the optimum, in floats; None where it has no plan."""
-    wide, held, _, _ = _near(big, within)
-    return wide if held else None
+    found = _optimum(big)
+    return _near(big, within, found)[0] if found else None
 
 
 def _told(found: Best, said: str) -> list[str]:

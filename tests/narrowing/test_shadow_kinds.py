@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import builtins
+from dataclasses import replace
 from fractions import Fraction
 
 import numpy as np
@@ -29,6 +30,34 @@ def test_the_objective_as_an_axis_is_the_objective_of_the_shadow() -> None:
     assert found.region.vertices[found.region.optimal.vertices[0]].point[1] == 292  # type: ignore[union-attr]
     assert every_facet_is_proved(found)
     assert walk(found.model).value == 292
+
+
+@pytest.mark.parametrize("variant", ["base", "degenerate", "tied", "two decisions"])
+@pytest.mark.parametrize("goal", ["max", "min"])
+def test_suboptimality_is_the_distance_from_the_optimum(variant: str, goal: str) -> None:
+    model = harbour_row(variant)
+    model = replace(model, objective=replace(model.objective, goal=goal, constant=Fraction(7, 2)))  # type: ignore[type-var, arg-type]
+    big = BigModel.from_model(model)
+    value, distance = (shadow(big, ("pump", axis)) for axis in ("objective", "suboptimality"))
+    best = region(model).value
+    assert best is not None
+    moved = sorted((x, abs(y - best)) for x, y in (vertex.point for vertex in value.region.vertices))
+    assert sorted(vertex.point for vertex in distance.region.vertices) == moved
+    assert (distance.region.value, distance.model.objective.goal) == (0, "min")  # type: ignore[union-attr]
+    assert every_facet_is_proved(distance)
+
+
+def test_slopes_of_an_objective_axis_are_prices() -> None:
+    found = shadow(harbour_day(), ("tank[7]", "suboptimality"), within="2%")
+    sloped = [row for row in found.model.constraints if row.coefficients[1]]
+    assert len(sloped) > 6
+    assert {abs(row.coefficients[1]) for row in sloped} == {1}
+    assert every_facet_is_proved(found)
+    assert sum("more" in row.name for row in sloped) > 6
+    assert max(len(row.name) for row in sloped) < 30
+    assert shadow(harbour_day(), ("suboptimality",), within=3).region.vertices[-1].point == (3,)
+    empty = shadow(BigModel.from_model(harbour_row("infeasible")), ("pump", "suboptimality"))
+    assert empty.region.status == "empty"
 
 
 def test_near_optimal_plans_by_share_and_by_distance() -> None:
@@ -113,6 +142,10 @@ def test_what_cannot_be_asked_is_refused() -> None:
         shadow(BigModel.from_model(harbour_row("unbounded")), ("pump",), within="1%")
     with pytest.raises(ModelError, match="objective"):
         shadow(ROW.without_objective(), ("pump", "objective"))
+    with pytest.raises(ModelError, match="suboptimality"):
+        shadow(ROW.without_objective(), ("pump", "suboptimality"))
+    with pytest.raises(ModelError, match="unbounded"):
+        shadow(BigModel.from_model(harbour_row("unbounded")), ("pump", "suboptimality"))
 
 
 def test_without_highspy_the_remedy_is_told(monkeypatch: pytest.MonkeyPatch) -> None:
