@@ -18,6 +18,14 @@ from polywalk.progress import progress
 from polywalk.table import Shown, Table
 
 
+FIRST = 4
+"""Solutions to see what differs, before variables are measured one by one."""
+
+
+LEAST = 3
+"""Variables measured however little time there is: as many as a picture has axes."""
+
+
 @dataclass(frozen=True)
 class AxisRange:
     """The range of one variable among near-optimal plans, in its own unit.
@@ -90,8 +98,8 @@ def suggest_axes(
     among : sequence of str, optional
         The variables to rank; all by default.
     seconds : float, optional
-        When to stop measuring; finding the optimum and the first few plans comes on top. The variables that earlier
-        solutions differ on most are measured first.
+        When to stop, counted from the call, once three variables are measured. The variables that earlier solutions
+        differ on most are measured first.
 
     Returns
     -------
@@ -119,6 +127,7 @@ def suggest_axes(
     Mahadevan & Schilling, The effects of alternate optimal solutions in constraint-based genome-scale metabolic models,
     Metabolic Engineering 5, 2003 (every variable's range near the optimum).
     """
+    end = monotonic() + seconds
     big = sparse(big)
     held = near(big, within)
     if held is None:
@@ -126,12 +135,11 @@ def suggest_axes(
     names = tuple(among) if among is not None else big.variables
     places = [big.index(name) for name in names]
     measuring = _Measuring(held, places)
-    measuring.warm_up()
-    end = monotonic() + seconds
+    measuring.warm_up(end - seconds / 2)
     for place in progress(measuring.next_ones(end), len(places), "variables"):
         measuring.measure(place)
     ranked = sorted(measuring.ranges(), key=lambda one: -one.width)
-    return Axes(tuple(ranked), str(within).strip(), tuple(one.variable for one in ranked[:3]), len(measuring.done))
+    return Axes(tuple(ranked), str(within).strip(), tuple(one.variable for one in ranked[:LEAST]), len(measuring.done))
 
 
 class _Measuring:
@@ -143,10 +151,12 @@ class _Measuring:
         self.low, self.high = np.full(big.n, np.inf), np.full(big.n, -np.inf)
         self.done: set[int] = set()
 
-    def warm_up(self) -> None:
-        """A few solutions in all directions at once, to see what differs."""
+    def warm_up(self, end: float) -> None:
+        """A few solutions in all directions at once, to see what differs: as many as the time allows."""
         draw = np.random.default_rng(0)
-        for _ in range(4):
+        for k in range(FIRST):
+            if k >= 2 and monotonic() > end:  # two at least: one alone shows no difference
+                break
             self.solver.aim(self.places, draw.choice([-1.0, 1.0], len(self.places)).tolist())
             if self.solver.run() == "optimal":
                 self._see()
@@ -155,9 +165,9 @@ class _Measuring:
             self._see()
 
     def next_ones(self, end: float) -> Iterable[int]:
-        """The variables to measure, the widest so far first, until the time is over."""
+        """The variables to measure, the widest so far first, until the time is over; a few in any case."""
         left = list(self.places)
-        while left and monotonic() < end:
+        while left and (monotonic() < end or len(self.done) < LEAST):
             place = max(left, key=lambda j: (self.high[j] - self.low[j], -j))
             left.remove(place)
             yield place

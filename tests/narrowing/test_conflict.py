@@ -189,8 +189,8 @@ def test_axes_are_ranked_by_their_range_among_near_optimal_plans() -> None:
 def test_axes_of_a_part_within_the_time_given() -> None:
     found = suggest_axes(harbour_day(), among=["pump[7]", "tank[7]", "chips[8]", "level[9]"], seconds=0)
     assert len(found.ranked) == 4
-    assert found.measured == 0
-    assert "0 of 4" in str(found)
+    assert found.measured == 3
+    assert "3 of 4" in str(found)
     with pytest.raises(UnknownName):
         suggest_axes(harbour_day(), among=["pmp[7]"])
     with pytest.raises(ModelError, match="infeasible"):
