@@ -17,7 +17,6 @@ from polywalk.narrowing.widening import near
 from polywalk.progress import progress
 from polywalk.table import Shown, Table
 
-
 FIRST = 4
 """Solutions to see what differs, before variables are measured one by one."""
 
