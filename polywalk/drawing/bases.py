@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from polywalk.drawing import basis_places as paper
-from polywalk.drawing.basis_key import hover, key, lettered, letters_of
+from polywalk.drawing.basis_key import hover, key, lettered, letters_of, spelled
 from polywalk.drawing.paths import APART
 from polywalk.drawing.scene import PAPER, Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.view import View
@@ -223,11 +223,9 @@ def _discs(chart: Chart) -> tuple[Mark, ...]:
 
 
 def _names(chart: Chart) -> list[Label]:
-    letters, fits = letters_of(chart.bases), lettered(chart.bases)
-    found = []
+    found, fits = [], lettered(chart.bases)
     for number in chart.shown:
-        basis = chart.bases.members[number]
-        held = "".join(letters[name] for name in basis.held if name in letters)
+        basis, held = chart.bases.members[number], spelled(chart.bases, number)
         text = f"{basis.name}\n{held}" if held and fits else basis.name
         role = "optimal basis name" if basis.optimal else "basis name"
         found.append(Label(text, chart.centres[number], role))

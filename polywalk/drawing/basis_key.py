@@ -2,15 +2,14 @@
 
 from __future__ import annotations
 
-from itertools import count
-from string import ascii_uppercase
-
+from polywalk.drawing.letters import width
 from polywalk.drawing.scene import KeyPart, KeyRow
+from polywalk.drawing.tags import letters
 from polywalk.region import vertex_name
 from polywalk.walks import Bases, Route, basis_name
 
-MOST_LETTERS = 4
-"""The most letters that a disc has room for; past this bases are drawn with their number alone."""
+LETTER, ROOM = 9.5, 28.0
+"""Size of the letters in a disc, and their most width in pixels; past it bases are drawn with their number alone."""
 
 MOST_LISTED = 24
 """Past this many bases the key does not list them by name: their letters say what they hold."""
@@ -20,20 +19,26 @@ ABREAST = 4
 
 
 def letters_of(bases: Bases) -> dict[str, str]:
-    """A letter for each constraint that some bases hold and others do not, in the model's order."""
-    letters = (letter * size for size in count(1) for letter in ascii_uppercase)
+    """The letter of each constraint that some bases hold and others do not, the same as in any picture of the model."""
     everywhere = set.intersection(*(set(basis.held) for basis in bases.members)) if len(bases.members) > 1 else set()
-    return {name: next(letters) for name in bases.vertex.active if name not in everywhere and _held(bases, name)}
+    known = letters(row.name for row in bases.model.constraints)
+    return {name: known[name] for name in bases.vertex.active if name not in everywhere and _held(bases, name)}
 
 
 def _held(bases: Bases, name: str) -> bool:
     return any(name in basis.held for basis in bases.members)
 
 
+def spelled(bases: Bases, number: int) -> str:
+    """What tells a basis from the others: the letters of the constraints it holds; doubled letters apart."""
+    known = letters_of(bases)
+    found = [known[name] for name in bases.members[number].held if name in known]
+    return (" " if any(len(letter) > 1 for letter in found) else "").join(found)
+
+
 def lettered(bases: Bases) -> bool:
     """Whether discs have room for the letters of the constraints held."""
-    letters = letters_of(bases)
-    return max(sum(name in letters for name in basis.held) for basis in bases.members) <= MOST_LETTERS
+    return max(width(spelled(bases, number), LETTER) for number in range(len(bases.members))) <= ROOM
 
 
 def hover(bases: Bases, number: int) -> str:
@@ -84,12 +89,12 @@ def _marks(bases: Bases, routes: tuple[Route, ...], few: bool) -> list[KeyRow]:
 
 
 def _constraints(bases: Bases) -> list[KeyRow]:
-    letters, model = letters_of(bases), bases.model
+    known, model = letters_of(bases), bases.model
     rows = []
     for name in bases.vertex.active:
-        note = "" if name in letters else "   (in every basis)" if _held(bases, name) else "   (in no basis)"
+        note = "" if name in known else "   (in every basis)" if _held(bases, name) else "   (in no basis)"
         text = f"{name}: {model.constraint(name).text(model.variables)}{note}"
-        rows.append(KeyRow("point", text, tag=letters.get(name, "")))
+        rows.append(KeyRow("point", text, tag=known.get(name, "")))
     return rows
 
 
@@ -99,8 +104,5 @@ def _listed(bases: Bases, shown: tuple[int, ...]) -> tuple[KeyRow, ...]:
         return tuple(KeyRow("point", ", ".join(bases.members[k].held), tag=basis_name(k)) for k in shown)
     if lettered(bases):
         return (KeyRow("point", f"{len(shown)} bases, each named by its letters; pw.bases(...) prints them all"),)
-    letters = letters_of(bases)
-    texts = [
-        f"{basis_name(k)} {''.join(letters[name] for name in bases.members[k].held if name in letters)}" for k in shown
-    ]
+    texts = [f"{basis_name(k)} {spelled(bases, k)}" for k in shown]
     return tuple(KeyRow("point", "   ".join(texts[k : k + ABREAST])) for k in range(0, len(texts), ABREAST))

@@ -11,6 +11,7 @@ from polywalk.drawing.settling import ring
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.space import inner, slice_of, uphill
 from polywalk.drawing.subject import floats, planar
+from polywalk.drawing.tags import letters
 from polywalk.drawing.window import Window, around, crossings
 from polywalk.exact import Row, short
 from polywalk.linear import farkas
@@ -119,7 +120,7 @@ def borders(model: Model, found: Conflict, frame: Window) -> Layer:
     polygons: list[Polygon] = []
     lines: list[Line] = []
     labels: list[Label] = []
-    places = [row.name for row in model.constraints]
+    places, known = [row.name for row in model.constraints], letters(row.name for row in model.constraints)
     for row in rows:
         corners = slice_of(floats(row.coefficients), float(row.rhs), frame) if not row.is_constant else ()
         if not corners:
@@ -130,7 +131,8 @@ def borders(model: Model, found: Conflict, frame: Window) -> Layer:
         lines.append(Line((corners + corners[:1],), "conflict line", index, row.name))
         if row.sense != "==":
             lines.append(Line(((centre, _allowed(row, centre, frame)),), "conflict line", index, row.name, arrow="end"))
-        labels.append(Label(f"{row.name}: {row.text(model.variables)}", corners[0], "name", index, (0, 10)))
+        said = f"{known[row.name]} {row.name}"
+        labels.append(Label(said, corners[0], "culprit", index, (0, 10), shorter=known[row.name], longer=said))
     return Layer(tuple(polygons), tuple(lines), labels=tuple(labels))
 
 

@@ -17,6 +17,7 @@ from polywalk.drawing.placing import Sheet, upright
 from polywalk.drawing.scene import Axis, KeyPart, Label, Layer, Line, Mark, Point, Polygon, Scene
 from polywalk.drawing.settling import beside_line, ring, unplaced
 from polywalk.drawing.subject import coordinates, floats, planar, titles_of
+from polywalk.drawing.tags import letters
 from polywalk.drawing.view import View
 from polywalk.region import vertex_name
 from polywalk.reviewing import Difference
@@ -132,7 +133,7 @@ def _middle(corners: tuple[Point, ...]) -> Point:
 
 def _borders(pair: Pair, sheet: Sheet) -> Layer:
     """The borders that changed: new ones with their hatching, old ones thin and dashed."""
-    lines, labels = list[Line](), list[Label]()
+    lines, labels, known = list[Line](), list[Label](), letters(_rows(pair))
     for index, row, old in changed(pair):
         ends = None if row.is_constant else plane.chord(row, sheet.window)
         if ends is None:
@@ -147,9 +148,15 @@ def _borders(pair: Pair, sheet: Sheet) -> Layer:
             lines.append(Line(strokes, "hatch", index, row.name))
             sheet.lines += [(sheet.pixel(a), sheet.pixel(b)) for a, b in strokes]
         spots = tuple(beside_line(start, end, out, (name, "name"), upright(start, end)))
-        short = plane.letter_of(len(labels))
+        short = known[name]
         labels.append(Label(name, ends[0], "name", index, spots=spots, shorter=short, longer=name))
     return Layer(lines=tuple(lines), labels=tuple(labels))
+
+
+def _rows(pair: Pair) -> Iterator[str]:
+    """All rows of the later version, which keep their letters, then what changed of the earlier."""
+    yield from (row.name for row in pair.found.after.model.constraints)
+    yield from (f"before: {row.name}" for _, row, old in changed(pair) if old)
 
 
 def _assembled(pair: Pair, layers: tuple[Layer, ...], labels: tuple[Label, ...], rows: tuple[KeyPart, ...]) -> Scene:

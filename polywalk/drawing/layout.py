@@ -8,6 +8,7 @@ from typing import Any
 from polywalk.drawing.camera import Camera
 from polywalk.drawing.scene import Scene
 from polywalk.drawing.theme import FONT, Theme
+from polywalk.drawing.tiles import BOLD
 from polywalk.drawing.traces import html
 
 HEIGHT = 580
@@ -43,7 +44,7 @@ def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
             continue
         style = theme.style(label.role, label.index)
         font = {"size": style.size, "color": style.colour, "family": FONT}
-        text = f"<b>{html(label.text)}</b>" if label.role in {"point", "target", "part"} else html(label.text)
+        text = f"<b>{html(label.text)}</b>" if label.role in BOLD | {"part"} else html(label.text)
         note: dict[str, Any] = {
             "x": label.point[0],
             "y": label.point[1],

@@ -17,6 +17,9 @@ from polywalk.drawing.tiles import Tile, halves
 APART = 6.0
 """Pixels between walks that share an edge."""
 
+WALKS = {"walk", "phase 1", "walk rest"}
+"""Roles of lines that are the path of a walk."""
+
 Faces = tuple[tuple[Polygon, bool], ...]
 
 
@@ -36,11 +39,16 @@ def labels(
     paper and are kept clear.
     """
     desk = Desk(scene.paper)
-    desk.lines = [(a, b) for line in lines if line.role != "grid" for part in line.parts for a, b in pairwise(part)]
+    for line in (one for one in lines if one.role != "grid"):
+        kept = desk.paths if line.role in WALKS else desk.lines
+        kept += [(a, b) for part in line.parts for a, b in pairwise(part)]
     for mark in scene.marks:
         desk.keep_clear(on.at(mark.point), RADII.get(mark.role, 8.0))
     count = 1 + max((label.index for label in scene.labels if label.role == "step"), default=0)
-    asked = [*frame, *(_asked(on, item, faces, count) for item in scene.labels)]
+    asked = [*frame]
+    asked += [
+        _culprit(scene, on, item) if item.role == "culprit" else _asked(on, item, faces, count) for item in scene.labels
+    ]
     placed, left = settled(desk, [*asked, *_names(scene, on)])
     return tuple(_widened(desk, on, label, faces) for label in placed), unplaced([one for one in left if one.hover])
 
@@ -68,20 +76,36 @@ def _asked(on: Paper, item: Label, faces: Faces, count: int) -> Label:
         return replace(item, hover=said, spots=tuple(number_spots(start, end, item.index, count)))
     if item.role == "tag":
         behind = any(not seen and _same(item.point, face) for face, seen in faces)
-        spots = (Spot(spot), *ring(spot, item.text, "tag", 2.0))
+        spots = (Spot(spot), *ring(spot, item.shorter or item.text, "tag", 2.0))
+        if item.shorter:  # a whole name stays on its face
+            spots = tuple(one for one in spots if one.foot is None)
         return replace(item, hover=said, role="back tag" if behind else "tag", spots=spots)
     places = led(spot, item.text, item.role, 12.0) if item.target else ring(spot, item.text, item.role, 6.0)
     return replace(item, hover=said, target=None, spots=tuple(places))
 
 
+def _culprit(scene: Scene, on: Paper, item: Label) -> Label:
+    """The name of a border that nothing left reaches, at one of the border's corners."""
+    corners = [
+        on.at(corner)
+        for border in scene.polygons
+        if border.role == "conflict" and item.point in border.points
+        for corner in border.points
+    ]
+    middle = tuple(sum(values) / len(corners) for values in zip(*corners, strict=True))
+    places = [spot for corner in corners for spot in ring(corner, item.text, item.role, 4.0, middle)]
+    near_first = sorted(places, key=lambda spot: spot.foot is not None)
+    return replace(item, hover=item.longer or item.text, spots=tuple(near_first))
+
+
 def _widened(desk: Desk, on: Paper, tag: Label, faces: Faces) -> Label:
     """The tag with its constraint's name, where the face it stands on has room for it."""
-    if tag.role != "tag" or not tag.longer or tag.target:
+    if tag.role != "tag" or tag.text == tag.longer or tag.target:
         return tag
     area, own = Tile(tag.point, halves(tag.longer, "tag")), Tile(tag.point, halves(tag.text, "tag"))
     corners = [(tag.point[0] + x * area.half[0], tag.point[1] + y * area.half[1]) for x in (-1, 1) for y in (-1, 1)]
     roomy = any(seen and _holds(on, face, corners) for face, seen in faces)
-    others = Desk(desk.paper, [tile for tile in desk.tiles if tile != own], desk.lines)
+    others = Desk(desk.paper, [tile for tile in desk.tiles if tile != own], desk.lines, desk.paths)
     if not roomy or not others.free(area):
         return tag
     desk.tiles.append(area)

@@ -6,16 +6,16 @@ the middle of the region, so that none hides another.
 
 from __future__ import annotations
 
-from collections.abc import Iterator
-from dataclasses import dataclass
+from collections.abc import Iterator, Set
+from math import hypot
 
-from polywalk.drawing.placing import BESIDE, Sheet, aside, number_spot
+from polywalk.drawing.placing import BESIDE, SHORT, Sheet, aside, number_spot
 from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Spot
-from polywalk.drawing.settling import led
 from polywalk.drawing.space import exit_point
+from polywalk.drawing.stays import Frame, Leg, stays
 from polywalk.drawing.subject import Subject, planar
 from polywalk.drawing.window import Window
-from polywalk.walks import Pivot, Walk
+from polywalk.walks import Walk
 
 APART = 7.0
 """Pixels between walks that share an edge."""
@@ -27,43 +27,20 @@ MOST_NUMBERS = 60
 """Past this many pivots step numbers would cover the picture; every tenth is written."""
 
 
-@dataclass(frozen=True)
-class Leg:
-    """One pivot as it is drawn: from, to, and whether anything moves along the axes."""
-
-    pivot: Pivot
-    start: Point
-    end: Point
-
-    @property
-    def moves(self) -> bool:
-        """Whether it is seen to move."""
-        return self.start != self.end
-
-
-@dataclass(frozen=True)
-class Frame:
-    """What all walks of a picture share: where it is drawn, how many there are, the middle they avoid."""
-
-    subject: Subject
-    window: Window
-    sheet: Sheet | None
-    middle: Point
-    count: int
-
-
 def layer(subject: Subject, window: Window, sheet: Sheet | None, middle: Point) -> Layer:
     """All walks of the view."""
     frame = Frame(subject, window, sheet, middle, len(subject.view.walks))
     lines: list[Line] = []
     marks: list[Mark] = []
     labels: list[Label] = []
-    for index, walk in enumerate(subject.view.walks):
-        legs = _legs(frame, walk)
+    all_legs = [_legs(frame, walk) for walk in subject.view.walks]
+    for index, legs in enumerate(all_legs):
         lines += _lines(frame, index, legs)
-        labels += _numbers(frame, index, legs) + _stays(frame, index, legs)
+        earlier = {(leg.pivot.number, leg.start, leg.end) for other in all_legs[:index] for leg in other}
+        labels += _numbers(frame, index, legs, earlier)
         if index == 0:
-            marks += _marks(frame, walk, legs)
+            marks += _marks(frame, subject.view.walks[0], legs)
+    labels += stays(frame, all_legs)
     return Layer(lines=tuple(lines), marks=tuple(marks), labels=tuple(labels))
 
 
@@ -103,18 +80,21 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
         parts.setdefault(role, []).append(_shifted(frame, index, leg))
         if frame.sheet is not None:
             start, end = _shifted(frame, index, leg)
-            frame.sheet.lines.append((frame.sheet.pixel(start), frame.sheet.pixel(end)))
+            frame.sheet.paths.append((frame.sheet.pixel(start), frame.sheet.pixel(end)))
     name = walk_text(frame.subject.view.walks[index])
     parts = parts or {"walk": []}  # a walk that never moves still has its place in the legend
     return [Line(tuple(found), role, index, name, arrow="end") for role, found in parts.items()]
 
 
-def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
+def _numbers(frame: Frame, index: int, legs: list[Leg], earlier: Set[tuple[int, Point, Point]]) -> list[Label]:
+    """The steps' numbers; where walks share a step and its number, it is written once if there is little room."""
     labels = []
     for leg in legs:
         if not leg.moves or (len(legs) > MOST_NUMBERS and leg.pivot.number % 10):
             continue
         start, end = _shifted(frame, index, leg)
+        if (leg.pivot.number, leg.start, leg.end) in earlier and _is_short(frame, leg):
+            continue
         spot = tuple((a + b) / 2 for a, b in zip(start, end, strict=True))
         spots: tuple[Spot, ...] = ()
         if frame.sheet is not None:
@@ -123,6 +103,14 @@ def _numbers(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
         number = str(leg.pivot.number)
         labels.append(Label(number, spot, "step", index, along=(start, end), longer=said, spots=spots))
     return labels
+
+
+def _is_short(frame: Frame, leg: Leg) -> bool:
+    """Whether a leg has no room for the numbers of several walks; in space it depends on the view, so none has."""
+    if frame.sheet is None:
+        return True
+    (a, b), (c, d) = frame.sheet.pixel(leg.start), frame.sheet.pixel(leg.end)
+    return hypot(c - a, d - b) < SHORT
 
 
 def number_spots(start: Point, end: Point, index: int, count: int) -> Iterator[Spot]:
@@ -138,47 +126,6 @@ def number_spots(start: Point, end: Point, index: int, count: int) -> Iterator[S
                     start[1] + share * (end[1] - start[1]) + side * across[1],
                 )
             )
-
-
-def stays(legs: list[Leg]) -> dict[Point, dict[str, list[int]]]:
-    """The numbers of the pivots that move nothing on the paper, by the point where that is and by the reason."""
-    found: dict[Point, dict[str, list[int]]] = {}
-    for leg in legs:
-        if not leg.moves:
-            found.setdefault(leg.start, {}).setdefault(_reason(leg.pivot), []).append(leg.pivot.number)
-    return found
-
-
-def _reason(pivot: Pivot) -> str:
-    if pivot.kind == "degenerate":
-        return "no move"
-    if pivot.point_before == pivot.point_after and pivot.kind == "step":
-        return "only the Phase I auxiliary"
-    return "unseen on these axes"
-
-
-def _stays(frame: Frame, index: int, legs: list[Leg]) -> list[Label]:
-    labels = []
-    for point, numbers in stays(legs).items():
-        rule = f"{frame.subject.view.walks[index].rule} " if frame.count > 1 else ""
-        text = rule + "; ".join(f"{_spans(found)}: {words}" for words, found in numbers.items())
-        if frame.sheet is None:
-            labels.append(Label(text, point, "stay", index, target=point))
-        else:
-            spots = led(frame.sheet.pixel(point), text, "stay", 12.0, frame.sheet.pixel(frame.middle))
-            labels.append(Label(text, point, "stay", index, target=point, spots=tuple(spots)))
-    return labels
-
-
-def _spans(numbers: list[int]) -> str:
-    """Runs of numbers, short: 2, 4-6."""
-    runs: list[list[int]] = []
-    for number in numbers:
-        if runs and number == runs[-1][1] + 1:
-            runs[-1][1] = number
-        else:
-            runs.append([number, number])
-    return ", ".join(str(a) if a == b else f"{a}–{b}" for a, b in runs)
 
 
 def _marks(frame: Frame, walk: Walk, legs: list[Leg]) -> list[Mark]:

@@ -83,6 +83,7 @@ class Sheet:
     window: Window
     boxes: list[Box] = field(default_factory=list)
     lines: list[tuple[Point, Point]] = field(default_factory=list)
+    paths: list[tuple[Point, Point]] = field(default_factory=list)
     fills: list[tuple[Point, ...]] = field(default_factory=list)
 
     def pixel(self, point: Sequence[float]) -> Point:
@@ -116,7 +117,7 @@ class Sheet:
     def settle(self, labels: Iterable[Label]) -> tuple[tuple[Label, ...], tuple[Label, ...]]:
         """The labels where they stand, and those that found no place."""
         tiles = [Tile(((a + c) / 2, (b + d) / 2), ((c - a) / 2, (d - b) / 2)) for a, b, c, d in self.boxes]
-        desk = Desk(self.window.paper, tiles, list(self.lines))
+        desk = Desk(self.window.paper, tiles, list(self.lines), list(self.paths))
         placed, left = settled(desk, [replace(label, point=self.pixel(label.point)) for label in labels])
         back = [
             replace(label, point=self.unpixel(label.point), target=label.target and self.unpixel(label.target))

@@ -2,9 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from math import hypot
-from string import ascii_lowercase
 
 from polywalk.drawing.placing import Sheet, upright
 from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon
@@ -82,21 +81,20 @@ def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) 
             lines.append(Line(strokes, "hatch", index, row.name))
             sheet.lines += [(sheet.pixel(a), sheet.pixel(b)) for a, b in strokes]
     wanted.sort(key=lambda item: hypot(item[2][0] - item[3][0], item[2][1] - item[3][1]))
-    labels = tuple(_name(sheet, *item) for item in wanted)
+    said = {
+        row.name: ("culprit" if row.name in conflict else "name", subject.letters[row.name]) for _, row, *_ in wanted
+    }
+    labels = tuple(_name(sheet, index, row, ends, said[row.name]) for index, row, *ends in wanted)
     return Layer(lines=tuple(lines), labels=labels), tuple(absent)
 
 
-def _name(sheet: Sheet, index: int, row: Constraint, start: Point, end: Point) -> Label:
-    out = forbidden(row, sheet)
+def _name(sheet: Sheet, index: int, row: Constraint, ends: Sequence[Point], said: tuple[str, str]) -> Label:
+    """The name of a border at its role and with its letter, for where there is no room for the name."""
+    out, (start, end), (role, letter) = forbidden(row, sheet), ends, said
     text = f"{row.name} ({SIGN['==']})" if row.sense == "==" else row.name
-    spots = beside_line(start, end, out, (text, "name"), upright(start, end))
+    spots = beside_line(start, end, out, (text, role), upright(start, end))
     chosen = tuple(sorted(spots, key=lambda spot: sheet.covered(spot.centre)))
-    return Label(text, sheet.unpixel(start), "name", index, spots=chosen, shorter=letter_of(index), longer=row.name)
-
-
-def letter_of(index: int) -> str:
-    """A letter for a constraint, by its place: a to z, then aa, bb, ..."""
-    return ascii_lowercase[index % 26] * (1 + index // 26)
+    return Label(text, sheet.unpixel(start), role, index, spots=chosen, shorter=letter, longer=row.name)
 
 
 def region(shape: Shape, role: str = "region") -> Layer:

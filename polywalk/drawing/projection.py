@@ -10,7 +10,7 @@ from dataclasses import replace
 from itertools import pairwise
 
 from polywalk.drawing.camera import Camera
-from polywalk.drawing.lettering import beside_itself, labels
+from polywalk.drawing.lettering import WALKS, beside_itself, labels
 from polywalk.drawing.paper import Paper, frame, paper
 from polywalk.drawing.scene import Axis, Label, Line, Mark, Point, Polygon, Scene
 from polywalk.drawing.space import cross, inner
@@ -20,7 +20,6 @@ EDGE = 14.0
 """Pixels kept free below the lowest and above the highest thing drawn."""
 
 BODY = {"facet", "rest", "region"}
-WALKS = {"walk", "phase 1", "walk rest"}
 
 
 def laid_flat(scene: Scene) -> Scene:

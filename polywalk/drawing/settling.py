@@ -13,14 +13,28 @@ from math import cos, pi, sin
 from polywalk.drawing.scene import KeyPart, KeyRow, Label, Point, Spot
 from polywalk.drawing.tiles import Tile, around, halves
 
-ORDER = ("tick", "axis name", "step", "target", "part", "point", "tag", "stay", "evidence name", "name", "note")
+ORDER = (
+    "tick",
+    "axis name",
+    "culprit",
+    "step",
+    "target",
+    "part",
+    "point",
+    "tag",
+    "stay",
+    "evidence name",
+    "name",
+    "note",
+)
 """Roles in the order in which they are settled."""
 
-ON_LINES = {"step", "tick"}
-"""Roles whose place is on a line: their frames cover it."""
+NOTHING, LINES, PATHS = 0, 1, 2
+"""What a text may cover: nothing, lines too, the paths of walks too."""
 
-FRAMED = {"tag", "back tag", "stay", "part"}
-"""Roles whose frame may cover a line where there is no other place."""
+COVERS = {"step": (PATHS,), "tick": (PATHS,), "stay": (NOTHING, LINES), "culprit": (NOTHING, LINES)}
+COVERS |= dict.fromkeys(("tag", "back tag", "part"), (NOTHING, LINES, PATHS))
+"""What roles try to cover, one after the other: some stand on lines, framed ones do where there is no other place."""
 
 NEAR, FAR = (2.0, 6.0, 11.0), (20.0, 32.0, 48.0, 68.0, 92.0, 120.0)
 """Pixels between a mark and its text, beside it and joined to it by a line."""
@@ -28,21 +42,23 @@ NEAR, FAR = (2.0, 6.0, 11.0), (20.0, 32.0, 48.0, 68.0, 92.0, 120.0)
 
 @dataclass
 class Desk:
-    """The paper while texts are settled: its size, what is taken, and the lines."""
+    """The paper while texts are settled: its size, what is taken, the lines, and among them the paths of walks."""
 
     paper: tuple[float, ...]
     tiles: list[Tile] = field(default_factory=list)
     lines: list[tuple[Point, Point]] = field(default_factory=list)
+    paths: list[tuple[Point, Point]] = field(default_factory=list)
 
     def keep_clear(self, point: Sequence[float], radius: float) -> None:
         """Keep texts away from a mark."""
         self.tiles.append(around(point, radius))
 
-    def free(self, tile: Tile, over_lines: bool = False) -> bool:
-        """Whether a tile covers nothing."""
+    def free(self, tile: Tile, covers: int = NOTHING) -> bool:
+        """Whether a tile covers nothing more than it may."""
         if not tile.within(self.paper) or any(tile.meets(other) for other in self.tiles):
             return False
-        return over_lines or not any(tile.crossed(*line) for line in self.lines)
+        kept = (*(self.lines if covers < LINES else ()), *(self.paths if covers < PATHS else ()))
+        return not any(tile.crossed(*line) for line in kept)
 
     def reaches(self, tile: Tile, foot: Point) -> bool:
         """Whether the line from a text to its foot passes by every other text and mark."""
@@ -58,7 +74,9 @@ def settled(desk: Desk, labels: Iterable[Label]) -> tuple[tuple[Label, ...], tup
         desk.tiles.append(Tile(label.point, halves(label.text, label.role), label.angle))
     found, left = list[Label](fixed), list[Label]()
     rank = {role: place for place, role in enumerate(ORDER)}
-    for label in sorted((one for one in asked if one.spots), key=lambda one: rank.get(one.role, len(ORDER))):
+    for label in sorted(
+        (one for one in asked if one.spots), key=lambda one: (rank.get(one.role, len(ORDER)), not one.shorter)
+    ):
         placed = _placed(desk, label)
         (found if placed else left).append(placed or replace(label, spots=()))
     return tuple(found), tuple(left)
@@ -69,12 +87,10 @@ def _placed(desk: Desk, label: Label) -> Label | None:
     short = replace(label, text=label.shorter, role="tag") if label.shorter else None
     for form in (label, short) if short else (label,):
         half = halves(form.text, form.role)
-        for over_lines in (False, True):
-            if over_lines and form.role not in FRAMED | ON_LINES:
-                continue
+        for covers in COVERS.get(form.role, (NOTHING,)):
             for spot in label.spots:
                 tile = Tile(spot.centre, half, spot.angle if form is label else 0.0)
-                if desk.free(tile, over_lines or form.role in ON_LINES) and _joins(desk, tile, spot.foot):
+                if desk.free(tile, covers) and _joins(desk, tile, spot.foot):
                     return _at(desk, form, tile, spot)
     return None
 
@@ -136,8 +152,8 @@ def beside_line(start: Point, end: Point, normal: Point, label: tuple[str, str],
 
 
 def unplaced(labels: Sequence[Label]) -> tuple[KeyPart, ...]:
-    """The part of the key that names what found no place."""
-    if not labels:
+    """The part of the key that names what found no place; notes stand in it with their marks anyway."""
+    names = ", ".join(dict.fromkeys(label.longer or label.text for label in labels if label.role != "note"))
+    if not names:
         return ()
-    names = ", ".join(dict.fromkeys(label.longer or label.text for label in labels))
     return (KeyPart("No room in the picture for", (KeyRow("none", names),)),)

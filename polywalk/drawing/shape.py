@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from polywalk.drawing.scene import Point
-from polywalk.drawing.subject import floats
+from polywalk.drawing.subject import floats, planar
 from polywalk.drawing.window import CUT, Window, cut
 from polywalk.region import Region
 
@@ -38,6 +38,17 @@ class Shape:
     sides: tuple[Side, ...]
     edges: tuple[tuple[Point, Point], ...]
     open_edges: tuple[tuple[Point, Point], ...]
+
+    @property
+    def lifted(self) -> Shape:
+        """The pieces on a line as pieces of the plane, at height 0; a piece of a line has nothing to fill."""
+
+        def pairs(found: tuple[tuple[Point, Point], ...]) -> tuple[tuple[Point, Point], ...]:
+            return tuple((planar(a), planar(b)) for a, b in found)
+
+        sides = tuple(Side(side.constraints, tuple(map(planar, side.corners))) for side in self.sides)
+        corners = tuple(map(planar, self.corners))
+        return Shape(self.dimension, corners, (), sides, pairs(self.edges), pairs(self.open_edges))
 
 
 def shape(source: Region, window: Window) -> Shape:

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from math import hypot
 from typing import Any
 
 from polywalk.drawing.scene import Label, Line, Mark, Point, Polygon
-from polywalk.drawing.theme import DEPTH, Style, Theme, mixed
+from polywalk.drawing.theme import DEPTH, Theme, mixed
+from polywalk.drawing.tiles import BOLD
 
 DASH = {"solid": "-", "dash": (0, (5, 3)), "dot": (0, (1.2, 2)), "dashdot": (0, (6, 2.5, 1.5, 2.5))}
 DASH |= {"longdash": (0, (8, 2)), "longdashdot": (0, (8, 2, 1.5, 2))}
@@ -23,6 +25,11 @@ SYMBOLS = {
 
 FILLS = {"cut off": "////", "added": ".."}
 """Patterns of areas that are not told by their colour."""
+
+
+STANDOFF, HEAD = 5.0, 0.45
+"""Printer's points between a straight arrow's tip and its target; the length of a head that its shaft stops short of,
+as a share of the head's scale."""
 
 
 def points(pixels: float) -> float:
@@ -50,40 +57,33 @@ def polygon(axes: Any, item: Polygon, theme: Theme) -> None:
 
 
 def line(axes: Any, item: Line, theme: Theme) -> None:
-    """Draw the parts of one line, with their heads."""
+    """Draw the parts of one line, with their heads; a head is whole where its shaft is dashed."""
     style = theme.style(item.role, item.index)
-    look = {"color": style.colour, "alpha": style.opacity, "zorder": DEPTH[item.role]}
+    look: dict[str, Any] = {"color": style.colour, "alpha": style.opacity, "zorder": DEPTH[item.role]}
+    stroke = {"linestyle": DASH[style.dash], "linewidth": points(style.width), "solid_capstyle": "butt", **look}
     for part in filter(None, item.parts):
-        if item.arrow and len(part) > 2:
-            _bent(axes, part, style, look)
-        elif not item.arrow:
-            x, y = zip(*part, strict=True)
-            width = points(style.width)
-            axes.plot(x, y, linestyle=DASH[style.dash], linewidth=width, solid_capstyle="butt", **look)
-        else:
-            arrow = {
-                "arrowstyle": "-|>,head_width=0.26,head_length=0.55",
-                "shrinkA": 0,
-                "shrinkB": 5,
-                "mutation_scale": 13,
-            }
-            arrow |= {"linewidth": points(style.width), "linestyle": DASH[style.dash], **look}
-            axes.annotate("", xy=part[-1], xytext=part[0], arrowprops=arrow, zorder=DEPTH[item.role])
+        ends = part if not item.arrow else (*part[:-1], _short_of(axes, part, STANDOFF if len(part) == 2 else 0.0))
+        if item.arrow:
+            size = 13 if style.width > 2 or len(part) == 2 else 9 if style.opacity > 0.5 else 6
+            _head(axes, ends, size, {"linewidth": points(style.width), **look})
+            ends = (*ends[:-1], _short_of(axes, ends, HEAD * size))
+        axes.plot(*zip(*ends, strict=True), **stroke)
 
 
-def _bent(axes: Any, part: tuple[Point, ...], style: Style, look: dict[str, Any]) -> None:
-    """An arrow along a bent line, its head as large as its stroke asks for."""
-    x, y = zip(*part, strict=True)
-    axes.plot(x[:-1], y[:-1], linestyle=DASH[style.dash], linewidth=points(style.width), **look)
-    head: dict[str, Any] = {"arrowstyle": "-|>,head_width=0.26,head_length=0.55"}
-    head |= {
-        "mutation_scale": 13 if style.width > 2 else 9,
-        "linewidth": points(style.width),
-        "shrinkA": 0,
-        "shrinkB": 0,
-        **look,
-    }
-    axes.annotate("", xy=part[-1], xytext=part[-2], arrowprops=head, zorder=look["zorder"])
+def _short_of(axes: Any, part: tuple[Point, ...], gap: float) -> Point:
+    """The point so many of the printer's points before a line's end; its start where it is shorter."""
+    (a, b), (c, d) = axes.transData.transform(part[-2:])
+    length = hypot(c - a, d - b)
+    share = min(gap * axes.figure.dpi / 72 / length, 1.0) if length else 0.0
+    x, y = axes.transData.inverted().transform((c - share * (c - a), d - share * (d - b)))
+    return (float(x), float(y))
+
+
+def _head(axes: Any, part: tuple[Point, ...], size: float, look: dict[str, Any]) -> None:
+    """An arrow's head alone, at the end of a line."""
+    arrow = {"arrowstyle": "-|>,head_width=0.26,head_length=0.55", "mutation_scale": size, "shrinkA": 0, "shrinkB": 0}
+    foot = _short_of(axes, part, 1.0)
+    axes.annotate("", xy=part[-1], xytext=foot, arrowprops={**arrow, **look}, zorder=look["zorder"])
 
 
 def mark(axes: Any, item: Mark, theme: Theme, shrink: float = 1.0) -> None:
@@ -119,7 +119,7 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
             "linewidth": 1.4 if item.role == "tag" else 0.8,
         }
         frame |= {"linestyle": "--" if item.role == "back tag" else "-", "alpha": 0.92}
-    elif item.target:  # the line to its point ends where the text begins
+    elif item.target or item.role == "culprit":  # a line to its point ends where the text begins; others pass below
         frame = {"boxstyle": "square,pad=0.15", "facecolor": theme.paper, "edgecolor": "none"}
     axes.text(
         item.point[0],
@@ -134,6 +134,6 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
         bbox=frame,
         zorder=DEPTH[item.role],
         parse_math=False,
-        fontweight="bold" if item.role in {"step", "point", "target"} else "normal",
+        fontweight="bold" if item.role in BOLD else "normal",
         clip_on=False,
     )

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 
+from polywalk.drawing.tags import letters
 from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
 from polywalk.exact import Row, full, rounded, short
@@ -41,6 +42,11 @@ class Subject:
     def projected(self) -> bool:
         """Whether variables were projected away."""
         return len(self.axes) < self.model.n
+
+    @cached_property
+    def letters(self) -> dict[str, str]:
+        """The letter of every constraint; those that only a shadow has come after the model's own."""
+        return letters(row.name for model in (self.model, self.seen.model) for row in model.constraints)
 
     @cached_property
     def _places(self) -> tuple[int, ...]:

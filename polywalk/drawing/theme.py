@@ -9,6 +9,7 @@ special vertices by shape.
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import cached_property
 
 from polywalk.drawing.view import Mode
 
@@ -87,9 +88,15 @@ class Theme:
                 "stayed": replace(base, fill=self.paper, size=9.0, width=1.6),
             }
             return changes[role]
-        return self._fixed()[role]
+        return self._fixed[role]
 
+    @cached_property
     def _fixed(self) -> dict[str, Style]:
+        """The styles of all roles that no index changes."""
+        return self._body() | self._words() | self._bases() | self._versions()
+
+    def _body(self) -> dict[str, Style]:
+        """The region, its vertices, its objective, its frame."""
         return {
             "region": Style(self.edge, fill=self.face, opacity=1.0, width=0.0),
             "facet": Style(self.edge, fill=self.face, opacity=0.62, width=0.0),
@@ -110,39 +117,56 @@ class Theme:
             "optimal face": Style(self.text, width=4.5),
             "selected": Style(self.text, width=2.0, size=22.0, symbol="square ring"),
             "start": Style(self.text, width=2.0, size=13.0, symbol="square ring"),
+            "back": Style(self.quiet, fill=self.face, opacity=0.9, width=0.0),
+            "none": Style(self.text),
+        }
+
+    def _words(self) -> dict[str, Style]:
+        """Texts, and what findings are marked with."""
+        return {
             "stay": Style(self.text, fill=self.paper, width=1.0, size=11.0),
             "back tag": Style(self.quiet, fill=self.paper, width=1.0, size=11.0),
-            "back": Style(self.quiet, fill=self.face, opacity=0.9, width=0.0),
             "name": Style(self.text, size=11.0),
+            "culprit": Style(self.text, size=11.0),
             "ends": Style(self.text, fill=self.paper, size=11.0, width=1.0),
             "note": Style(self.quiet, size=10.0),
             "tick": Style(self.quiet, size=10.0),
             "axis name": Style(self.text, size=11.0),
             "point": Style(self.text, size=11.0),
+            "part": Style(self.text, fill=self.paper, size=12.0, width=1.0),
+            "target": Style(self.text, size=12.0),
+            "letter": Style(self.paper, width=0.0),
+            "evidence name": Style(self.text, size=11.0),
+            "evidence": Style(self.text, width=2.2, size=30.0, symbol="square ring"),
+            "evidence line": Style(self.text, width=9.0, opacity=0.22),
+            "evidence ray": Style(self.text, width=2.6),
+        }
+
+    def _bases(self) -> dict[str, Style]:
+        """The bases of a vertex, and the curve of a value."""
+        return {
             "basis": Style(self.edge, fill=self.paper, width=1.4, size=34.0),
             "optimal basis": Style(self.text, fill=self.text, width=1.4, size=34.0),
             "first basis": Style(self.text, width=2.0, size=44.0, symbol="square ring"),
             "basis name": Style(self.text, size=9.5),
             "optimal basis name": Style(self.paper, size=9.5),
-            "exchange": Style(self.grid, width=1.2),
+            "exchange": Style(self.quiet, width=1.2, opacity=0.3),
             "pivot": Style(self.quiet, width=0.9),
-            "faint pivot": Style(self.quiet, width=0.8, opacity=0.4),
+            "faint pivot": Style(self.quiet, width=0.8, opacity=0.28),
             "exit": Style(self.text, width=1.3),
-            "faint exit": Style(self.text, width=1.0, opacity=0.5),
+            "faint exit": Style(self.text, width=0.9, opacity=0.35),
             "other exit": Style(self.quiet, width=0.9, dash="dash"),
-            "target": Style(self.text, size=12.0),
             "curve": Style(self.text, width=2.4),
             "breakpoint": Style(self.paper, fill=self.edge, width=1.0, size=9.0),
             "now": Style(self.paper, fill=self.text, width=1.0, size=14.0, symbol="diamond"),
             "beyond": Style(self.quiet, fill=self.quiet, opacity=0.16, width=0.0),
-            "evidence": Style(self.text, width=2.2, size=30.0, symbol="square ring"),
-            "evidence line": Style(self.text, width=9.0, opacity=0.22),
-            "evidence ray": Style(self.text, width=2.6),
-            "evidence name": Style(self.text, size=11.0),
-            "none": Style(self.text),
+        }
+
+    def _versions(self) -> dict[str, Style]:
+        """Two versions of a model."""
+        return {
             "cut off": Style(self.cut, fill=self.cut, opacity=0.16, width=0.0),
             "added": Style(self.added, fill=self.added, opacity=0.16, width=0.0),
-            "part": Style(self.text, fill=self.paper, size=12.0, width=1.0),
             "old edge": Style(self.text, width=1.4, dash="dash"),
             "old edge on": Style(self.text, width=1.4, dash="dash"),
             "new edge": Style(self.edge, width=2.6),
@@ -151,7 +175,6 @@ class Theme:
             "lost": Style(self.text, width=2.2, size=10.0, symbol="cross"),
             "gained": Style(self.edge, fill=self.paper, width=2.0, size=10.0, symbol="square"),
             "old optimum": Style(self.text, width=2.0, size=17.0, symbol="diamond ring"),
-            "letter": Style(self.paper, width=0.0),
         }
 
 
@@ -182,6 +205,7 @@ DEPTH = {
             ("back tag",),
             (
                 "evidence name",
+                "culprit",
                 "note",
                 "tick",
                 "axis name",

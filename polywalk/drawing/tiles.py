@@ -15,10 +15,11 @@ SIZES = {"part": 12.0, "note": 10.0, "step": 10.0, "tick": 10.0}
 
 USUAL = 11.0
 
-PADS = {"part": 3.4, "tag": 3.4, "back tag": 3.4, "stay": 3.4, "step": 4.0}
+PADS = {"part": 3.4, "tag": 3.4, "back tag": 3.4, "stay": 3.4, "step": 4.0, "culprit": 1.8}
 """Pixels between the letters of a framed text and its frame, the frame's own line included."""
 
-BOLD = {"step", "point", "target"}
+BOLD = {"step", "point", "target", "culprit"}
+"""Roles written in bold letters."""
 
 TALL, EDGE = 0.66, 1.5
 """Half the height of a line of text as a share of its size, and pixels kept free at the paper's border."""

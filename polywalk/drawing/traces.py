@@ -213,7 +213,7 @@ def _labels(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
         look["textfont"] = {"size": 12, "color": theme.text if role == "tag" else style.colour, "family": FONT}
         look["textposition"] = PLACED.get(role, "middle center")
         if role == "tag":
-            name = f"{group[0].text}  {group[0].hover.partition(':')[0]}"
+            name = f"{group[0].shorter or group[0].text}  {group[0].hover.partition(':')[0]}"
             look |= {"hoverinfo": "text", "hovertext": [html(label.hover) for label in group]}
             look |= {"showlegend": True, "name": html(name)}
         if role == "step" and drawn.solid:

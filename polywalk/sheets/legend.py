@@ -52,7 +52,7 @@ MEANINGS = {
 """What each role of a picture means, for those that the picture's own key has no words for."""
 
 UNSAID = {"grid", "axis", "tick", "axis name", "note", "name", "point", "part", "back", "back tag", "end", "ends"}
-UNSAID |= {"evidence name"}
+UNSAID |= {"evidence name", "culprit"}
 """Roles of words and of the frame, which say themselves what they are, and of backs, told with their fronts."""
 
 

@@ -177,7 +177,7 @@ def test_both_painters_paint_it(mode: str) -> None:
     assert svg == pw.picture(found, walks=walks, mode=mode).data
     figure = pw.draw(found, walks=walks, mode=mode)
     names = {trace.name for trace in figure.data}
-    assert {"basis", "optimal basis", "A  harbour main"} <= names
+    assert {"basis", "optimal basis", "a  harbour main"} <= names
     hovers = [text for trace in figure.data if trace.name == "optimal basis" for text in trace.hovertext]
     assert len(hovers) == 2
     assert "V8" in figure.layout.title.text
@@ -192,7 +192,7 @@ def test_bases_of_five_decisions_are_told_by_letters_in_the_key() -> None:
     assert {label.text for label in drawn.labels if "basis name" in label.role} == {b.name for b in found.members}
     (part,) = (part for part in drawn.key if part.heading.startswith("Bases"))
     told = dict(item.split(" ") for row in part.rows for item in row.text.split("   "))
-    letters = dict(zip("ABCDEFGH", found.vertex.active, strict=True))
+    letters = dict(zip("abcdefgh", found.vertex.active, strict=True))
     held = {name: [letters[letter] for letter in text] for name, text in told.items()}
     assert held == {basis.name: list(basis.held) for basis in found.members}
     assert len(held) == 56
