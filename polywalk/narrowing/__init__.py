@@ -1,7 +1,8 @@
 """A big model brought down to two or three decisions: sections, shadows, conflicts, escapes."""
 
+from polywalk.narrowing.answer import Completion
 from polywalk.narrowing.axes import Axes, AxisRange, suggest_axes
-from polywalk.narrowing.completion import Completion, completion
+from polywalk.narrowing.completion import completion
 from polywalk.narrowing.conflict import conflict
 from polywalk.narrowing.escape import escape
 from polywalk.narrowing.results import Shadow, ShadowFacet

@@ -1,84 +1,53 @@
-"""Can a partial plan be carried out? A completion of it, or the constraints that forbid it."""
+"""Can a plan, or a part of one, be carried out? A completion of it, or the constraints that forbid it."""
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import replace
 from fractions import Fraction
 
-from polywalk.bigmodel import BigModel
-from polywalk.errors import SolverError
-from polywalk.exact import exact, short
+import numpy as np
+
+from polywalk.bigmodel import BigModel, locate
+from polywalk.errors import ModelError, SolverError, UnknownName
+from polywalk.exact import exact
+from polywalk.linear import optimum
 from polywalk.model import Model
 from polywalk.narrowing.adding import sparse, with_row
+from polywalk.narrowing.answer import SHOWN, Completion, Named, Range, Verdict
 from polywalk.narrowing.certify import Basis, holds
-from polywalk.narrowing.conflict import conflict
+from polywalk.narrowing.conflict import conflict, irreducible
+from polywalk.narrowing.cutting import cut
+from polywalk.narrowing.nearby import ends, nearby
 from polywalk.narrowing.program import Program
+from polywalk.narrowing.settling import settled_by
 from polywalk.narrowing.shadow import shadow
 from polywalk.narrowing.solver import Solver
-from polywalk.narrowing.tolerances import simple
-from polywalk.table import Shown, Table
+from polywalk.narrowing.tolerances import TOLERANCES, simple
 
-SHOWN = 20
-"""Values of a completion that its table names."""
+NO_PLAN = "the model allows no plan at all, whatever the values; conflict(big) shows why"
 
 
-@dataclass(frozen=True, repr=False)
-class Completion(Shown):
-    """Whether values of some variables can be part of a plan.
-
-    Parameters
-    ----------
-    plan : tuple of (str, Fraction)
-        What was asked.
-    verdict : {"possible", "possible within solver tolerance", "impossible"}
-    values : tuple of (str, Fraction)
-        A whole plan with these values; () where it is impossible.
-    conflict : Model or None
-        What stops it: constraints of the big model and of the plan ("x as planned") that contradict each other.
-    limits : tuple of (str, Fraction or None, Fraction or None)
-        Where one variable was asked and is impossible: the range it can have; () otherwise.
-    """
-
-    plan: tuple[tuple[str, Fraction], ...]
-    verdict: str
-    values: tuple[tuple[str, Fraction], ...] = ()
-    conflict: Model | None = None
-    limits: tuple[tuple[str, Fraction | None, Fraction | None], ...] = ()
-
-    def table(self) -> Table:
-        """The completion, or the conflict."""
-        asked = ", ".join(f"{name} = {short(value)}" for name, value in self.plan)
-        notes = [f"{name} can be from {_end(low)} to {_end(high)}" for name, low, high in self.limits]
-        if self.conflict is not None:
-            told = self.conflict.table()
-            return Table(f"{asked}: {self.verdict}", told.columns, told.rows, (*told.notes, *notes))
-        rows = tuple((name, value) for name, value in self.values if value)[:SHOWN]
-        rest = sum(1 for _, value in self.values if value) - len(rows)
-        if rest > 0:
-            notes.append(f"and {rest} more that are not 0, see .values")
-        notes.append("variables that are not listed are 0")
-        return Table(f"{asked}: {self.verdict}, for example so", ("variable", "value"), rows, tuple(notes))
-
-
-def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
+def completion(big: BigModel | Model, plan: Mapping[str, object] | Iterable[object]) -> Completion:
     """Whether some variables of a big model can have these values, and what stops them.
 
     Parameters
     ----------
     big : BigModel or Model
-    plan : mapping of str to number
-        The values of some variables.
+        Integer marks are not applied.
+    plan : mapping of str to number, or (n,) sequence of numbers
+        The values of some variables, or of all.
 
     Returns
     -------
     Completion
-        A whole plan with these values, or the conflict that forbids them.
+        A whole plan with these values; or the constraints that contradict them, with what would have to change. A
+        value beyond the bounds of its variable is such an answer too.
 
     Raises
     ------
-    UnknownName, NumberError
-        A name that is not there, a value that is no number.
+    UnknownName, ModelError, NumberError
+        A name that is not there, an empty plan, a sequence of the wrong length, a value that is no number.
     SolverError
         HiGHS is missing, or stopped without an answer.
 
@@ -89,11 +58,11 @@ def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
     >>> from polywalk.scenarios import harbour_row
     >>> print(completion(BigModel.from_model(harbour_row()), {"pump": 5, "chips": 0}))
     pump = 5, chips = 0: impossible
-    constraint          rule              origin
-    return temperature  pump - chips ≤ 4
-    pump as planned     pump = 5
-    chips as planned    chips = 0
-    units: pump in MW, chips in MW
+    constraint          rule              the conflict ends at
+    return temperature  pump - chips ≤ 4  ≥ 5
+    pump as planned     pump = 5          ≤ 4
+    chips as planned    chips = 0         ≥ 1
+    possible with the least change in total: chips = 1
 
     References
     ----------
@@ -101,44 +70,163 @@ def completion(big: BigModel | Model, plan: Mapping[str, object]) -> Completion:
     solver's basis read exactly); for what stops it see `conflict`.
     """
     big = sparse(big)
-    asked = tuple((name, exact(value)) for name, value in plan.items())
+    asked = _entries(big, plan)
+    if len(asked) == big.n:
+        return _whole(big, asked)
+    program = _held(big, asked)
+    solver = Solver(program.big)
+    solver.aim([0], [0.0])
+    status = solver.run()
+    proved = _plan(program, solver) if status == "optimal" else None
+    if proved is not None:
+        return _possible(big, asked, proved)
+    if program.big.n * (program.big.n + program.big.m) <= TOLERANCES.cells:
+        return _decided(big, asked, program)
+    if status == "optimal":
+        near = [exact(value) if (near := simple(value)) is None else near for value in solver.point().tolist()]
+        return _possible(big, asked, near, "possible within solver tolerance")
+    found = conflict(program.big) if status == "infeasible" else None
+    if found is None:
+        raise SolverError(
+            f"HiGHS could not tell whether the plan is possible ({solver.status_text}); rescale rows and columns of "
+            "very different sizes.",
+            solver.status_text,
+        )
+    return _impossible(big, asked, found)
+
+
+def _held(big: BigModel, asked: Named) -> Program:
+    """The big model with a row for every asked value, which is kept exactly beside its float."""
     held = big
     for name, value in asked:
         held = with_row(held, f"{name} as planned", ([big.index(name)], [1.0]), float(value), float(value))
-    program = Program(held, (), {row: value for row, (_, value) in zip(held.rows[big.m :], asked, strict=True)})
-    solver = Solver(held)
-    solver.aim([0], [0.0])
-    status = solver.run()
-    if status == "optimal":
-        return _possible(program, solver, asked)
-    if status != "infeasible":
-        raise SolverError(f"HiGHS stopped without an answer ({solver.status_text}).", solver.status_text)
-    return Completion(asked, "impossible", conflict=conflict(held), limits=_limits(big, asked))
+    return Program(held, (), {row: value for row, (_, value) in zip(held.rows[big.m :], asked, strict=True)})
 
 
-def _possible(program: Program, solver: Solver, asked: tuple[tuple[str, Fraction], ...]) -> Completion:
-    """The completion HiGHS found, exact where its basis is one."""
-    names, statuses = program.big.variables, solver.basis()
+def _entries(big: BigModel, plan: Mapping[str, object] | Iterable[object]) -> Named:
+    """Names and values in the order of the variables."""
+    if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
+        raise ModelError(f"expected a plan as names and values or a list of values, got {plan!r}.", plan)
+    given = plan if isinstance(plan, Mapping) else _listed(big, list(plan))
+    if not given:
+        raise ModelError("expected a value for at least one variable, got an empty plan.", plan)
+    places = {big.index(name): value for name, value in given.items()}
+    return tuple((big.variables[place], _number(places[place])) for place in sorted(places))
+
+
+def _listed(big: BigModel, values: list[object]) -> dict[str, object]:
+    if len(values) != big.n:
+        raise ModelError(f"expected {big.n} values, one a variable of the big model, got {len(values)}.", values)
+    return dict(zip(big.variables, values, strict=True))
+
+
+def _number(value: object) -> Fraction:
+    return exact(value.item() if isinstance(value, np.generic) else value)
+
+
+def _plan(program: Program, solver: Solver) -> list[Fraction] | None:
+    """The plan of HiGHS's basis, if it keeps everything exactly."""
+    statuses = solver.basis()
     try:
         plan = None if statuses is None else Basis(program, statuses).point()
     except ValueError:
-        plan = None
-    if plan is not None and holds(program, plan):
-        return Completion(asked, "possible", tuple((name, plan.at(j)) for j, name in enumerate(names)))
-    values = [simple(value) or exact(value) for value in solver.point().tolist()]
-    return Completion(asked, "possible within solver tolerance", tuple(zip(names, values, strict=True)))
+        return None
+    if plan is None or not holds(program, plan):
+        return None
+    return [plan.at(j) for j in range(program.big.n)]
 
 
-def _limits(
-    big: BigModel, asked: tuple[tuple[str, Fraction], ...]
-) -> tuple[tuple[str, Fraction | None, Fraction | None], ...]:
+def _decided(big: BigModel, asked: Named, program: Program) -> Completion:
+    """The answer of the exact simplex method, where HiGHS's does not hold exactly and the model is small."""
+    model = program.big.to_model().without_objective()
+    for name, value in program.held.items():
+        model = model.with_rhs(name, value)
+    found = optimum(model)
+    if found.point is not None:
+        return _possible(big, asked, found.point)
+    assert found.infeasibility is not None
+    return _impossible(big, asked, irreducible(program.big, found.infeasibility))
+
+
+def _possible(big: BigModel, asked: Named, values: Sequence[Fraction], verdict: Verdict = "possible") -> Completion:
+    """A whole plan: first what was asked, then what shares a row with it."""
+    mine = [big.index(name) for name, _ in asked]
+    matrix = big.csr()
+    rows = matrix.tocsc()[:, mine].tocoo().row
+    near = matrix[np.unique(rows)].indices.tolist()
+    order = list(dict.fromkeys([*mine, *sorted(near)]))
+    beside = len(order)
+    order = list(dict.fromkeys([*order, *range(big.n)]))
+    return Completion(asked, verdict, tuple((big.variables[j], values[j]) for j in order), beside)
+
+
+def _impossible(big: BigModel, asked: Named, found: Model) -> Completion:
+    """The conflict, and what would have to change."""
+    if all(_is_own(big, row.name) for row in found.constraints):
+        return Completion(asked, "impossible", conflict=found, relaxed=ends(found), notes=(NO_PLAN,))
+    near, is_exact = nearby(big, asked)
+    return Completion(
+        asked,
+        "impossible",
+        conflict=found,
+        relaxed=ends(found),
+        nearest=near,
+        is_nearest_proved=is_exact,
+        limits=_limits(big, asked),
+    )
+
+
+def _is_own(big: BigModel, name: str) -> bool:
+    """Whether a constraint is one of the big model, not of the plan."""
+    try:
+        locate(big, name)
+    except UnknownName:
+        return False
+    return True
+
+
+def _limits(big: BigModel, asked: Named) -> tuple[Range, ...]:
     """The range of a single variable; () where several were asked, or there is no plan at all."""
     if len(asked) != 1:
         return ()
-    found = shadow(big, (asked[0][0],))
-    ends = found.region.ranges.get(asked[0][0])
-    return () if ends is None else ((asked[0][0], *ends),)
+    name = asked[0][0]
+    found = shadow(big, (name,)).region.ranges.get(name)
+    return () if found is None else ((name, *found),)
 
 
-def _end(value: Fraction | None) -> str:
-    return "no limit" if value is None else short(value)
+def _whole(big: BigModel, asked: Named) -> Completion:
+    """Every constraint at a whole plan, in fractions."""
+    values = {j: value for j, (_, value) in enumerate(asked)}
+    broken = sorted(
+        (one for one in settled_by(Program(big, ()), values) if one.verdict != "satisfied"), key=lambda one: one.slack
+    )
+    if not broken:
+        return Completion(asked, "possible", asked, len(asked), is_whole=True)
+    close = all(one.verdict == "violated within solver tolerance" for one in broken)
+    near, is_exact = nearby(big, asked)
+    return Completion(
+        asked,
+        "possible within solver tolerance" if close else "impossible",
+        conflict=_broken(big, [one.constraint for one in broken[:SHOWN]]),
+        violated=tuple((one.constraint, -one.slack) for one in broken),
+        nearest=near,
+        is_nearest_proved=is_exact,
+        is_whole=True,
+        notes=() if near else (NO_PLAN,),
+    )
+
+
+def _broken(big: BigModel, names: Sequence[str]) -> Model:
+    """These constraints alone, in the variables they touch."""
+    parts = []
+    for name in names:
+        what, place, _ = locate(big, name)
+        parts.append((name, cut(big, [place], []) if what else cut(big, [], [place])))
+    used = tuple(dict.fromkeys(variable for _, part in parts for variable in part.variables))
+    rows = []
+    for name, part in parts:
+        row = part.constraint(name)
+        given = dict(zip(part.variables, row.coefficients, strict=True))
+        rows.append(replace(row, coefficients=tuple(given.get(variable, Fraction(0)) for variable in used)))
+    units = tuple(pair for pair in big.units if pair[0] in {*used, *names})
+    return Model(used, tuple(rows), units=units, name=f"what a plan breaks in {big.name or 'the big model'}")

@@ -69,7 +69,12 @@ def conflict(big: BigModel | Model) -> Model | None:
     proof = _proof(big, rows)
     if proof is None:
         return None
-    return _named(big, proof.model, _irreducible(proof))
+    return irreducible(big, proof)
+
+
+def irreducible(big: BigModel, proof: Farkas) -> Model:
+    """The constraints that an exact proof needs, as a small model in the variables they touch."""
+    return _named(big, proof.model, _filtered(proof))
 
 
 def _has_plan(big: BigModel) -> bool:
@@ -140,7 +145,7 @@ def part_of(big: BigModel, rows: Iterable[int]) -> BigModel:
     )
 
 
-def _irreducible(proof: Farkas) -> list[str]:
+def _filtered(proof: Farkas) -> list[str]:
     """Deletion filtering, exactly: constraint by constraint is left out as long as the rest stays empty."""
     kept, tried = proof, set[str]()
     while untried := [name for name in kept.multipliers if name not in tried]:

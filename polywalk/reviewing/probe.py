@@ -6,12 +6,14 @@ from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from math import sqrt
-from typing import Literal
+from typing import Literal, overload
 
+from polywalk.bigmodel import BigModel
 from polywalk.errors import ModelError
 from polywalk.exact import Row, dot, exact, rounded
 from polywalk.linear import Farkas, farkas, optimum
 from polywalk.model import Model
+from polywalk.narrowing import Completion, completion
 from polywalk.reviewing.nearest import Nearest, nearest, nearest_max
 from polywalk.reviewing.tolerances import TOLERANCES, within
 from polywalk.table import Shown, Table, cell
@@ -123,36 +125,57 @@ class Probe(Shown):
         )
 
 
-def probe(model: Model, plan: Mapping[str, object] | Iterable[object]) -> Probe:
+@overload
+def probe(model: Model, plan: Mapping[str, object] | Iterable[object]) -> Probe: ...
+
+
+@overload
+def probe(model: BigModel, plan: Mapping[str, object] | Iterable[object]) -> Completion: ...
+
+
+def probe(model: Model | BigModel, plan: Mapping[str, object] | Iterable[object]) -> Probe | Completion:
     """Whether a plan is allowed, and if not, what is in the way and which allowed plan is nearest.
 
     Parameters
     ----------
-    model : Model
+    model : Model or BigModel
         Integer marks are not applied.
     plan : mapping of str to number, or (n,) sequence of numbers
         A mapping may leave variables open.
 
     Returns
     -------
-    Probe
+    Probe or Completion
+        Of a big model the answer of `completion`: a whole plan with these values; or a small conflict of the model's
+        constraints with the plan, proved exactly, with the right-hand sides at which it ends, and the nearest values
+        that are possible. Both tell ``allowed``, ``verdict``, ``violated`` and ``partial``.
 
     Raises
     ------
     UnknownName, ModelError, NumberError
         A name that is not there, an entry that is no number, a sequence of the wrong length, no entry at all.
+    SolverError
+        Of a big model: HiGHS is missing, or stopped without an answer.
 
     Examples
     --------
     >>> import polywalk as pw
     >>> pw.probe(pw.scenarios.harbour_row(), {"pump": 5, "chips": 0}).verdict
     'outside'
+    >>> print(pw.probe(pw.scenarios.harbour_day(), {"pump[7]": "4.5"}))
+    pump[7] = 4.5: impossible
+    constraint          rule               the conflict ends at
+    grid connection[7]  0.474 pump[7] ≤ 2  ≥ 2.133
+    pump[7] as planned  pump[7] = 4.5      ≤ 1000/237
+    pump[7] can be from 0 to 1000/237
 
     References
     ----------
     Kuhn & Tucker, Nonlinear programming, 1951 (the nearest plan is proved by their conditions); Goldfarb & Idnani, A
     numerically stable dual method for solving strictly convex quadratic programs, Math. Program. 27, 1983.
     """
+    if isinstance(model, BigModel):
+        return completion(model, plan)
     if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
         raise ModelError(f"expected a plan as names and values or a list of values, got {plan!r}.", plan)
     if isinstance(plan, Mapping) and not set(model.variables) <= set(plan):
