@@ -10,7 +10,7 @@ import pytest
 from crowds import KINDS, crowd
 
 from polywalk.model import Model
-from polywalk.region import Region, engine, generators, region, workingset
+from polywalk.region import Region, engine, region, sieve, workingset
 
 EACH = 40
 """Models of each kind."""
@@ -29,7 +29,7 @@ def listed(monkeypatch: pytest.MonkeyPatch) -> list[int]:
     monkeypatch.setattr(workingset, "list_generators", counted)
     monkeypatch.setattr(workingset, "WORTHWHILE", 2)
     monkeypatch.setattr(engine, "is_small", lambda rows, straight: True)
-    monkeypatch.setattr(generators, "MANY", 0)
+    monkeypatch.setattr(sieve, "MANY", 0)
     return sizes
 
 
@@ -37,7 +37,7 @@ def plain(model: Model) -> Region:
     """The region from all rows at once."""
     with pytest.MonkeyPatch.context() as patch:
         patch.setattr(workingset, "WORTHWHILE", 10**9)
-        patch.setattr(generators, "MANY", 10**9)
+        patch.setattr(sieve, "MANY", 10**9)
         return region(model)
 
 

@@ -7,19 +7,20 @@ from typing import Any
 from polywalk.budget import Budget, in_child
 from polywalk.region.effort import SMALL_WORK, is_small, work
 from polywalk.region.listing import Listed, Rows, list_rows
+from polywalk.region.sieve import Sieve
 from polywalk.region.workingset import list_needed
 
 __all__ = ["SMALL_WORK", "Listed", "Rows", "generators_of", "rows_of", "work"]
 
 
-def generators_of(rows: Rows, equal: frozenset[int], budget: Budget | None = None) -> Listed:
-    """What rows (b, a), meaning b + a.x >= 0 or = 0, generate: rows (1, point) or (0, ray), and which are lines."""
-    found = list_needed(rows, equal, is_small) if budget is None else None
+def generators_of(sieve: Sieve, equal: frozenset[int], budget: Budget | None = None) -> Listed:
+    """What its rows (b, a), b + a.x >= 0 or = 0, generate: rows (1, point) or (0, ray), and which are lines."""
+    found = list_needed(sieve, equal, is_small) if budget is None else None
     if found is not None:
         return found
-    task = f"listing the vertices of {len(rows)} constraints in {len(rows[0]) - 1} variables"
+    task = f"listing the vertices of {len(sieve.rows)} constraints in {len(sieve.rows[0]) - 1} variables"
     remedy = "fix variables, leave out constraints that never bind, or raise it: region(model, Budget(seconds=600))."
-    return _listed(in_child(list_needed, rows, equal, budget=budget or Budget(), task=task, remedy=remedy))
+    return _listed(in_child(list_needed, sieve, equal, budget=budget or Budget(), task=task, remedy=remedy))
 
 
 def rows_of(generators: Rows, lines: frozenset[int], budget: Budget | None = None) -> Listed:

@@ -11,10 +11,12 @@ Ziegler, Lectures on Polytopes, 1995, section 2.2: every face is the intersectio
 
 from __future__ import annotations
 
-from collections import Counter
 from collections.abc import Iterable, Sequence
 from functools import reduce
-from operator import and_
+from operator import and_, or_
+
+MANY = 100
+"""Generators from which it pays to look for edges along the sides of a vertex only, instead of among all others."""
 
 Pairs = Sequence[tuple[int, int]]
 
@@ -34,26 +36,27 @@ def pairs(active: Sequence[tuple[int, ...]], patterns: dict[int, int], points: i
     Two generators are joined by an edge where no third is active at all the constraints they share (Fukuda & Prodon
     1996, proposition 7); they then share at least n - 1. Two rays would only meet at infinity.
     """
-    found: list[tuple[int, int]] = []
+    sets = [sum([1 << place for place in places]) for places in active]
     everything = (1 << len(active)) - 1
+    found: list[tuple[int, int]] = []
     for start in range(points):
-        times = Counter([patterns[place] for place in active[start]])
-        later = everything >> start + 1 << start + 1
-        for other in members(_often(times, n - 1, later)):
-            shared = [pattern for pattern in times if pattern >> other & 1]
-            if reduce(and_, shared, everything).bit_count() == 2:
-                found.append((start, other))
+        mine = sets[start]
+        later: Iterable[int] = range(start + 1, len(active))
+        if len(active) > MANY:
+            later = _beside(start, [patterns[place] for place in active[start]], everything)
+        for other in later:
+            common = mine & sets[other]
+            if common.bit_count() >= n - 1:
+                shared = [patterns[place] for place in active[start] if common >> place & 1]
+                if reduce(and_, shared, everything).bit_count() == 2:
+                    found.append((start, other))
     return found
 
 
-def _often(times: dict[int, int], least: int, among: int) -> int:
-    """The bits, of those among which is asked, that at least so many of the patterns have."""
-    reached = [among, *[0] * least]
-    for pattern, count in times.items():
-        for _ in range(min(count, least)):
-            for k in range(least, 0, -1):
-                reached[k] |= reached[k - 1] & pattern
-    return reached[least]
+def _beside(start: int, here: list[int], everything: int) -> Iterable[int]:
+    """The later generators on a side that this one is on: an edge lies on one, unless two generators are all."""
+    near = reduce(or_, [pattern for pattern in here if pattern != everything])
+    return members(near >> start + 1 << start + 1)
 
 
 def facets(patterns: dict[int, int], points: int, generators: int) -> dict[int, list[int]]:

@@ -11,7 +11,8 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
-from operator import itemgetter, mul
+from math import lcm
+from operator import itemgetter
 
 from polywalk.budget import Budget
 from polywalk.exact import Row, integer_row, primitive
@@ -21,9 +22,6 @@ from polywalk.region.sieve import Sieve
 from polywalk.region.spans import echelon, reduced
 
 Whole = Sequence[int]
-
-MANY = 1_000
-"""Slacks from which the sieve is quicker than integers alone."""
 
 
 @dataclass(frozen=True)
@@ -50,7 +48,8 @@ def generators(model: Model, budget: Budget | None = None) -> Generators:
     if not kept:
         return Generators(points=(origin,), lines=_units(model.n), active=((),))
     equal = frozenset([k for k, place in enumerate(kept) if model.constraints[place].sense == "=="])
-    array, straight = generators_of([whole[place] for place in kept], equal, budget)
+    sieve = Sieve([whole[place] for place in kept])
+    array, straight = generators_of(sieve, equal, budget)
     along = echelon([tuple(array[k][1:]) for k in straight])
     bent = [reduced(row, along, 1) for k, row in enumerate(array) if k not in straight] if straight else array
     heads = [integer_row(row)[0] for row in bent]
@@ -65,22 +64,18 @@ def generators(model: Model, budget: Budget | None = None) -> Generators:
         points=tuple([place for place, head in ordered if head[0]]),
         rays=tuple([place for place, head in ordered if not head[0]]),
         lines=tuple([primitive(row) for row in along[0]]),
-        active=_active(kept, whole, [head for _, head in ordered]),
+        active=tuple([tuple([kept[k] for k in found]) for found in sieve.zeros([head for _, head in ordered])]),
     )
 
 
-def _active(kept: list[int], whole: Sequence[Whole], heads: Sequence[Whole]) -> tuple[tuple[int, ...], ...]:
-    """The places of the constraints that are zero at each (1, point) or (0, ray), all times a positive number."""
-    if len(kept) * len(heads) < MANY:
-        return tuple([tuple([k for k in kept if not sum(map(mul, whole[k], head))]) for head in heads])
-    zeros = Sieve([whole[place] for place in kept]).zeros(heads)
-    return tuple([tuple([kept[k] for k in found]) for found in zeros])
-
-
 def _whole(row: Constraint) -> list[int]:
-    """The constraint as integers (b, a) with b + a.x >= 0 inside."""
-    (b, *a), _ = integer_row((row.rhs, *row.coefficients))
-    return [-b, *a] if row.sense == ">=" else [b, *[-value for value in a]]
+    """The constraint as integers (b, a) with b + a.x >= 0 inside; mostly it is written in integers already."""
+    b, a = row.rhs, row.coefficients
+    if lcm(b.denominator, *[value.denominator for value in a]) == 1:
+        end, slopes = b.numerator, [value.numerator for value in a]
+    else:
+        (end, *slopes), _ = integer_row((b, *a))
+    return [-end, *slopes] if row.sense == ">=" else [end, *[-value for value in slopes]]
 
 
 def _units(n: int) -> tuple[Row, ...]:

@@ -17,6 +17,7 @@ from collections.abc import Set as AbstractSet
 import numpy as np
 
 from polywalk.region.listing import Floats, sketch_generators
+from polywalk.region.sieve import blocks
 
 NEAR = 1e-9
 """A slack in balanced rows that counts as broken; rows broken by less are left to the exact rounds."""
@@ -29,14 +30,14 @@ def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[
 
     Stops where floats get lost or the next round is not affordable, with what there is by then.
     """
-    balanced = _balanced(rows)
-    chosen = {*equal, *_facing(balanced)}
+    columns = _balanced(rows)
+    chosen = {*equal, *_facing(columns)}
     while affordable(chosen):
         places = sorted(chosen)
-        corners = sketch_generators(balanced[places], {k for k, place in enumerate(places) if place in equal})
+        corners = sketch_generators(columns[:, places].T, {k for k, place in enumerate(places) if place in equal})
         if corners is None or not (corners[:, 0] > NEAR).any():
             break
-        fresh = _met(balanced, corners) - chosen
+        fresh = _met(columns, corners) - chosen
         if not fresh:
             break
         chosen |= fresh
@@ -44,33 +45,35 @@ def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[
 
 
 def _balanced(rows: Floats) -> Floats:
-    """Rows and columns brought to like sizes; rows that floats cannot hold become zero, which is never broken."""
-    found = np.nan_to_num(rows, nan=0.0)
-    for _ in range(2):
-        found = found / _size(found, axis=0)
-        found = found / _size(found[:, 1:], axis=1)
-    return found
+    """One row a column, all brought to like sizes; what floats cannot hold becomes zero, which is never broken."""
+    columns: Floats = np.nan_to_num(rows.T, nan=0.0)
+    columns /= _size(columns, axis=1)
+    columns /= _size(columns[1:], axis=0)
+    return columns
 
 
-def _size(rows: Floats, axis: int) -> Floats:
-    size: Floats = np.abs(rows).max(axis=axis, keepdims=True)
-    return np.where(size > 0, size, 1.0)
+def _size(columns: Floats, axis: int) -> Floats:
+    size: Floats = np.abs(columns).max(axis=axis, keepdims=True)
+    size[size == 0] = 1.0
+    return size
 
 
-def _facing(rows: Floats) -> set[int]:
+def _facing(columns: Floats) -> set[int]:
     """The rows that look most along each axis, either way."""
-    slopes = rows[:, 1:] / np.maximum(np.linalg.norm(rows[:, 1:], axis=1, keepdims=True), NEAR)
-    return {*slopes.argmax(axis=0).tolist(), *slopes.argmin(axis=0).tolist()}
+    slopes = columns[1:] / np.sqrt((columns[1:] ** 2).sum(axis=0) + NEAR)
+    return {*slopes.argmax(axis=1).tolist(), *slopes.argmin(axis=1).tolist()}
 
 
-def _met(rows: Floats, corners: Floats) -> set[int]:
+def _met(columns: Floats, corners: Floats) -> set[int]:
     """For each corner or ray that breaks a row, a row it breaks: the first on the way from inside if that is known."""
-    slacks = corners @ rows.T
-    room = _inside(corners) @ rows.T
-    if (room > -NEAR).all():
-        slacks = slacks / np.where(room > NEAR, room, 1.0)
-    worst = slacks.argmin(axis=1)
-    return set(worst[slacks[np.arange(len(worst)), worst] < -NEAR].tolist())
+    room = _inside(corners) @ columns
+    scale = 1 / np.where(room > NEAR, room, 1.0) if (room > -NEAR).all() else np.ones(len(room))
+    found: set[int] = set()
+    for part in blocks(len(corners), len(room)):
+        slacks = corners[part] @ columns * scale
+        worst = slacks.argmin(axis=1)
+        found.update(worst[slacks[np.arange(len(worst)), worst] < -NEAR].tolist())
+    return found
 
 
 def _inside(corners: Floats) -> Floats:

@@ -32,21 +32,21 @@ ROUNDS = 12
 Small = Callable[[Rows, frozenset[int]], bool]
 
 
-def list_needed(rows: Rows, equal: frozenset[int], small: Small | None = None) -> Listed | None:
+def list_needed(sieve: Sieve, equal: frozenset[int], small: Small | None = None) -> Listed | None:
     """The generators of all rows, from as few as prove enough; None where listing them is not ``small``.
 
     Equal to what `list_generators` says of all rows, but for how points and rays of a region with a line stand along
     it, and for the apex of a cone at the origin, which is among them only where a working set was enough.
     """
-    found = None if len(rows) < WORTHWHILE else _by_rounds(rows, equal, small)
-    if found is None and (small is None or small(rows, equal)):
-        return list_generators(rows, equal)
+    found = None if len(sieve.rows) < WORTHWHILE else _by_rounds(sieve, equal, small)
+    if found is None and (small is None or small(sieve.rows, equal)):
+        return list_generators(sieve.rows, equal)
     return found
 
 
-def _by_rounds(rows: Rows, equal: frozenset[int], small: Small | None) -> Listed | None:
+def _by_rounds(sieve: Sieve, equal: frozenset[int], small: Small | None) -> Listed | None:
     """The generators of all rows from a working set; None where it grows too large."""
-    n, sieve = len(rows[0]) - 1, Sieve(rows)
+    rows, n = sieve.rows, len(sieve.rows[0]) - 1
     left = work(n, len(rows)) // SHARE
 
     def affordable(chosen: AbstractSet[int]) -> bool:
