@@ -22,6 +22,12 @@ from polywalk.region.sieve import blocks
 NEAR = 1e-9
 """A slack in balanced rows that counts as broken; rows broken by less are left to the exact rounds."""
 
+TOUCHES, NOISE = 1e-7, 1e-14
+"""A corner whose slack is so small a part of the row's largest counts as touched; rounding may leave the second."""
+
+FAR = 0.1
+"""A region smaller than this in balanced variables is looked at from closer by, lest floats take it for a point."""
+
 Affordable = Callable[[AbstractSet[int]], bool]
 
 
@@ -39,8 +45,9 @@ def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[
             break
         fresh = _met(columns, corners) - chosen
         if not fresh:
-            break
+            return chosen - _needless(columns, chosen - equal, corners)
         chosen |= fresh
+        columns = _closer(columns, corners)
     return chosen
 
 
@@ -56,6 +63,16 @@ def _size(columns: Floats, axis: int) -> Floats:
     size: Floats = np.abs(columns).max(axis=axis, keepdims=True)
     size[size == 0] = 1.0
     return size
+
+
+def _closer(columns: Floats, corners: Floats) -> Floats:
+    """The same rows in variables in which the corners lie round the origin, at about 1, if they are close together."""
+    points = corners[corners[:, 0] > NEAR, 1:]
+    size, middle = np.ptp(points, axis=0).max(), points.mean(axis=0)
+    if not 0 < size < FAR:
+        return columns
+    moved = np.vstack([(columns[0] + middle @ columns[1:]) / size, columns[1:]])
+    return moved / _size(moved, axis=0)
 
 
 def _facing(columns: Floats) -> set[int]:
@@ -74,6 +91,17 @@ def _met(columns: Floats, corners: Floats) -> set[int]:
         worst = slacks.argmin(axis=1)
         found.update(worst[slacks[np.arange(len(worst)), worst] < -NEAR].tolist())
     return found
+
+
+def _needless(columns: Floats, chosen: AbstractSet[int], corners: Floats) -> set[int]:
+    """The chosen rows that touch no corner which another one does not touch as well; of two alike the later."""
+    places = sorted(chosen)
+    slacks = np.abs(corners @ columns[:, places])
+    touched = slacks <= TOUCHES * slacks.max(axis=0) + NOISE
+    sides = ~touched.all(axis=0)
+    alone = touched.T.astype(float) @ ~touched
+    within = (alone == 0) & sides & ((alone.T > 0) | np.tri(len(places), k=-1, dtype=bool))
+    return {place for place, is_within in zip(places, (within.any(axis=1) & sides).tolist(), strict=True) if is_within}
 
 
 def _inside(corners: Floats) -> Floats:
