@@ -53,6 +53,8 @@ def assembled(
     named = model.name or "Feasible region"
     if looked.projected:
         named = f"{named}: projection of {model.n} variables onto {', '.join(looked.axes)}"
+    planes = [item.points for layer in layers for item in layer.polygons if item.role == "conflict"]
+    eye = best_eye(drawn, away, frame.scale, planes) if drawn else USUAL
     aim = model.objective.text(model.variables) if model.objective else "no objective"
     return Scene(
         axes=tuple(Axis(*parts) for parts in zip(titles_of(model, looked.axes), frame.low, frame.high, strict=True)),
@@ -64,6 +66,6 @@ def assembled(
         marks=tuple(item for layer in layers for item in layer.marks),
         labels=tuple(item for layer in layers for item in layer.labels),
         key=evidence.part(looked) + rows,
-        camera=named_eye(looked.view.camera, looked.axes) or (best_eye(drawn, away, frame.scale) if drawn else USUAL),
+        camera=named_eye(looked.view.camera, looked.axes) or eye,
         paper=frame.paper,
     )

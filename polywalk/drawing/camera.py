@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from itertools import combinations
+from itertools import combinations, pairwise
 from math import cos, hypot, radians, sin
 
 from polywalk.drawing.scene import Point
@@ -92,7 +92,7 @@ class Camera:
         return tuple(inner(self.scaled(point), way) for way in self.frame)
 
 
-def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
+def best_eye(shape: Shape, away: Sequence[Point], scale: Point, planes: Sequence[tuple[Point, ...]] = ()) -> Eye:
     """The direction from which the region looks large, no corner hides another, and open sides turn away.
 
     Parameters
@@ -103,6 +103,8 @@ def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
         Directions in which the region has no end; seen from there it would look closed.
     scale : (3,) tuple of float
         Drawn length of a unit along each axis.
+    planes : sequence of tuple of (3,) tuple of float
+        Polygons that should not be seen from their edge.
     """
     edges = shape.edges + shape.open_edges
     if len(scale) < 3 or len(shape.corners) > MOST_CORNERS or not edges:
@@ -112,9 +114,18 @@ def best_eye(shape: Shape, away: Sequence[Point], scale: Point) -> Eye:
         camera = Camera(eye(*way), scale)
         lit = all(inner(camera.scaled(ray), camera.toward) <= 0 for ray in away)
         usual = 1.0 if -90 < way[0] < 0 else FOREIGN
-        return round(_gap(shape, camera) * _area(shape, camera) * (1.0 if lit else 0.4) * usual, 6)
+        open_planes = min([1.0, *(_openness(plane, camera) for plane in planes)])
+        return round(_gap(shape, camera) * _area(shape, camera) * (1.0 if lit else 0.4) * usual * open_planes, 6)
 
     return eye(*max(((turn, tilt) for turn in TURNS for tilt in TILTS), key=quality))
+
+
+def _openness(plane: tuple[Point, ...], camera: Camera) -> float:
+    """From 0 for a plane seen from its edge to 1 for one that faces the eye."""
+    first, *rest = (camera.scaled(point) for point in plane)
+    arms = [tuple(x - y for x, y in zip(point, first, strict=True)) for point in rest]
+    normal = max((cross(a, b) for a, b in pairwise(arms)), key=lambda vector: inner(vector, vector))
+    return abs(inner(normal, camera.frame[2])) / (hypot(*normal) or 1.0)
 
 
 def _gap(shape: Shape, camera: Camera) -> float:

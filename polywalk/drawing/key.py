@@ -16,17 +16,25 @@ from polywalk.walks import Walk
 MOST_VERTICES = 16
 """Past this many vertices the key lists only optimal and degenerate ones, and says so."""
 
+VERTICES = "Vertices, with the constraints active there"
+"""Heading of the list of vertices."""
+
+MOST_NAMES = 110
+"""Past so many characters of names at one vertex, letters stand for them."""
+
 MOST_STOPS = 24
 """Past this many stops the key shortens a path."""
 
 
 def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None) -> tuple[KeyPart, ...]:
-    """All parts of the key that have rows."""
+    """All parts of the key that have rows; where names would fill the page, vertices are told by letters."""
+    brief = max((len(", ".join(vertex.active)) for vertex in subject.seen.vertices), default=0) > MOST_NAMES
+    shown = subject.letters if brief else tags
     parts = (
         KeyPart("What the marks say", _marks(subject, found)),
         KeyPart("Walks", _walks(subject)),
-        KeyPart("Vertices, with the constraints active there", _vertices(subject)),
-        KeyPart("Constraints", _constraints(subject, tags, absent, found)),
+        KeyPart(f"{VERTICES}{', by letter' if brief else ''}", _vertices(subject, subject.letters if brief else {})),
+        KeyPart("Constraints", _constraints(subject, shown, absent, found, faces=tags)),
     )
     return tuple(part for part in parts if part.rows)
 
@@ -128,7 +136,8 @@ def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
     return KeyRow("walk", f"{walk_text(walk)}: {' → '.join(shown)}{onward}", index)
 
 
-def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
+def _vertices(subject: Subject, letters: dict[str, str]) -> tuple[KeyRow, ...]:
+    """Point, objective and active constraints of each vertex; with letters for these where some are given."""
     seen = subject.seen
     listed = list(range(len(seen.vertices)))
     if len(listed) > MOST_VERTICES:
@@ -137,9 +146,8 @@ def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
     for k in listed:
         vertex = seen.vertices[k]
         value = f"  objective {short(vertex.objective)}" if vertex.objective is not None else ""
-        rows.append(
-            KeyRow("point", f"{coordinates(vertex.point)}{value}: {', '.join(vertex.active)}", tag=vertex_name(k))
-        )
+        names = ", ".join(letters.get(name, name) for name in vertex.active)
+        rows.append(KeyRow("point", f"{coordinates(vertex.point)}{value}: {names}", tag=vertex_name(k)))
     left = len(seen.vertices) - len(listed)
     if left:
         rows.append(KeyRow("point", f"and {left} more vertices", tag=""))
@@ -147,7 +155,7 @@ def _vertices(subject: Subject) -> tuple[KeyRow, ...]:
 
 
 def _constraints(
-    subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None
+    subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None, faces: dict[str, str]
 ) -> tuple[KeyRow, ...]:
     rows, model = [], subject.seen.model
     flat = set(subject.seen.equalities)
@@ -159,7 +167,7 @@ def _constraints(
             note = "   (active everywhere)"
         elif row.name in absent:
             note = "   (outside this picture)"
-        elif row.name not in tags and len(model.variables) == 3:
+        elif row.name not in faces and len(model.variables) == 3:
             note = "   (makes no face)"
         text = f"{row.name}: {row.text(model.variables)}{note}"
         role = "conflict line" if found is not None and row.name in found.names else "constraint"

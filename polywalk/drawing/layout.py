@@ -6,13 +6,13 @@ from itertools import product
 from typing import Any
 
 from polywalk.drawing.camera import Camera
+from polywalk.drawing.notes import plane_notes, space_notes
 from polywalk.drawing.scene import Scene
 from polywalk.drawing.theme import FONT, Theme
-from polywalk.drawing.tiles import BOLD
-from polywalk.drawing.traces import html
+from polywalk.drawing.tracing import html
 
 HEIGHT = 580
-ROOM = (2.5, 1.75)
+ROOM = (2.25, 1.75)
 """Width and height, in plotly's units, that a parallel projection shows of a figure this high."""
 
 
@@ -36,34 +36,8 @@ def layout(drawn: Scene, theme: Theme) -> dict[str, Any]:
     return found | (_space(drawn, theme) if drawn.solid else _plane(drawn, theme))
 
 
-def _annotations(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
-    """In the plane, names are annotations: they can stand along their line."""
-    found = []
-    for label in drawn.labels:
-        if drawn.solid or label.role == "step":
-            continue
-        style = theme.style(label.role, label.index)
-        font = {"size": style.size, "color": style.colour, "family": FONT}
-        text = f"<b>{html(label.text)}</b>" if label.role in BOLD | {"part"} else html(label.text)
-        note: dict[str, Any] = {
-            "x": label.point[0],
-            "y": label.point[1],
-            "text": text,
-            "showarrow": False,
-            "font": font,
-        }
-        note |= {"textangle": -label.angle, "xanchor": "center", "yanchor": "middle", "borderpad": 1}
-        if label.target or label.role in {"target", "part", "tag"}:
-            note |= {"bgcolor": theme.paper, "bordercolor": style.colour, "borderwidth": 1}
-        if label.target:
-            note |= {"x": label.target[0], "y": label.target[1], "showarrow": True, "arrowhead": 0, "arrowwidth": 1}
-            note |= {"ax": label.point[0], "ay": label.point[1], "axref": "x", "ayref": "y"}
-        found.append(note)
-    return found
-
-
 def _plane(drawn: Scene, theme: Theme) -> dict[str, Any]:
-    found: dict[str, Any] = {"annotations": _annotations(drawn, theme), "hovermode": "closest", "dragmode": "pan"}
+    found: dict[str, Any] = {"annotations": plane_notes(drawn, theme), "hovermode": "closest", "dragmode": "pan"}
     for name, axis in zip(("xaxis", "yaxis"), drawn.axes, strict=True):
         look = {"range": [axis.low, axis.high], "gridcolor": theme.grid, "zeroline": False, "tickcolor": theme.quiet}
         found[name] = look | {"title": {"text": html(axis.title)}, "visible": bool(axis.title), "showgrid": False}
@@ -95,9 +69,11 @@ def _space(drawn: Scene, theme: Theme) -> dict[str, Any]:
         "aspectratio": {name: length / size for name, length in zip("xyz", drawn_length, strict=True)},
         "camera": {"eye": eye, "up": {"x": 0, "y": 0, "z": 1}, "projection": {"type": "orthographic"}},
         "dragmode": "turntable",
+        "annotations": space_notes(drawn, theme),
     }
     for name, axis in zip("xyz", drawn.axes, strict=True):
         look = {"range": [axis.low, axis.high], "showbackground": False, "gridcolor": theme.grid, "color": theme.text}
         look |= {"zeroline": False, "showspikes": False, "linecolor": theme.quiet, "nticks": 6}
+        look |= {"exponentformat": "none"}
         space[f"{name}axis"] = look | {"title": {"text": html(axis.title)}}
     return {"scene": space}

@@ -9,6 +9,7 @@ from math import floor, hypot, log10
 from polywalk.drawing.camera import Camera
 from polywalk.drawing.letters import clipped
 from polywalk.drawing.placing import upright
+from polywalk.drawing.scales import power_of, stated, written
 from polywalk.drawing.scene import Label, Line, Point, Scene, Spot
 from polywalk.drawing.tiles import USUAL, halves
 
@@ -84,17 +85,17 @@ def frame(scene: Scene, on: Paper) -> tuple[list[Line], list[Label]]:
         if length < SHORTEST:
             continue
         lines.append(Line(((on.at(start), on.at(end)),), "axis"))
-        out = _outward(on.at(start), on.at(end), middle)
+        out, power = _outward(on.at(start), on.at(end), middle), power_of(axis.low, axis.high)
         for value in ticks(axis.low, axis.high, max(1, min(6, int(length / APART)))):
             point = tuple(value if j == k else x for j, x in enumerate(start))
             foot = on.at(point)
-            text = f"{value:.6g}".replace("-", "−")
+            text = written(value, power)
             labels.append(Label(text, foot, "tick", spots=(_tick(foot, out, text),)))
             lines.append(Line(((foot, (foot[0] + 4 * out[0], foot[1] + 4 * out[1])),), "axis"))
             if k < 2:
                 other = tuple(low[j] + high[j] - x if j == 1 - k else x for j, x in enumerate(point))
                 lines.append(Line(((foot, on.at(other)),), "grid"))
-        labels.append(_title(axis.title, on.at(start), on.at(end), out, scene.paper))
+        labels.append(_title(stated(axis.title, power), on.at(start), on.at(end), out, scene.paper))
     return lines, labels
 
 

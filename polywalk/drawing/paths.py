@@ -83,7 +83,10 @@ def _lines(frame: Frame, index: int, legs: list[Leg]) -> list[Line]:
             frame.sheet.paths.append((frame.sheet.pixel(start), frame.sheet.pixel(end)))
     name = walk_text(frame.subject.view.walks[index])
     parts = parts or {"walk": []}  # a walk that never moves still has its place in the legend
-    return [Line(tuple(found), role, index, name, arrow="end") for role, found in parts.items()]
+    named = "walk" if "walk" in parts else next(iter(parts))  # one entry of the legend a walk
+    return [
+        Line(tuple(found), role, index, name if role == named else "", arrow="end") for role, found in parts.items()
+    ]
 
 
 def _numbers(frame: Frame, index: int, legs: list[Leg], earlier: Set[tuple[int, Point, Point]]) -> list[Label]:
@@ -95,7 +98,8 @@ def _numbers(frame: Frame, index: int, legs: list[Leg], earlier: Set[tuple[int, 
         start, end = _shifted(frame, index, leg)
         if (leg.pivot.number, leg.start, leg.end) in earlier and _is_short(frame, leg):
             continue
-        spot = tuple((a + b) / 2 for a, b in zip(start, end, strict=True))
+        share = (index + 1) / (frame.count + 1)  # walks on one edge have their numbers one after the other
+        spot = tuple(a + share * (b - a) for a, b in zip(start, end, strict=True))
         spots: tuple[Spot, ...] = ()
         if frame.sheet is not None:
             spots = tuple(number_spots(frame.sheet.pixel(start), frame.sheet.pixel(end), index, frame.count))

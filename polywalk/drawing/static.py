@@ -6,12 +6,14 @@ import os
 import re
 import warnings
 from dataclasses import dataclass
+from functools import partial
 from pathlib import Path
 from typing import Any
 
 from polywalk.drawing.compose import Source, scene
 from polywalk.drawing.formats import FORMATS, MARGIN, Size
 from polywalk.drawing.projection import laid_flat
+from polywalk.drawing.scales import power_of, stated, written
 from polywalk.drawing.scene import Scene
 from polywalk.drawing.static_key import paint_key, planned
 from polywalk.drawing.strokes import label, line, mark, points, polygon
@@ -172,6 +174,10 @@ def _paint(axes: Any, drawn: Scene, theme: Theme) -> None:
         label(axes, text, theme)
 
 
+def _number(power: int, value: float, _: int | None) -> str:
+    return written(value, power)
+
+
 def _ticks(axes: Any, drawn: Scene, theme: Theme) -> None:
     from matplotlib.ticker import MultipleLocator
 
@@ -181,8 +187,9 @@ def _ticks(axes: Any, drawn: Scene, theme: Theme) -> None:
     for axis, data in ((axes.xaxis, drawn.axes[0]), (axes.yaxis, drawn.axes[1])):
         if not data.title:
             axis.set_visible(False)
-        axis.set_label_text(data.title, fontsize=points(12), color=theme.text, parse_math=False)
-        axis.get_major_formatter().set_useOffset(False)
+        power = power_of(data.low, data.high)
+        axis.set_label_text(stated(data.title, power), fontsize=points(12), color=theme.text, parse_math=False)
+        axis.set_major_formatter(partial(_number, power))
         if data.spacing:
             axis.set_major_locator(MultipleLocator(data.spacing))
     if drawn.solid or not (drawn.axes[0].title or drawn.axes[1].title):

@@ -10,8 +10,8 @@ from polywalk.drawing.theme import THEMES
 from polywalk.sheets.markup import Html, element, joined
 from polywalk.sheets.samples import sample
 
-ELSEWHERE = {"Vertices, with the constraints active there", "Vertices lost and gained"}
-"""Parts of a picture's key that the sheet has as tables."""
+ELSEWHERE = "Vertices"
+"""How the headings start of parts of a picture's key that the sheet has as tables."""
 
 MEANINGS = {
     "region": "what the model allows: every point of the pale area is a plan (the feasible region)",
@@ -59,7 +59,7 @@ UNSAID |= {"evidence name", "culprit"}
 def legend(drawn: Scene) -> Html:
     """The legend of one picture."""
     shown = laid_flat(drawn) if drawn.solid else drawn  # which says what found no room on paper
-    parts = [(part.heading, part.rows) for part in shown.key if part.heading not in ELSEWHERE]
+    parts = [(part.heading, part.rows) for part in shown.key if not part.heading.startswith(ELSEWHERE)]
     known = {row.role for _, rows in parts for row in rows}
     lists = [_list("Also drawn", _unsaid(drawn, known))]
     for heading, rows in parts:

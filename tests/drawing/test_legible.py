@@ -5,8 +5,10 @@ from itertools import combinations
 import pytest
 
 import polywalk as pw
-from polywalk.drawing import Scene, View, scene
+from polywalk.drawing import Scene, View, figure, scene
+from polywalk.drawing.camera import Camera
 from polywalk.drawing.projection import laid_flat
+from polywalk.drawing.scales import written
 from polywalk.drawing.tags import letters
 from polywalk.drawing.tiles import Tile, halves
 from polywalk.scenarios import VARIANTS, circling, harbour_row
@@ -132,3 +134,64 @@ def test_every_letter_in_the_drawing_is_in_the_key(variant: str, size: str) -> N
             assert set(item.text.split(" ")[0].split(" & ")) <= told, item.text
     for one, other in combinations(tiles(drawn), 2):
         assert not one[2].meets(other[2]), (one[1], other[1])
+
+
+def test_large_and_small_numbers_stand_in_powers_that_the_title_states() -> None:
+    for size, title in ((4_000_000, "x, numbers × 10⁶"), ("0.000004", "x, numbers × 10⁻⁶"), (4, "x")):
+        model = pw.from_algebra(
+            maximize="x", constraints={"top": f"x + y <= {size}"}, bounds=dict.fromkeys("xy", (0, None))
+        )
+        svg = pw.picture(model, size="bare").data.decode()
+        assert f">{title}</text>" in svg
+        assert "1e" not in "".join(part.split("<")[0] for part in svg.split(">"))
+    names = [written(value, 6) for value in (1_000_000.5, 1_000_001, -2_500_000, -0.0)]
+    assert names == ["1.0000005", "1.000001", "−2.5", "0"]
+
+
+def test_vertices_with_long_lists_of_names_are_told_by_letters_that_the_key_explains() -> None:
+    model = pw.from_algebra(
+        maximize="x + y", constraints={f"limit of line {k}": f"{k}*x + {13 - k}*y <= 100" for k in range(1, 13)}
+    )
+    parts = {part.heading: part.rows for part in scene(model).key}
+    (corner,) = parts["Vertices, with the constraints active there, by letter"]
+    assert corner.text.endswith(": a, b, c, d, e, f, g, h, i, j, k, l")
+    assert [row.tag for row in parts["Constraints"]] == list("abcdefghijkl")
+
+
+def test_the_border_that_nothing_reaches_is_not_seen_from_its_edge() -> None:
+    drawn = scene(harbour_row("infeasible"))
+    camera = Camera(drawn.camera, drawn.scale)
+    for border in (item for item in drawn.polygons if item.role == "conflict"):
+        seen = [camera.see(point)[:2] for point in border.points]
+        wide = max(max(values) - min(values) for values in zip(*seen, strict=True))
+        area = abs(sum(a[0] * b[1] - a[1] * b[0] for a, b in zip(seen, seen[1:] + seen[:1], strict=True))) / 2
+        assert area > 0.2 * wide * wide
+
+
+@pytest.mark.parametrize("model", [circling(), *(harbour_row(variant) for variant in VARIANTS)])
+def test_the_legend_names_each_thing_once_and_every_walk(model: pw.Model) -> None:
+    view = View() if pw.region(model).status == "empty" else walked(model)
+    data = figure(model, view)["data"]
+    entries = [trace["name"] for trace in data if trace.get("showlegend", True)]
+    assert len(set(entries)) == len(entries)
+    assert all(any(walk.rule in entry for entry in entries) for walk in view.walks)
+    assert all(len(trace["x"]) for trace in data if trace.get("showlegend", True))  # plotly hides what has no point
+    shown = {trace["name"] for trace in data if trace.get("showlegend", True)}
+    letters_drawn = [text for trace in data if trace.get("mode") == "text" for text in trace["text"] if "<b>" in text]
+    for letter in (text.removeprefix("<b>").removesuffix("</b>") for text in letters_drawn):
+        assert letter.isdigit() or any(entry.startswith(f"{letter}  ") for entry in shown), letter
+
+
+@pytest.mark.parametrize("model", [circling(), *(harbour_row(variant) for variant in VARIANTS)])
+def test_words_in_space_stand_in_front_of_the_body_and_inside_the_axes(model: pw.Model) -> None:
+    view = View() if pw.region(model).status == "empty" else walked(model)
+    drawn, layout = scene(model, view), figure(model, view)["layout"]
+    if not drawn.solid:
+        return
+    notes = layout["scene"]["annotations"]
+    words = [label.text for label in drawn.labels if label.role in {"stay", "note", "culprit", "name"}]
+    assert words
+    assert all(any(word in note["text"] for note in notes) for word in words)
+    for note in notes:
+        assert all(axis.low <= note[name] <= axis.high for name, axis in zip("xyz", drawn.axes, strict=True))
+        assert note["bgcolor"] == layout["paper_bgcolor"]
