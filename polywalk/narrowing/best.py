@@ -43,8 +43,14 @@ class Best:
     basis: Statuses | None = None
 
 
-def best(big: BigModel) -> Best:
+def best(big: BigModel, plan: bool = True) -> Best:
     """The optimum, exact where its basis proves it or the model is small.
+
+    Parameters
+    ----------
+    big : BigModel
+    plan : bool, optional
+        Whether the plan is wanted, where it is HiGHS's: to read thousands of floats as fractions takes a while.
 
     Raises
     ------
@@ -68,7 +74,7 @@ def best(big: BigModel) -> Best:
     if found is not None or status != "optimal":
         return found or Best("unbounded" if status == "unbounded" else "infeasible")
     value = snapped(sign * solver.value + big.constant)
-    point = tuple(snapped(value) for value in solver.point().tolist())
+    point = tuple(snapped(value) for value in solver.point().tolist()) if plan else None
     return Best("optimal", value, point, basis=solver.basis())
 
 

@@ -15,6 +15,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from fractions import Fraction
 from math import gcd
+from operator import mul
 
 from polywalk.exact import integer_row
 from polywalk.region.spans import echelon
@@ -55,12 +56,12 @@ class Hull:
         self.generators.append(generator)
         values = {facet: product(facet, generator) for facet in self.facets}
         beyond = [facet for facet, value in values.items() if value < 0]
-        inside = [facet for facet, value in values.items() if value > 0]
+        inside = [(facet, self.facets[facet]) for facet, value in values.items() if value > 0]
         made = {
-            _between(low, values[low], high, values[high]): (self.facets[low] & self.facets[high]) | bit
-            for low in beyond
-            for high in inside
-            if self._meet(low, high)
+            _between(low, values[low], high, values[high]): (mask & other) | bit
+            for low, mask in ((facet, self.facets[facet]) for facet in beyond)
+            for high, other in inside
+            if (mask & other).bit_count() >= self.size - 2 and self._meet(low, high)
         }
         for facet in beyond:
             del self.facets[facet]
@@ -71,10 +72,8 @@ class Hull:
         return list(made)
 
     def _meet(self, low: Integers, high: Integers) -> bool:
-        """Whether two facets share a ridge: no third one has all the generators they share."""
+        """Whether two facets that share enough generators share a ridge: no third one has all of these."""
         shared = self.facets[low] & self.facets[high]
-        if shared.bit_count() < self.size - 2:
-            return False
         return not any(
             mask & shared == shared for facet, mask in self.facets.items() if facet is not low and facet is not high
         )
@@ -87,7 +86,7 @@ def members(mask: int) -> list[int]:
 
 def product(left: Iterable[int], right: Iterable[int]) -> int:
     """The inner product of two rows of integers."""
-    return sum([a * b for a, b in zip(left, right, strict=True)])
+    return sum(map(mul, left, right))
 
 
 def whole(values: Sequence[Fraction]) -> Integers:
@@ -117,6 +116,33 @@ def orthogonal(rows: Sequence[Integers], size: int) -> list[Integers]:
             found[pivot] = -lead[free]
         made.append(whole(found))
     return made
+
+
+def plane_through(rows: Iterable[Integers], size: int) -> Integers | None:
+    """The row orthogonal to all given ones, where there is just one; its sign is not determined.
+
+    Examples
+    --------
+    >>> from polywalk.narrowing.hull import plane_through
+    >>> plane_through([(1, 2, 0), (1, 0, 2), (1, 1, 1)], 3)
+    (2, -1, -1)
+    >>> plane_through([(1, 2, 0), (1, 0, 2), (1, 1, 3)], 3) is None
+    True
+    """
+    left = [tuple(int(i == k) for k in range(size)) for i in range(size)]
+    for row in rows:
+        values = [product(one, row) for one in left]
+        lead = next((k for k, value in enumerate(values) if value), None)
+        if lead is None:
+            continue
+        if len(left) == 1:
+            return None
+        top, pivot = left.pop(lead), values.pop(lead)
+        left = [
+            smallest([pivot * a - value * b for a, b in zip(one, top, strict=True)])
+            for one, value in zip(left, values, strict=True)
+        ]
+    return left[0] if len(left) == 1 else None
 
 
 def _between(low: Integers, under: int, high: Integers, over: int) -> Integers:

@@ -14,9 +14,8 @@ from fractions import Fraction
 import numpy as np
 
 from polywalk.exact import Row, integer_row
-from polywalk.narrowing.hull import Integers, smallest
+from polywalk.narrowing.hull import Integers, plane_through, smallest
 from polywalk.narrowing.outline import Edge, Outline
-from polywalk.region.spans import echelon
 
 
 def merged(found: Outline) -> list[Edge]:
@@ -64,15 +63,12 @@ def _corners(on: Sequence[frozenset[int]], generators: Sequence[Integers]) -> se
 
 def _refitted(edge: Edge, corners: list[Integers], found: Outline) -> Edge:
     """The same facet through its vertices, if one plane in the columns of the hull holds them all exactly."""
-    rows = [tuple(Fraction(corner[k]) for k in found.chosen) for corner in corners]
-    basis, pivots = echelon(rows)
-    free = [k for k in range(len(found.chosen)) if k not in pivots]
-    if len(free) != 1:
+    plane = plane_through([tuple([corner[k] for k in found.chosen]) for corner in corners], len(found.chosen))
+    if plane is None:
         return edge
     row = [Fraction(0)] * (found.size + 1)
-    row[found.chosen[free[0]]] = Fraction(1)
-    for lead, pivot in zip(basis, pivots, strict=True):
-        row[found.chosen[pivot]] = -lead[free[0]]
+    for k, value in zip(found.chosen, plane, strict=True):
+        row[k] = Fraction(value)
     scale = _matching(row[1:], edge.direction)
     if scale is None:
         return edge

@@ -37,23 +37,27 @@ class Nearness:
         self.touch = touch
         self._points: Floats = np.empty((0, size + 1))
         self._facets: Floats = np.empty((0, size + 1))
+        self._widths: Floats | None = None
 
     def see(self, generator: Integers) -> None:
         """A point or ray more."""
         size = generator[0] or max(map(abs, generator))
-        self._points = np.vstack([self._points, [float(Fraction(value, size)) for value in generator]])
+        self._points = np.vstack([self._points, [value / size for value in generator]])
+        self._widths = None
 
     def hold(self, direction: Integers, limit: Fraction) -> None:
         """A facet more, direction . x <= limit."""
         size = max(map(abs, direction))
-        row = [float(limit / size), *(float(Fraction(-value, size)) for value in direction)]
+        row = [float(limit / size), *(-value / size for value in direction)]
         self._facets = np.vstack([self._facets, row])
 
     def widths(self) -> Floats:
         """How wide the points lie in every column; 1 where they do not differ."""
-        points = self._points[self._points[:, 0] > 0, 1:]
-        spans: Floats = points.max(axis=0) - points.min(axis=0)
-        return np.where(spans > 0, spans, 1.0)
+        if self._widths is None:
+            points = self._points[self._points[:, 0] > 0, 1:]
+            spans: Floats = points.max(axis=0) - points.min(axis=0)
+            self._widths = np.where(spans > 0, spans, 1.0)
+        return self._widths
 
     def middle(self) -> Floats:
         """Half way between the least and the greatest value in every column."""
@@ -64,7 +68,7 @@ class Nearness:
     def share(self, direction: Integers, gap: Fraction) -> float:
         """A gap in a direction as a share of the width there; more than 0 where the gap is."""
         size = max(map(abs, direction))
-        row = np.array([float(Fraction(abs(value), size)) for value in direction])
+        row = np.array([abs(value) / size for value in direction])
         return max(float(gap / size) / float((row * self.widths()).max()), 5e-324 if gap > 0 else 0.0)
 
     def on_one_facet(self, places: Sequence[int]) -> bool:

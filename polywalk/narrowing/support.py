@@ -81,7 +81,7 @@ class _Asked:
 
     def _aim(self, solver: Solver, direction: Sequence[int]) -> None:
         size = max(map(abs, direction)) or 1
-        solver.aim(self.program.keep, [float(Fraction(value, size)) for value in direction])
+        solver.aim(self.program.keep, [value / size for value in direction])
 
 
 def value_of(direction: Sequence[int], generator: Integers) -> Fraction:
@@ -196,7 +196,7 @@ class FloatReach(_Asked):
         if status == "unbounded":
             self._aim(self.cone_solver, direction)
             self._run(self.cone_solver)
-            ray = whole([snapped(value) for value in self._kept(self.cone_solver)])
+            ray = whole([snapped(value) for value in self.cone_solver.values(self.program.keep)])
             if value_of(direction, (0, *ray)) <= 0:
                 raise SolverError(
                     "HiGHS calls the model unbounded, and there is no ray; look for bounds, right-hand sides and "
@@ -204,7 +204,7 @@ class FloatReach(_Asked):
                     self.solver.status_text,
                 )
             return Reach((0, *ray))
-        generator = whole([Fraction(1), *map(snapped, self._kept(self.solver))])
+        generator = whole([Fraction(1), *map(snapped, self.solver.values(self.program.keep))])
         size = max(map(abs, direction)) or 1
         return Reach(generator, snapped(self.solver.value) * size, self._proof(size))
 
@@ -220,10 +220,6 @@ class FloatReach(_Asked):
                 solver.status_text,
             )
         return status
-
-    def _kept(self, solver: Solver) -> list[float]:
-        point = solver.point()
-        return [float(point[j]) for j in self.program.keep]
 
     def _proof(self, size: int) -> Rounded:
         return Rounded(self.program, *self.solver.duals(), Fraction(size))

@@ -84,7 +84,7 @@ def _check(onto: Sequence[str]) -> None:
 
 def _optimum(big: BigModel) -> Best | None:
     """The optimum to stay near, or to measure from; None where there is no plan."""
-    found = best(big)
+    found = best(big, plan=False)
     if found.outcome == "infeasible":
         return None
     if found.outcome == "unbounded" or found.value is None:

@@ -1,7 +1,8 @@
 """How long a shadow takes beside the linear programs it is made of, and how much memory. Informs, never fails.
 
 Run: python tests/bench/bench_shadow.py
-The peers, measured in the same run: "cold", HiGHS solving the model for its own objective, from nothing, with
+Times are of the processor, since others may work on the machine; each is the least of three rounds, in which peers and
+shadow take turns. The peers: "cold", HiGHS solving the model for its own objective, from nothing, with
 the tolerance used here; "warm", HiGHS solving it again for a random direction in the kept variables, from the last
 basis (mean of 30). The target: 20 cold and half a warm one for each linear program of the shadow; for two variables of
 the year 30 cold; at most 2 (vertices + facets) + 10 linear programs; at most 3 times the memory HiGHS takes.
@@ -29,17 +30,18 @@ from polywalk.narrowing import Shadow, shadow
 from polywalk.narrowing.solver import Solver
 from polywalk.scenarios import harbour_year
 
-ROUNDS = 3
+ROUNDS, WARM = 3, 30
 
 
-def seconds(work: Callable[[], object]) -> float:
-    """The least time of a few runs: the machine may be busy with other work."""
-    times = []
+def seconds(*works: Callable[[], object]) -> list[float]:
+    """The least processor time of each in a few rounds."""
+    least = [float("inf")] * len(works)
     for _ in range(ROUNDS):
-        start = time.perf_counter()
-        work()
-        times.append(time.perf_counter() - start)
-    return min(times)
+        for k, work in enumerate(works):
+            start = time.process_time()
+            work()
+            least[k] = min(least[k], time.process_time() - start)
+    return least
 
 
 def cold(big: BigModel) -> None:
@@ -49,23 +51,29 @@ def cold(big: BigModel) -> None:
     solver.run()
 
 
-def warm(found: Shadow) -> float:
-    """The mean time of one more solution, from the last basis, in a random direction of the kept variables."""
-    big, solver = found.whole, Solver(found.whole)
-    keep = [big.index(name) for name in found.model.variables]
-    draw, times = np.random.default_rng(0), []
-    for _ in range(31):
+def warmed(found: Shadow) -> Solver:
+    """A solver that has a basis of the shadow's model."""
+    solver = Solver(found.whole)
+    solver.aim([found.whole.index(found.model.variables[0])], [1.0])
+    solver.run()
+    return solver
+
+
+def warm(found: Shadow, solver: Solver) -> None:
+    """WARM more solutions, from the last basis, in random directions of the kept variables."""
+    keep = [found.whole.index(name) for name in found.model.variables]
+    draw = np.random.default_rng(0)
+    for _ in range(WARM):
         solver.aim(keep, draw.normal(size=len(keep)).tolist())
-        start = time.perf_counter()
         solver.run()
-        times.append(time.perf_counter() - start)
-    return float(np.mean(times[1:]))
 
 
 def line(label: str, big: BigModel, onto: Sequence[str], within: str | None) -> None:
     """One line of the table."""
     found = shadow(big, onto, within=within)
-    base, one, took = seconds(lambda: cold(big)), warm(found), seconds(lambda: shadow(big, onto, within=within))
+    solver = warmed(found)
+    base, one, took = seconds(lambda: cold(big), lambda: warm(found, solver), lambda: shadow(big, onto, within=within))
+    one /= WARM
     corners, sides = len(found.region.vertices), len(found.facets)
     target = 20 * base + 0.5 * one * found.programs if len(onto) == 3 else 30 * base
     print(
