@@ -5,10 +5,13 @@ from __future__ import annotations
 import random
 from collections import Counter
 from collections.abc import Iterable
+from fractions import Fraction
 
 import pytest
 from crowds import KINDS, crowd
+from zoo import build, nonnegative
 
+from polywalk.budget import Budget
 from polywalk.model import Model
 from polywalk.region import Region, engine, region, sieve, workingset
 
@@ -37,6 +40,8 @@ def plain(model: Model) -> Region:
     """The region from all rows at once."""
     with pytest.MonkeyPatch.context() as patch:
         patch.setattr(workingset, "WORTHWHILE", 10**9)
+        for room in (engine, workingset):
+            patch.setattr(room, "is_small", lambda rows, straight: True)
         patch.setattr(sieve, "MANY", 10**9)
         return region(model)
 
@@ -69,3 +74,85 @@ def test_the_same_as_from_all_rows(listed: list[int]) -> None:
     least = {"bounded": 90, "unbounded": 60, "empty": 30, "line": 30, "flat": 45, "crowded corner": 45}
     assert all(met[trait] >= count for trait, count in least.items()), met
     assert met["few rows were enough"] >= 0.8 * len(KINDS) * EACH, met
+
+
+GUESSES = {
+    "no row at all": lambda rows, equal, affordable: set(equal),
+    "one row": lambda rows, equal, affordable: {*equal, len(rows) - 1},
+    "rows at random": lambda rows, equal, affordable: {*equal, *random.Random(len(rows)).sample(range(len(rows)), 9)},
+    "every row but a few": lambda rows, equal, affordable: {*equal, *range(5, len(rows))},
+}
+
+
+@pytest.mark.parametrize("name", GUESSES)
+def test_a_bad_guess_changes_nothing(name: str, listed: list[int], monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr(workingset, "guess", GUESSES[name])
+    draw, rounds = random.Random(name), 0
+    for kind in KINDS:
+        for _ in range(4):
+            model = crowd(draw, kind)
+            listed.clear()
+            assert everything(region(model)) == everything(plain(model)), (kind, model)
+            rounds = max(rounds, len(listed))
+    assert rounds > 3 or name == "every row but a few"
+
+
+def test_rows_that_floats_cannot_tell_apart(listed: list[int]) -> None:
+    """Planes of a box, each many times over and tilted by less than a float shows: exact rounds find the ends."""
+    model = hairs(300)
+    found = region(model)
+    assert max(listed) < 40
+    assert everything(found) == everything(plain(model))
+
+
+def test_where_rounds_run_out_all_rows_are_listed(listed: list[int], monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr(workingset, "ROUNDS", 1)
+    model = hairs(100)
+    assert region(model) == plain(model)
+    assert listed[-2:] == [100, 100]
+
+
+def test_where_every_row_bounds_all_rows_are_listed_at_once(listed: list[int]) -> None:
+    """Tangents of a parabola: floats alone see that no row can be left out, so cddlib is asked once."""
+    rows = [(f"tangent {k}", [2 * k, -1], "<=", k * k) for k in range(80)]
+    model = build("x y", [*rows, ("roof", [0, 1], "<=", 10_000)])
+    assert len(region(model).facets) == 81
+    assert listed == [81]
+
+
+def test_many_needless_rows_stay_in_this_process(monkeypatch: pytest.MonkeyPatch) -> None:
+    """All thousand rows at once are too much work to be uninterruptible; the few that bound are not."""
+    monkeypatch.setattr(engine, "in_child", lambda *given, **said: pytest.fail("a child process was started"))
+    for model in (capacities(300), capacities(1_000)):
+        assert everything(region(model)) == everything(plain(model))
+
+
+def test_what_stays_large_goes_to_a_child_under_its_own_size(monkeypatch: pytest.MonkeyPatch) -> None:
+    sent = []
+    monkeypatch.setattr(engine, "in_child", lambda *given, **said: sent.append(said["task"]) or ([], set()))
+    rows = [(f"tangent {k}", [2 * k, -1, k % 2], "<=", k * k) for k in range(300)]
+    region(build("x y z", [*rows, ("floor", [0, 0, 1], ">=", 0)]))
+    assert sent == ["listing the vertices of 301 constraints in 3 variables"]
+
+
+def test_in_a_child_too_few_rows_are_listed() -> None:
+    model = capacities(300)
+    assert region(model, Budget()) == region(model)
+
+
+def capacities(m: int) -> Model:
+    """x >= 0 and random capacity rows in small integers, of which a dozen bound."""
+    draw = random.Random(m)
+    rows = [(f"r{k}", [draw.randint(1, 20) for _ in range(3)], "<=", draw.randint(20, 60)) for k in range(m - 3)]
+    return build("x y z", [*nonnegative("x y z"), *rows])
+
+
+def hairs(m: int) -> Model:
+    """x >= 0 and x + y + z <= 9, each many times over, every number of each copy off by 1e-12 to 1e-25."""
+    draw = random.Random(m)
+    sides = [[0, 1, 0, 0], [0, 0, 1, 0], [0, 0, 0, 1], [9, -1, -1, -1]]
+    rows = []
+    for k in range(m):
+        b, *a = [value + Fraction(draw.randint(-9, 9), 10 ** draw.randint(12, 25)) for value in sides[k % 4]]
+        rows.append((f"r{k}", a, ">=", -b))
+    return build("x y z", rows)
