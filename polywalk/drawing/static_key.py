@@ -59,15 +59,16 @@ class Plan:
 def planned(drawn: Scene, form: Format) -> Plan:
     """The plan of a scene's picture."""
     paper = (float(drawn.paper[0]), float(drawn.paper[1]))
+    below = BOTTOM if drawn.axes[0].title else 8.0  # room for the numbers of an axis, where there is one
     if form.key == "none":
-        return Plan(paper[1] + BOTTOM + 8, paper, BOTTOM, (), (), 0.0)
+        return Plan(paper[1] + below + 8, paper, below, (), (), 0.0)
     if form.height is not None:
         return _fixed(drawn, form, form.height)
     head = tuple(_head(drawn, form.width - 2 * MARGIN, most=40))
     top = max(head[-1].top + 30, 84.0 if form.key == "beside" else 0.0)
-    key_top = top - 4 if form.key == "beside" else top + paper[1] + BOTTOM
+    key_top = top - 4 if form.key == "beside" else top + paper[1] + below
     lines = key_lines(drawn.key, form.key_width)
-    height = max(top + paper[1] + BOTTOM, key_top + ROW * (sum(STEP[item.kind] for item in lines) + 1))
+    height = max(top + paper[1] + below, key_top + ROW * (sum(STEP[item.kind] for item in lines) + 1))
     return Plan(height, paper, height - top - paper[1], head, tuple(lines), key_top)
 
 

@@ -11,6 +11,12 @@ from polywalk.table import Table, cell
 VOID = {"meta", "img", "br", "link"}
 """Elements without an end."""
 
+ENDLESS = {"∞", "-∞", "−∞"}
+"""Texts that stand among numbers."""
+
+MOST_TOGETHER = 20
+"""Tables of no more rows stay on one page in print."""
+
 LONG = 22
 """Words of more letters than this may be broken anywhere."""
 
@@ -68,20 +74,30 @@ def table(source: Table, caption: str | None = None) -> Html:
     notes = paragraphs(source.notes, "note")
     if not source.columns or not source.rows:
         return joined([element("p", caption or source.title), notes])
-    head = element("tr", *(element("th", name, scope="col", class_=_kind(name)) for name in source.columns))
+    numbers = [any(_is_number(row[place]) for row in source.rows) for place in range(len(source.columns))]
+    heads = zip(source.columns, numbers, strict=True)
+    head = element("tr", *(element("th", n, scope="col", class_="number" if right else _kind(n)) for n, right in heads))
     rows = [element("tr", _cell(row[0], "th"), *(_cell(value, "td") for value in row[1:])) for row in source.rows]
     whole = element(
         "table", element("caption", caption or source.title), element("thead", head), element("tbody", *rows)
     )
-    return joined([element("div", whole, class_="wide"), notes])
+    return joined([element("div", whole, class_=wide(len(rows))), notes])
+
+
+def wide(rows: int) -> str:
+    """The class of what holds a table: in print one of few rows is not broken."""
+    return "wide short" if rows <= MOST_TOGETHER else "wide"
 
 
 def _cell(value: object, name: str) -> Html:
     text, exact = cell(value), _exact(value)
-    number = isinstance(value, int) or hasattr(value, "denominator")
-    kind = "number" if number and not isinstance(value, bool) else _kind(text)
+    kind = "number" if _is_number(value) or text in ENDLESS else _kind(text)
     hover = exact if exact != text else None
     return element(name, text, class_=kind, title=hover, scope="row" if name == "th" else None)
+
+
+def _is_number(value: object) -> bool:
+    return hasattr(value, "denominator") and not isinstance(value, bool)
 
 
 def _kind(text: str) -> str | None:

@@ -14,7 +14,7 @@ from polywalk.reviewing import CODES, Finding
 from polywalk.sheets.content import Content
 from polywalk.sheets.figures import figure_html
 from polywalk.sheets.legend import legend
-from polywalk.sheets.markup import Html, bullets, element, joined, paragraphs, table
+from polywalk.sheets.markup import Html, bullets, element, joined, paragraphs, table, wide
 from polywalk.table import Table
 
 MOST_VERTICES = 200
@@ -44,7 +44,7 @@ def model(content: Content) -> Html:
     listed = element("table", element("caption", "Subject to"), element("thead", head), element("tbody", *lines))
     rounded = any("≈" in rule for _, rule, _ in rows)
     note = ["≈ marks a rounded number; the model as TOML has every number in full."] if rounded else []
-    body = element("div", listed, class_="wide") if rows else element("p", "No constraint.")
+    body = element("div", listed, class_=wide(len(rows))) if rows else element("p", "No constraint.")
     return joined([element("p", *aim, class_="rule goal"), body, paragraphs(note, "note"), table(_variables(content))])
 
 
@@ -109,7 +109,9 @@ def vertices(content: Content) -> Html:
 def findings(content: Content) -> Html:
     """Findings, worst first; those set aside with their reasons; what was checked."""
     review = content.review
-    parts = [_finding(item) for item in review.findings] or [element("p", "Nothing was found.")]
+    same = _same_repair(review.findings)
+    told = [item for item in review.findings if item not in same.values()]
+    parts = [_finding(item, also=same.get(item)) for item in told] or [element("p", "Nothing was found.")]
     if review.accepted:
         parts.append(element("h3", "Set aside"))
         parts += [
@@ -120,12 +122,26 @@ def findings(content: Content) -> Html:
     return joined(parts)
 
 
-def _finding(item: Finding, heading: str = "h3") -> Html:
+def _same_repair(found: tuple[Finding, ...]) -> dict[Finding, Finding]:
+    """The repair by one constraint that is also the least in all, with the finding that says so: one entry for both."""
+    least = [item for item in found if item.code == "least-repair" and len(item.constraints) == 1]
+    return {
+        item: other
+        for item in found
+        for other in least
+        if item.code == "single-repair"
+        and (item.constraints, item.amounts[0][1]) == (other.constraints, other.amounts[1][1])
+    }
+
+
+def _finding(item: Finding, heading: str = "h3", also: Finding | None = None) -> Html:
+    """One finding; ``also`` is one about the same change, told in the same entry."""
     mark = element("span", item.severity, class_=f"severity {item.severity}")
     parts = [element(heading, mark, " ", item.title), element("p", item.explanation)]
-    parts += [element("p", element("strong", "Remedy: "), item.remedy)] if item.remedy else []
-    parts.append(element("p", f"{item.code}: {CODES[item.code].meaning}", class_="note"))
-    return joined(parts)
+    parts += [element("p", "The same change is the least in all: ", also.explanation)] if also else []
+    parts += [element("p", element("strong", "Remedy: "), one.remedy) for one in (item, also) if one and one.remedy]
+    parts += [element("p", f"{one.code}: {CODES[one.code].meaning}", class_="note") for one in (item, also) if one]
+    return element("div", *parts, class_="finding")
 
 
 def source(content: Content) -> Html:

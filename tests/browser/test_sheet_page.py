@@ -26,6 +26,13 @@ DRAWN = """() => {
 EYE = "() => document.querySelector('.turnable')._fullLayout.scene._scene.getCamera().eye.x"
 SEEN = "(kind) => [...document.querySelectorAll(kind)].map((one) => getComputedStyle(one).display !== 'none')"
 
+LOOSE = """() => [...document.querySelectorAll('table, .finding, caption, thead, h2, h3, footer')].filter((one) => {
+  const style = getComputedStyle(one), rows = one.querySelectorAll('tbody tr').length;
+  if (one.matches('table, .finding')) return rows <= 20 && style.breakInside !== 'avoid';
+  return (one.matches('footer') ? style.breakBefore : style.breakAfter) !== 'avoid';
+}).map((one) => one.outerHTML.slice(0, 80))"""
+"""What print could part from what belongs to it: a short table, a finding, a heading, the head of a table."""
+
 
 def changed() -> pw.Model:
     return pw.difference(harbour_row(), harbour_row().with_rhs("harbour main", 10).without("quay pipe"))
@@ -62,6 +69,7 @@ def test_a_sheet_is_quiet_alone_and_prints(name: str, page: Any, tmp_path: Path)
     page.emulate_media(media="print")
     assert all(page.evaluate(SEEN, ".still"))
     assert not any(page.evaluate(SEEN, ".turnable"))
+    assert page.evaluate(LOOSE) == []
     assert said == []
     assert [url for url in asked if not url.startswith(("data:", "file:"))] == []
     assert sum(url.startswith("file:") for url in asked) == 1

@@ -17,7 +17,9 @@ from polywalk.drawing import View
 from polywalk.scenarios import VARIANTS, harbour_row, klee_minty
 from polywalk.sheets import SECTIONS
 from polywalk.sheets.legend import MEANINGS, UNSAID, roles
+from polywalk.sheets.markup import table
 from polywalk.sheets.overview import CAUTION
+from polywalk.table import Table
 
 README = Path(pw.__file__).parents[1] / "README.md"
 NASTY = "<img src=x onerror=alert(1)>"
@@ -223,3 +225,32 @@ def test_a_model_of_many_variables_shows_its_first_three() -> None:
     page = Page(pw.sheet(klee_minty(5), sections=["picture", "vertices"]).html)
     assert "V31" in page.text
     assert page.tags.count("img") == 1
+
+
+def test_one_repair_is_told_once_with_both_its_plans() -> None:
+    html = pw.sheet(harbour_row("infeasible"), date="", sections=["findings"]).html
+    assert "relaxing town contract by 2" not in html  # the title of the second finding about the same change
+    (entry,) = [part for part in html.split('<div class="finding">') if "lowering town contract by 2" in part]
+    assert "pump = 4, chips = 4, tank = 4" in entry
+    assert "The same change is the least in all" in entry
+    assert "pump = 5, chips = 7, tank = 0" in entry
+    assert "single-repair: " in entry
+    assert "least-repair: " in entry
+
+
+def test_another_least_repair_keeps_its_own_entry() -> None:
+    rows = {"low": "x >= 4", "high": "x <= 1", "near": "y <= 1", "far": "y >= 4"}  # two conflicts apart
+    model = pw.from_algebra(minimize="x", constraints=rows)
+    codes = [item.code for item in pw.review(model).findings]
+    html = pw.sheet(model, date="", sections=["findings"]).html
+    assert "least-repair" in codes
+    assert html.count('<div class="finding">') == len(codes)
+    assert "The same change" not in html
+
+
+def test_heads_of_numbers_and_infinity_stand_above_and_among_numbers() -> None:
+    found = Table("t", ("name", "price"), (("a", 3), ("b", "∞")))
+    html = table(found)
+    assert html.count('class="number"') == 3
+    assert '<div class="wide short">' in html
+    assert '<div class="wide">' in table(Table("t", ("n",), tuple((k,) for k in range(50))))
