@@ -23,10 +23,16 @@ def sparse(model: BigModel | Model) -> BigModel:
     Raises
     ------
     ModelError
-        Where a float would round a number: the answer would not be the model's own.
+        Where a float would round a number: the answer would not be the model's own. What is no model.
     """
     if isinstance(model, BigModel):
         return model
+    if not isinstance(model, Model):
+        raise ModelError(
+            f"expected a BigModel or a Model, got {type(model).__name__}; from_mps and from_toml read files, and a "
+            "region or a shadow has its model in .model.",
+            model,
+        )
     for row in model.constraints:
         for value in (*row.coefficients, row.rhs):
             _decimal(value, row.name)

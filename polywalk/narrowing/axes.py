@@ -4,14 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from math import isnan
 from time import monotonic
 
 import numpy as np
 
 from polywalk.bigmodel import BigModel
-from polywalk.errors import ModelError
+from polywalk.errors import ModelError, NumberError
 from polywalk.model import Model
 from polywalk.narrowing.adding import sparse
+from polywalk.narrowing.given import names_of
 from polywalk.narrowing.solver import Solver
 from polywalk.narrowing.widening import near
 from polywalk.progress import progress
@@ -62,12 +64,14 @@ class Axes(Shown):
         The first three: the axes suggested.
     measured : int
         How many variables were measured.
+    notes : tuple of str
     """
 
     ranked: tuple[AxisRange, ...]
     within: str
     names: tuple[str, ...]
     measured: int
+    notes: tuple[str, ...] = ()
 
     def table(self) -> Table:
         """The widest ranges."""
@@ -77,6 +81,7 @@ class Axes(Shown):
         notes = [f"suggested axes: {', '.join(self.names)}"]
         if self.measured < len(self.ranked):
             notes.append(f"{self.measured} of {len(self.ranked)} variables were measured; others are at least so wide")
+        notes += self.notes
         title = f"ranges among plans within {self.within} of the optimum, each in its own unit, the widest first"
         return Table(title, ("variable", "least", "greatest", "range"), rows, tuple(notes))
 
@@ -126,19 +131,23 @@ def suggest_axes(
     Mahadevan & Schilling, The effects of alternate optimal solutions in constraint-based genome-scale metabolic models,
     Metabolic Engineering 5, 2003 (every variable's range near the optimum).
     """
+    if not isinstance(seconds, int | float) or isnan(seconds):
+        raise NumberError(f"seconds: expected a number, got {seconds!r}.", seconds)
     end = monotonic() + seconds
     big = sparse(big)
     held = near(big, within)
     if held is None:
         raise ModelError("expected a model with a plan, got an infeasible one; see conflict(big).", big.name)
-    names = tuple(among) if among is not None else big.variables
+    names = big.variables if among is None else tuple(dict.fromkeys(names_of(among, "the variables to rank")))
     places = [big.index(name) for name in names]
     measuring = _Measuring(held, places)
     measuring.warm_up(end - seconds / 2)
     for place in progress(measuring.next_ones(end), len(places), "variables"):
         measuring.measure(place)
     ranked = sorted(measuring.ranges(), key=lambda one: -one.width)
-    return Axes(tuple(ranked), str(within).strip(), tuple(one.variable for one in ranked[:LEAST]), len(measuring.done))
+    first = tuple(one.variable for one in ranked[:LEAST])
+    notes = ("integer marks are relaxed",) if big.integers else ()
+    return Axes(tuple(ranked), str(within).strip(), first, len(measuring.done), notes)
 
 
 class _Measuring:

@@ -18,6 +18,7 @@ from polywalk.narrowing.answer import SHOWN, Completion, Named, Range, Verdict
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.conflict import conflict, irreducible
 from polywalk.narrowing.cutting import cut
+from polywalk.narrowing.given import values_of
 from polywalk.narrowing.nearby import ends, nearby
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.settling import settled_by
@@ -105,23 +106,11 @@ def _held(big: BigModel, asked: Named) -> Program:
 
 def _entries(big: BigModel, plan: Mapping[str, object] | Iterable[object]) -> Named:
     """Names and values in the order of the variables."""
-    if isinstance(plan, str) or not isinstance(plan, Mapping | Iterable):
-        raise ModelError(f"expected a plan as names and values or a list of values, got {plan!r}.", plan)
-    given = plan if isinstance(plan, Mapping) else _listed(big, list(plan))
+    given = values_of(big, plan)
     if not given:
         raise ModelError("expected a value for at least one variable, got an empty plan.", plan)
     places = {big.index(name): value for name, value in given.items()}
-    return tuple((big.variables[place], _number(places[place])) for place in sorted(places))
-
-
-def _listed(big: BigModel, values: list[object]) -> dict[str, object]:
-    if len(values) != big.n:
-        raise ModelError(f"expected {big.n} values, one a variable of the big model, got {len(values)}.", values)
-    return dict(zip(big.variables, values, strict=True))
-
-
-def _number(value: object) -> Fraction:
-    return exact(value.item() if isinstance(value, np.generic) else value)
+    return tuple((big.variables[place], exact(places[place])) for place in sorted(places))
 
 
 def _plan(program: Program, solver: Solver) -> list[Fraction] | None:

@@ -7,6 +7,7 @@ from fractions import Fraction
 from functools import cached_property
 
 from polywalk.bigmodel import BigModel
+from polywalk.bigmodel.telling import counted
 from polywalk.errors import unknown
 from polywalk.exact import short
 from polywalk.model import Model
@@ -146,7 +147,7 @@ class Shadow(Shown):
         part = "partial outline, " if self.is_partial else ""
         title = (
             f"{self.whole.name or 'shadow'} onto {', '.join(self.model.variables)}: {part}"
-            f"{len(self.facets)} facets, {kind}, {self.programs} linear programs"
+            f"{counted(len(self.facets), 'facet')}, {kind}, {counted(self.programs, 'linear program')}"
         )
         rows = tuple((one.constraint, one.rule, _stops(one.proof)) for one in self.facets)
         return Table(title, ("facet", "rule", "what stops it there"), rows, self.notes)

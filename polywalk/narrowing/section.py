@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from typing import Any, Literal
@@ -13,6 +13,7 @@ from polywalk.exact import Row, exact, short
 from polywalk.model import Constraint, Model, Objective
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import best, costs
+from polywalk.narrowing.given import names_of, values_of
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.settling import Settled, relaxed, settled_by, telling
 from polywalk.narrowing.tolerances import simple
@@ -71,7 +72,7 @@ class Section(Shown):
     pump lower          pump ≥ 0
     chips lower         chips ≥ 0
     units: pump in MW, chips in MW
-    0 constraints became constant, all satisfied
+    no constraint became constant
     """
 
     model: Model
@@ -124,9 +125,8 @@ def section(big: BigModel | Model, keep: Sequence[str], at: Values = "optimum") 
     optimum read exactly from a solver's basis).
     """
     big = sparse(big)
-    if isinstance(keep, str) or not keep:
-        raise ModelError(f"expected the names of the variables to keep, as a list, got {keep!r}.", keep)
-    kept = [big.index(name) for name in dict.fromkeys(keep)]
+    keep = tuple(dict.fromkeys(names_of(keep, "the variables to keep")))
+    kept = [big.index(name) for name in keep]
     values, snaps, notes = _values(big, at, set(kept))
     program = Program(big, tuple(kept))
     settled = settled_by(program, values)
@@ -139,10 +139,9 @@ def _values(big: BigModel, at: Values, kept: set[int]) -> tuple[dict[int, Fracti
     """The values of the variables that are not kept, by place; the first note says where they come from."""
     if isinstance(at, str):
         return _optimal(big, at, kept)
-    given = at.items() if hasattr(at, "items") else _listed(big, at)
     found, snaps = dict[int, Fraction](), []
-    for name, value in given:
-        place = big.index(str(name))
+    for name, value in values_of(big, at).items():
+        place = big.index(name)
         if place in kept:
             continue
         number = exact(value)
@@ -162,16 +161,6 @@ def _values(big: BigModel, at: Values, kept: set[int]) -> tuple[dict[int, Fracti
     return found, snaps, [told + (f" and {len(found) - 3} more" if len(found) > 3 else "")]
 
 
-def _listed(big: BigModel, at: Iterable[object]) -> Iterable[tuple[str, object]]:
-    listed = list(at)
-    if len(listed) != big.n:
-        raise ModelError(f"expected {big.n} values, one a variable of the big model, got {len(listed)}.", len(listed))
-    return [
-        (name, value.item() if hasattr(value, "item") else value)
-        for name, value in zip(big.variables, listed, strict=True)
-    ]
-
-
 def _optimal(big: BigModel, at: str, kept: set[int]) -> tuple[dict[int, Fraction], list[Snap], list[str]]:
     if at != "optimum":
         raise ModelError(f'at: expected values or "optimum", got {at!r}.', at)
@@ -181,7 +170,8 @@ def _optimal(big: BigModel, at: str, kept: set[int]) -> tuple[dict[int, Fraction
         raise ModelError(f'at="optimum": the model is {found.outcome} and has none; {said}.', big.name)
     how = "rebuilt exactly from HiGHS's basis" if found.is_exact else "HiGHS's floats, near simple fractions snapped"
     values = {j: value for j, value in enumerate(found.point) if j not in kept}
-    return values, [], [f"the optimum {short(found.value or Fraction(0))}", f"values: {how}"]
+    marks = ["integer marks are relaxed: the optimum is the relaxation's"] if big.integers else []
+    return values, [], [f"the optimum {short(found.value or Fraction(0))}", f"values: {how}", *marks]
 
 
 def _refuse(big: BigModel, settled: Sequence[Settled]) -> None:

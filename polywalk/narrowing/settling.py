@@ -104,6 +104,8 @@ def telling(settled: Sequence[Settled]) -> list[str]:
     wrong = sorted((one for one in settled if one.verdict != "satisfied"), key=lambda one: one.slack)
     count = sum(not one.is_bound for one in settled)
     noun = "constraint" if count == 1 else "constraints"
+    if not wrong and not count:
+        return ["no constraint became constant"]
     if not wrong:
         return [f"{count} {noun} became constant, all satisfied"]
     lines = [f"{count} {noun} became constant; not satisfied: {len(wrong)}"]

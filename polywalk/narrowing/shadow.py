@@ -8,15 +8,18 @@ from fractions import Fraction
 from math import atan2
 
 from polywalk.bigmodel import BigModel
+from polywalk.errors import SolverError
 from polywalk.exact import exact as number
+from polywalk.linear import farkas
 from polywalk.model import Constraint, Goal, Model, Objective
 from polywalk.narrowing import building
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
+from polywalk.narrowing.conflict import conflict
 from polywalk.narrowing.merging import merged
 from polywalk.narrowing.outline import Edge, Outline
 from polywalk.narrowing.program import Program
-from polywalk.narrowing.proof import Proof
+from polywalk.narrowing.proof import Exact, Proof
 from polywalk.narrowing.results import Shadow
 from polywalk.narrowing.support import EmptyModelError, ExactReach, FloatReach, InexactError
 from polywalk.narrowing.tolerances import TOLERANCES
@@ -162,7 +165,23 @@ def _value_axis(big: BigModel, keep: tuple[int, ...]) -> int | None:
 
 def _empty(wide: Widened, runs: int, touch: float, proof: Proof | None) -> Shadow:
     """The shadow of a model that allows nothing: one constraint that no plan keeps."""
+    proof = proof or _contradiction(wide.big)
     nothing = Constraint("empty region", (Fraction(0),) * len(wide.keep), "<=", Fraction(-1))
-    told = _shadow(wide, [building.Row(nothing, proof)], runs, touch, True)
+    told = _shadow(wide, [building.Row(nothing, proof)], runs, 0.0 if proof else touch, True)
     said = "the model allows no plan at all; conflict(big) shows which constraints contradict each other"
     return replace(told, notes=(*told.notes, said))
+
+
+def _contradiction(big: BigModel) -> Proof | None:
+    """Multipliers that add up to 0 <= -1, where HiGHS finds no plan; None where it cannot be decided exactly."""
+    try:
+        found = conflict(big)
+    except SolverError:
+        return None
+    if found is None:
+        raise SolverError(
+            "HiGHS calls the model infeasible, and it has a plan; rescale rows and columns of very different sizes.",
+            big.name,
+        )
+    proof = farkas(found)
+    return None if proof is None else Exact(tuple(proof.multipliers.items())).times(-1 / proof.total)

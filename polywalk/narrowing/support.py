@@ -107,6 +107,8 @@ class ExactReach(_Asked):
             found = self._proved(direction)
         elif status == "unbounded":
             found = self._ray(direction)
+        elif status == "infeasible" and not self._is_small:
+            raise EmptyModelError
         return found or self._mended(direction)
 
     def _proved(self, direction: Integers) -> Reach | None:
@@ -138,12 +140,17 @@ class ExactReach(_Asked):
         generator = (0, *whole([Fraction(plan.values[j]) for j in self.program.keep]))
         return Reach(generator) if value_of(direction, generator) > 0 else None
 
+    @property
+    def _is_small(self) -> bool:
+        """Whether the exact simplex method can take over."""
+        big = self.program.big
+        return big.n * (big.n + big.m) <= TOLERANCES.cells
+
     @cached_property
     def _model(self) -> Model:
-        big = self.program.big
-        if big.n * (big.n + big.m) > TOLERANCES.cells:
+        if not self._is_small:
             raise InexactError
-        model = big.to_model().without_objective()
+        model = self.program.big.to_model().without_objective()
         for name, value in self.program.held.items():
             model = model.with_rhs(name, value)
         return model
@@ -154,7 +161,8 @@ class ExactReach(_Asked):
         way = {model.variables[j]: value for j, value in zip(keep, direction, strict=True)}
         best = optimum(model.with_objective(way, "max"))
         if best.infeasibility is not None:
-            raise EmptyModelError(Exact(tuple(best.infeasibility.multipliers.items())))
+            proof = Exact(tuple(best.infeasibility.multipliers.items()))
+            raise EmptyModelError(proof.times(-1 / best.infeasibility.total))  # they add up to 0 <= -1
         if best.ray is not None:
             return Reach((0, *whole([best.ray.direction[j] for j in keep])))
         point, multipliers = best.point, best.multipliers

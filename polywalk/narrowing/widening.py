@@ -14,6 +14,7 @@ from polywalk.exact import exact, short
 from polywalk.narrowing.adding import with_row, with_variable
 from polywalk.narrowing.best import Best, best
 from polywalk.narrowing.certify import BASIC, Statuses
+from polywalk.narrowing.given import names_of
 
 OBJECTIVE = "objective"
 """What the objective's value is called as an axis."""
@@ -50,8 +51,10 @@ def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
     ModelError, UnknownName, DuplicateName, NumberError
         No names or more than three, one that is not there or is given twice, an objective that is not there.
     """
-    _check(onto)
-    names = list(onto)
+    names = names_of(onto, "one to three variables to keep", 3)
+    for name in names:
+        if names.count(name) > 1:
+            raise DuplicateName(f"the variable {name!r} is given twice; name each one once.", name)
     wide, held, notes, start, close = big, list[tuple[str, Fraction]](), list[str](), None, ""
     asked = [name for name in VALUE_AXES if name in names and name not in big.variables]
     for name in asked:
@@ -69,17 +72,10 @@ def widened(big: BigModel, onto: Sequence[str], within: object) -> Widened:
     marked = [name for name in names if name in big.integers]
     others = len(big.integers) - len(marked)
     if big.integers:
-        what = " and ".join([*marked, *([f"{others} other variables"] if others else [])])
+        rest = f"{others:,} other {'variable' if others == 1 else 'variables'}"
+        what = " and ".join([*marked, *([rest] if others else [])])
         notes.append(f"integer marks are relaxed: {what}")
     return Widened(wide, keep, tuple(held), tuple(notes), start, close)
-
-
-def _check(onto: Sequence[str]) -> None:
-    if isinstance(onto, str) or not 1 <= len(onto) <= 3:
-        raise ModelError(f"expected the names of one to three variables to keep, as a list, got {onto!r}.", onto)
-    for name in onto:
-        if list(onto).count(name) > 1:
-            raise DuplicateName(f"the variable {name!r} is given twice; name each one once.", name)
 
 
 def _optimum(big: BigModel) -> Best | None:
@@ -137,7 +133,11 @@ def _told(found: Best, said: str) -> list[str]:
 def _distance(within: object, value: Fraction) -> tuple[Fraction, str]:
     """How far from the optimum, and the same in words; "5%" is a share of it, a number is in its own unit."""
     text = str(within).strip()
-    distance = exact(text[:-1].strip()) / 100 * abs(value) if text.endswith("%") else exact(within)
+    try:
+        distance = exact(text[:-1].strip()) / 100 * abs(value) if text.endswith("%") else exact(within)
+    except NumberError as wrong:
+        said = f'within: expected a number, or a share of the optimum such as "5%", got {within!r}.'
+        raise NumberError(said, within) from wrong
     if distance < 0:
         raise NumberError(f"within: expected a distance of at least 0 from the optimum, got {within!r}.", within)
     return distance, text if text.endswith("%") else short(distance)

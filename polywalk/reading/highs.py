@@ -9,6 +9,7 @@ from typing import Any
 import numpy as np
 
 from polywalk.bigmodel import BigModel
+from polywalk.bigmodel.telling import counted
 from polywalk.errors import ModelError, SolverError
 
 
@@ -61,15 +62,13 @@ def from_highs(solver: Any, *, name: str = "", notes: Sequence[str] = ()) -> Big
     Returns
     -------
     BigModel
-        Columns and rows without a name are called "x1", "row 1" and so on. An objective without any coefficient and
-        constant is no objective.
+        Columns and rows without a name are called "x1", "row 1" and so on; of several of one name all but the first
+        get a number, "pump (2)", and a note says so. An objective without any coefficient and constant is no objective.
 
     Raises
     ------
     ModelError
         Anything that is no such object, a quadratic objective, semi-continuous variables, a model without columns.
-    DuplicateName
-        Two columns, or two rows, of one name.
 
     Examples
     --------
@@ -85,18 +84,19 @@ def from_highs(solver: Any, *, name: str = "", notes: Sequence[str] = ()) -> Big
     ----------
     Huangfu & Hall, Parallelizing the dual revised simplex method, Math. Prog. Comp. 10, 2018 (HiGHS).
     """
-    if not (hasattr(solver, "getLp") and hasattr(solver, "getHessianNumNz")):
+    if isinstance(solver, type) or not (hasattr(solver, "getLp") and hasattr(solver, "getHessianNumNz")):
         raise ModelError(f"expected a highspy.Highs object, got {type(solver).__name__}.", solver)
     if solver.getHessianNumNz():
         raise ModelError("the objective is quadratic; only its linear part would be left. Drop it first.", "objective")
     program = solver.getLp()
-    variables = _names(program.col_names_, program.num_col_, "x")
+    variables, told = _names(program.col_names_, program.num_col_, "x")
+    rows, told_too = _names(program.row_names_, program.num_row_, "row ")
     cost, constant = np.array(program.col_cost_, dtype=float), float(program.offset_)
     maximize = program.sense_ == highspy().ObjSense.kMaximize
     matrix = _by_rows(program)
     return BigModel(
         variables=variables,
-        rows=_names(program.row_names_, program.num_row_, "row "),
+        rows=rows,
         indptr=matrix.indptr,
         indices=matrix.indices,
         data=matrix.data,
@@ -109,14 +109,36 @@ def from_highs(solver: Any, *, name: str = "", notes: Sequence[str] = ()) -> Big
         constant=constant,
         integers=_integers(program.integrality_, variables),
         name=name or program.model_name_,
-        notes=tuple(notes),
+        notes=(*notes, *told, *told_too),
     )
 
 
-def _names(given: Sequence[str], count: int, stem: str) -> tuple[str, ...]:
-    """The names HiGHS keeps, which may be none, fewer than there are, or empty."""
+def _names(given: Sequence[str], count: int, stem: str) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """The names HiGHS keeps, which may be none, fewer than there are, empty, or the same; and what was altered."""
     listed = [*given, *[""] * (count - len(given))]
-    return tuple(name or f"{stem}{number}" for number, name in enumerate(listed, 1))
+    taken, found, twice = {*listed}, list[str](), list[str]()
+    seen = set[str]()
+    for number, name in enumerate(listed, 1):
+        called = name or f"{stem}{number}"
+        if name in seen if name else called in taken:
+            twice += [name] if name else []
+            called = _free(called, taken)
+        seen.add(name)
+        taken.add(called)
+        found.append(called)
+    if not twice:
+        return tuple(found), ()
+    what = counted(len(twice), "variable" if stem == "x" else "row")
+    shown = ", ".join(repr(name) for name in dict.fromkeys(twice[:3]))
+    return tuple(found), (f"{what} got a number, since another has the name: {shown}",)
+
+
+def _free(name: str, taken: set[str]) -> str:
+    """The name with the first number that makes it a new one."""
+    number = 2
+    while f"{name} ({number})" in taken:
+        number += 1
+    return f"{name} ({number})"
 
 
 def _integers(marks: Sequence[Any], variables: tuple[str, ...]) -> tuple[str, ...]:

@@ -40,6 +40,8 @@ def text_of(path: Source) -> str:
 
 
 def _bytes(path: Source) -> bytes:
+    if not isinstance(path, str | PathLike):
+        raise FileError(f"expected the path of a file, got {path!r}.", path)
     try:
         raw = Path(path).read_bytes()
         return gzip.decompress(raw) if raw.startswith(b"\x1f\x8b") else raw

@@ -32,7 +32,7 @@ def test_shadows_agree_with_enumeration_and_projection(block: int) -> None:
         expected = project(region(model), onto)
         for exact in (True, False):
             found = shadow(BigModel.from_model(model), onto, exact=exact)
-            assert (found.tolerance is None) == exact
+            assert (found.tolerance is None) == (exact or expected.status == "empty")
             assert told(found.region) == told(expected), (seed, exact)
             size = len(expected.vertices) + len(expected.facets) + len(expected.rays) + len(expected.lines)
             assert found.programs <= 2 * size + 10, seed

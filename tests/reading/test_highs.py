@@ -4,7 +4,7 @@ import numpy as np
 import pytest
 
 import polywalk as pw
-from polywalk.errors import DuplicateName, ModelError
+from polywalk.errors import ModelError
 from polywalk.reading.highs import highspy, quiet_solver
 
 INF = np.inf
@@ -80,16 +80,22 @@ def test_a_quadratic_objective_is_refused():
 def test_what_is_no_solver_and_what_holds_no_model():
     with pytest.raises(ModelError, match=r"expected a highspy\.Highs object, got str"):
         pw.from_highs("plant.mps")
+    with pytest.raises(ModelError, match="expected a highspy"):
+        pw.from_highs(highspy().Highs)
     with pytest.raises(ModelError, match="at least one variable"):
         pw.from_highs(quiet_solver())
 
 
-def test_names_given_twice_are_refused():
-    solver = plant()
-    solver.passColName(1, "other")
-    assert pw.from_highs(solver).variables == ("x", "other")
-    with pytest.raises(DuplicateName, match="'x2'"):
-        pw.from_highs(plant(col_names_=["x2", ""]))
+def test_names_given_twice_get_a_number_and_a_note():
+    big = pw.from_highs(plant(col_names_=["load", "load"], row_names_=["load", ""]))
+    assert (big.variables, big.rows) == (("load", "load (2)"), ("load", "row 2"))
+    assert big.notes == ("1 variable got a number, since another has the name: 'load'",)
+    assert big.row("load") == {"load": 1, "load (2)": 1}
+
+
+def test_names_that_are_made_up_are_new():
+    big = pw.from_highs(plant(col_names_=["x2", ""], row_names_=["row 2", ""]))
+    assert (big.variables, big.rows, big.notes) == (("x2", "x2 (2)"), ("row 2", "row 2 (2)"), ())
 
 
 def test_the_object_is_left_as_it_was():

@@ -219,6 +219,13 @@ def test_a_path_that_is_no_file(path):
         pw.from_mps(path)
 
 
+@pytest.mark.parametrize("path", [None, 3, b"plant.mps"])
+def test_what_is_no_path(path):
+    for read in (pw.from_mps, pw.from_toml):
+        with pytest.raises(FileError, match="expected the path of a file"):
+            read(path)
+
+
 def test_a_path_that_cannot_be_written(tmp_path):
     with pytest.raises(FileError, match="can be written"):
         pw.to_mps(pw.scenarios.harbour_row(), tmp_path / "no folder" / "a.mps")
