@@ -3,9 +3,12 @@
 from __future__ import annotations
 
 import random
+import subprocess
+import sys
 from collections import Counter
 from collections.abc import Iterable
 from fractions import Fraction
+from pathlib import Path
 
 import pytest
 from crowds import KINDS, crowd
@@ -156,3 +159,39 @@ def hairs(m: int) -> Model:
         b, *a = [value + Fraction(draw.randint(-9, 9), 10 ** draw.randint(12, 25)) for value in sides[k % 4]]
         rows.append((f"r{k}", a, ">=", -b))
     return build("x y z", rows)
+
+
+INTERRUPTED = """
+import os, signal, sys, threading, time
+sys.path.insert(0, {tests!r})
+from test_region_workingset import bowl
+from polywalk.region import region
+
+model, pressed = bowl(32), []
+def press():
+    pressed.append(time.monotonic())
+    os.kill(os.getpid(), signal.SIGINT)
+
+threading.Timer({after}, press).start()
+try:
+    region(model)
+    print("finished")
+except KeyboardInterrupt:
+    print("ended after", time.monotonic() - pressed[0])
+"""
+
+
+@pytest.mark.parametrize("after", [0.1, 1.5])
+def test_ctrl_c_ends_guessing_and_listing_within_a_second(after: float) -> None:
+    script = INTERRUPTED.format(tests=str(Path(__file__).parent), after=after)
+    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, timeout=60, check=True)
+    said, _, seconds = done.stdout.strip().rpartition(" ")
+    assert said == "ended after"
+    assert float(seconds) < 1
+
+
+def bowl(size: int) -> Model:
+    """Tangent planes of z = x^2 + y^2 at size x size points, none redundant, under a roof: seconds of work at 32."""
+    at = [(a, b) for a in range(size) for b in range(size)]
+    rows = [(f"{a} {b}", [2 * a, 2 * b, -1], "<=", a * a + b * b) for a, b in at]
+    return build("x y z", [*rows, ("roof", [0, 0, 1], "<=", 10 * size**2)])

@@ -41,13 +41,14 @@ def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[
     while affordable(chosen):
         places = sorted(chosen)
         corners = sketch_generators(columns[:, places].T, {k for k, place in enumerate(places) if place in equal})
-        if corners is None or not (corners[:, 0] > NEAR).any():
+        if corners is None or not len(points := corners[corners[:, 0] > NEAR]):
             break
-        fresh = _met(columns, corners) - chosen
+        middle = points.sum(axis=0) / len(points)
+        fresh = _met(columns, corners, middle) - chosen
         if not fresh:
             return chosen - _needless(columns, chosen - equal, corners)
         chosen |= fresh
-        columns = _closer(columns, corners)
+        columns = _closer(columns, points, middle)
     return chosen
 
 
@@ -65,13 +66,12 @@ def _size(columns: Floats, axis: int) -> Floats:
     return size
 
 
-def _closer(columns: Floats, corners: Floats) -> Floats:
-    """The same rows in variables in which the corners lie round the origin, at about 1, if they are close together."""
-    points = corners[corners[:, 0] > NEAR, 1:]
-    size, middle = np.ptp(points, axis=0).max(), points.mean(axis=0)
+def _closer(columns: Floats, points: Floats, middle: Floats) -> Floats:
+    """The same rows in variables in which the points lie round the origin, at about 1, if they are close together."""
+    size = (points.max(axis=0) - points.min(axis=0)).max()
     if not 0 < size < FAR:
         return columns
-    moved = np.vstack([(columns[0] + middle @ columns[1:]) / size, columns[1:]])
+    moved = np.vstack([middle @ columns / size, columns[1:]])
     return moved / _size(moved, axis=0)
 
 
@@ -81,10 +81,10 @@ def _facing(columns: Floats) -> set[int]:
     return {*slopes.argmax(axis=1).tolist(), *slopes.argmin(axis=1).tolist()}
 
 
-def _met(columns: Floats, corners: Floats) -> set[int]:
+def _met(columns: Floats, corners: Floats, middle: Floats) -> set[int]:
     """For each corner or ray that breaks a row, a row it breaks: the first on the way from inside if that is known."""
-    room = _inside(corners) @ columns
-    scale = 1 / np.where(room > NEAR, room, 1.0) if (room > -NEAR).all() else np.ones(len(room))
+    room = (middle + corners[corners[:, 0] <= NEAR].sum(axis=0)) @ columns
+    scale = 1 / np.where(room > NEAR, room, 1.0) if room.min() > -NEAR else np.ones(len(room))
     found: set[int] = set()
     for part in blocks(len(corners), len(room)):
         slacks = corners[part] @ columns * scale
@@ -102,10 +102,3 @@ def _needless(columns: Floats, chosen: AbstractSet[int], corners: Floats) -> set
     alone = touched.T.astype(float) @ ~touched
     within = (alone == 0) & sides & ((alone.T > 0) | np.tri(len(places), k=-1, dtype=bool))
     return {place for place, is_within in zip(places, (within.any(axis=1) & sides).tolist(), strict=True) if is_within}
-
-
-def _inside(corners: Floats) -> Floats:
-    """A point in the middle of the corners, moved along the rays."""
-    finite = corners[:, 0] > NEAR
-    middle: Floats = corners[finite].mean(axis=0) + corners[~finite].sum(axis=0)
-    return middle

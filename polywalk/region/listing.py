@@ -50,5 +50,5 @@ def sketch_generators(rows: Floats, equal: AbstractSet[int]) -> Floats | None:
     except RuntimeError:
         return None
     array = np.array(found.array, dtype=float).reshape(-1, rows.shape[1])
-    both = np.concatenate([array, -array[list(found.lin_set)]])
+    both = np.concatenate([array, -array[list(found.lin_set)]]) if found.lin_set else array
     return both if np.isfinite(both).all() else None

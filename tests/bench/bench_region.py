@@ -1,9 +1,11 @@
 """How long `region` takes beside bare cdd.gmp on the same rows: generators, incidence, adjacency. Informs, never fails.
 
 Run: python tests/bench/bench_region.py
-Two families, three variables. "capacities": x >= 0 and random capacity rows (small integers), as people type them;
+Three families, three variables. "capacities": x >= 0 and random capacity rows (small integers), as people type them;
+"planes": random planes one to three units from the origin; of both most rows are redundant where there are many.
 "tangents": rational tangent planes of the unit sphere, so no row is redundant and the numbers are long.
 The two sides are run in turn and their medians compared; "bare" gets the rows as Fractions, as they stand in the model.
+"region" is vertices with all their active constraints, rays and edges. Past some work it starts a child process.
 """
 
 from __future__ import annotations
@@ -21,7 +23,7 @@ from polywalk.model import Constraint, Model
 from polywalk.region import region
 
 Rows = list[list[Fraction]]
-ROUNDS = 41
+Family = Callable[[int, int], Rows]
 
 
 def capacities(m: int, seed: int) -> Rows:
@@ -29,6 +31,17 @@ def capacities(m: int, seed: int) -> Rows:
     draw = random.Random(seed)
     rows = [[0, 1, 0, 0], [0, 0, 1, 0], [0, 0, 0, 1]]
     rows += [[draw.randint(20, 60), *(-draw.randint(1, 20) for _ in range(3))] for _ in range(m - 3)]
+    return [[Fraction(value) for value in row] for row in rows]
+
+
+def planes(m: int, seed: int) -> Rows:
+    """Random planes, their distance from the origin between 1 and 3, rounded to thousandths."""
+    draw = random.Random(seed)
+    rows = []
+    for _ in range(m):
+        way = [draw.gauss(0, 1) for _ in range(3)]
+        size = sum(value * value for value in way) ** 0.5
+        rows.append([draw.randint(1000, 3000), *(round(1000 * value / size) for value in way)])
     return [[Fraction(value) for value in row] for row in rows]
 
 
@@ -62,17 +75,29 @@ def seconds(work: Callable[[], object]) -> float:
     return time.perf_counter() - start
 
 
+CASES: list[tuple[Family, tuple[int, ...], int]] = [
+    (capacities, (10, 20, 30), 41),
+    (tangents, (10, 20, 30), 41),
+    (capacities, (300, 1000), 21),
+    (planes, (300, 1000), 7),
+    (tangents, (100, 300), 5),
+    (tangents, (1000,), 1),
+]
+"""Family, sizes and how often each is run; the last takes bare cddlib some ten seconds."""
+
+
 def main() -> None:
     """Print one line for each family and size."""
-    print("family      rows  vertices  bare ms  region ms  ratio")
-    for family in (capacities, tangents):
-        for m in (10, 20, 30):
-            rows = family(m, seed=1)
+    print("family      rows  vertices   bare ms  region ms  region/bare  times faster")
+    for family, sizes, rounds in CASES:
+        for m in sizes:
+            rows = family(m, 1)
             model = model_of(rows)
             count = len(region(model).vertices)
-            pairs = [(seconds(lambda: bare(rows)), seconds(lambda: region(model).edges)) for _ in range(ROUNDS)]  # noqa: B023
+            pairs = [(seconds(lambda: bare(rows)), seconds(lambda: region(model).edges)) for _ in range(rounds)]  # noqa: B023
             one, other = (median(side) * 1000 for side in zip(*pairs, strict=True))
-            print(f"{family.__name__:<10}  {m:>4}  {count:>8}  {one:>7.2f}  {other:>9.2f}  {other / one:>5.2f}")
+            said = f"{family.__name__:<10}  {m:>4}  {count:>8}  {one:>8.2f}  {other:>9.2f}"
+            print(f"{said}  {other / one:>11.2f}  {one / other:>12.1f}", flush=True)
 
 
 if __name__ == "__main__":
