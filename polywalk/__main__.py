@@ -69,8 +69,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
     """
     wanted = _parser().parse_args(arguments)
     target: Path | None = wanted.html
-    if target is not None and not target.parent.is_dir():
-        return _failed(target, f"there is no folder {str(target.parent)!r}")
+    if target is not None and (target.is_dir() or not target.parent.is_dir()):
+        return _failed(target, "it is a folder" if target.is_dir() else f"there is no folder {str(target.parent)!r}")
     try:
         if wanted.file is None:
             return _demo(wanted)
@@ -155,7 +155,7 @@ def _file(wanted: argparse.Namespace) -> int:
         return FOUND_ERRORS
     found = review(model)
     print(f"\n{region(model)}\n\n{found}")
-    walks = _walks(model, wanted.rules)
+    walks = _walks(model, wanted.rules, _has_goal(source))
     drawn = CLEAN if wanted.html is None else _drawn(wanted.html, model, walks)
     return drawn or (FOUND_ERRORS if any(one.severity == "error" for one in found.findings) else CLEAN)
 
@@ -176,17 +176,24 @@ def _narrowed(source: Model | BigModel, wanted: argparse.Namespace) -> Model:
     for name in wanted.onto:
         if name not in VALUE_AXES:
             big.index(name)
-    wrong = conflict(source)
     has_goal = big.goal is not None
-    if wrong is None and has_goal:
-        wrong = escape(source) if not wanted.onto else None
+    wrong = conflict(source)
+    way_out = escape(source) if wrong is None and has_goal else None
+    if wrong is None and not wanted.onto:
+        wrong = way_out
     if wrong is not None:
         print(f"\n{wrong}")
         return wrong
+    if way_out is not None:
+        print(f"\nThere is no optimum, for the objective improves without end; see the\n{way_out}")
     onto = wanted.onto or _suggested(source, has_goal)
     part = section(source, onto) if wanted.section else shadow(source, onto, within=wanted.within)
     print(f"\n{part}")
     return part.model
+
+
+def _has_goal(source: Model | BigModel) -> bool:
+    return (source.objective if isinstance(source, Model) else source.goal) is not None
 
 
 def _suggested(source: Model | BigModel, has_goal: bool) -> tuple[str, ...]:
@@ -197,9 +204,12 @@ def _suggested(source: Model | BigModel, has_goal: bool) -> tuple[str, ...]:
     return found.names
 
 
-def _walks(model: Model, rules: Sequence[str]) -> list[Walk]:
+def _walks(model: Model, rules: Sequence[str], has_goal: bool) -> list[Walk]:
     if model.objective is None:
-        print("\nNo walks: there is no objective to walk by.")
+        why = "there is no objective to walk by"
+        if has_goal:
+            why = "the objective depends on other variables too; take it as an axis, with --onto ... objective"
+        print(f"\nNo walks: {why}.")
         return []
     found = region(model)
     if found.status == "empty" or found.lines:
@@ -225,6 +235,7 @@ def _drawn(target: Path, model: Model, walks: Sequence[Walk]) -> int:
 
 
 def _failed(target: Path, reason: str) -> int:
+    reason = reason.rstrip(".")
     print(f"The picture could not be written to {target}: {reason}; name another file with --html.", file=sys.stderr)
     return BAD_INPUT
 
