@@ -9,7 +9,7 @@ from polywalk.drawing.paths import walk_text
 from polywalk.drawing.scene import KeyPart, KeyRow
 from polywalk.drawing.subject import Subject, coordinates, floats
 from polywalk.exact import short
-from polywalk.model import GOAL
+from polywalk.model import GOAL, Constraint
 from polywalk.region import vertex_name
 from polywalk.walks import Walk
 
@@ -42,7 +42,7 @@ def key(subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: 
 def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
     seen, rows = subject.seen, []
     if found is not None:
-        return _conflict(found)
+        return _conflict(subject, found)
     rows += [KeyRow("optimum", _optimum(subject))] if subject.optimal else []
     goal = seen.model.objective
     if goal is not None and any(goal.coefficients):
@@ -65,13 +65,19 @@ def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
     return tuple(rows)
 
 
-def _conflict(found: Conflict) -> tuple[KeyRow, ...]:
-    rows = [
-        KeyRow(
-            "none",
-            "thick and coloured: the constraints that cannot hold together; an arrow points to the side one allows",
-        )
-    ]
+def _conflict(subject: Subject, found: Conflict) -> tuple[KeyRow, ...]:
+    if subject.projected:
+        return (KeyRow("none", "nothing is drawn: no point satisfies every constraint"),)
+    rows = []
+    if found.names:
+        order = [row.name for row in subject.seen.model.constraints]
+        index = min((order.index(name) for name in found.names if name in order), default=0)
+        solid = len(subject.axes) == 3
+        side = "; an arrow points to the side that one allows" if solid and _is_half(found.lifted) else ""
+        how = "thick or shaded" if solid else "thick"
+        rows.append(KeyRow("conflict line", f"{how}: the constraints that cannot hold together{side}", index))
+        if not solid:
+            rows.append(KeyRow("hatch", "strokes: the side a constraint forbids"))
     if found.rest is not None and found.lifted is not None:
         name = found.lifted.name
         rows.append(KeyRow("rest", f"not allowed either: only what would be left without {name}"))
@@ -79,6 +85,10 @@ def _conflict(found: Conflict) -> tuple[KeyRow, ...]:
             miss = f"the nearest point of that, {coordinates(found.nearest)}, misses {name} by {short(found.short)}"
             rows.append(KeyRow("short", miss))
     return tuple(rows)
+
+
+def _is_half(row: Constraint | None) -> bool:
+    return row is None or row.sense != "=="
 
 
 def _solid(subject: Subject) -> list[KeyRow]:

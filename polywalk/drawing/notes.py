@@ -60,6 +60,8 @@ def _in_space(drawn: Scene, label: Label, theme: Theme) -> dict[str, Any]:
     place = (min(max(x, axis.low), axis.high) for x, axis in zip(label.point, drawn.axes, strict=True))
     note = _note(label, theme) | dict(zip("xyz", place, strict=True))
     note |= {"bgcolor": theme.paper, "opacity": 0.9, "borderpad": 2, "showarrow": False}
+    if label.role == "tag":
+        note |= {"bordercolor": theme.style("tag", label.index).colour, "borderwidth": 1}
     joined = label.role == "note" or (label.target and label.role != "part")
     return note | (_joined(drawn, label, theme) if joined else {"xshift": label.shift[0], "yshift": label.shift[1]})
 
@@ -80,5 +82,6 @@ def _joined(drawn: Scene, label: Label, theme: Theme) -> dict[str, Any]:
 def _note(label: Label, theme: Theme) -> dict[str, Any]:
     style = theme.style(label.role, label.index)
     text = html(label.text)
-    font = {"size": style.size, "color": style.colour, "family": FONT}
+    colour = theme.text if label.role == "tag" else style.colour  # a tag has the colour of its constraint as frame
+    font = {"size": style.size, "color": colour, "family": FONT}
     return {"text": f"<b>{text}</b>" if label.role in BOLD | {"part"} else text, "font": font}

@@ -81,7 +81,7 @@ def _line(drawn: Scene, item: Line, theme: Theme) -> list[dict[str, Any]]:
         "mode": "lines",
         "line": {"color": style.colour, "width": style.width * (1.6 if drawn.solid else 1.0), "dash": style.dash},
         "opacity": style.opacity,
-        "name": html(item.name or item.role),
+        "name": html(_called(drawn, item)),
         "legendgroup": group if item.role != "hatch" else f"constraint {item.index}",
         "showlegend": item.role in IN_LEGEND and (bool(item.name) or item.role != "phase 1"),
     }
@@ -90,6 +90,14 @@ def _line(drawn: Scene, item: Line, theme: Theme) -> list[dict[str, Any]]:
     if item.arrow and item.parts:
         traces.append(_heads(drawn, item, style, look["legendgroup"]))
     return traces
+
+
+def _called(drawn: Scene, item: Line) -> str:
+    """What the legend calls a line: a border that only a letter marks in the plane, by letter and name."""
+    if item.role in {"constraint", "conflict line", "old border"} and not drawn.solid:
+        tags = {label.longer: f"{label.text}  " for label in drawn.labels if label.role == "tag"}
+        return f"{tags.get(item.name, '')}{item.name}"
+    return item.name or item.role
 
 
 def _heads(drawn: Scene, item: Line, style: Style, group: str) -> dict[str, Any]:

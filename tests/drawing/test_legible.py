@@ -195,3 +195,28 @@ def test_words_in_space_stand_in_front_of_the_body_and_inside_the_axes(model: pw
     for note in notes:
         assert all(axis.low <= note[name] <= axis.high for name, axis in zip("xyz", drawn.axes, strict=True))
         assert note["bgcolor"] == layout["paper_bgcolor"]
+
+
+def test_a_letter_in_the_plane_is_told_in_the_legend_of_a_figure_too() -> None:
+    rows = {"weekly hours of the large hydraulic press in the north hall": "x + y <= 4"}
+    rows |= {"storage space in the refrigerated warehouse by the harbour": "2*x + y <= 7", "delivery": "x + 3*y <= 6"}
+    model = pw.from_algebra(maximize="3*x + 2*y", constraints=rows, bounds={"x": (0, 3), "y": (0, 2)})
+    tags = {label.longer: label.text for label in scene(model).labels if label.role == "tag"}
+    assert tags
+    names = [trace.get("name") for trace in figure(model)["data"]]
+    assert all(f"{letter}  {name}" in names for name, letter in tags.items())
+    assert "delivery" in names
+
+
+def test_the_key_of_a_conflict_tells_what_is_drawn() -> None:
+    def said(drawn: Scene) -> str:
+        return " ".join(row.text for part in drawn.key if part.heading == "What the marks say" for row in part.rows)
+
+    plane, space = scene(crowded()), scene(harbour_row("infeasible"))
+    assert "arrow" not in said(plane)
+    assert "strokes" in said(plane)
+    assert "arrow" in said(space)
+    assert [line for line in space.lines if line.role == "conflict line" and line.arrow]
+    shadow = scene(harbour_row("infeasible"), View(axes=("pump", "chips")))
+    assert not shadow.polygons
+    assert said(shadow) == "nothing is drawn: no point satisfies every constraint"
