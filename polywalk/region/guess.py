@@ -1,8 +1,8 @@
 """Which rows probably bound the region, guessed in floats. A bad guess costs time, never the answer.
 
 Rows are added where the region of those chosen so far sticks out of another one: from a point inside, one looks
-towards each corner that sticks out and takes the row met first, which is never redundant (Clarkson 1994); before a
-point inside is known, the row that the corner breaks most.
+towards each corner that sticks out and takes the row met first, which is not redundant unless several are met at once
+(Clarkson 1994); before a point inside is known, the row that the corner breaks most.
 
 References
 ----------
@@ -28,9 +28,13 @@ TOUCHES, NOISE = 1e-7, 1e-14
 FAR = 0.1
 """A region smaller than this in balanced variables is looked at from closer by, lest floats take it for a point."""
 
+ROUNDS = 40
+"""Rounds at most; where each doubles the rows, a dozen are many."""
+
 Affordable = Callable[[AbstractSet[int]], bool]
 
 
+@np.errstate(all="ignore")
 def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[int]:
     """The numbers of rows (b, a) whose region is probably that of all of them, the equalities among them.
 
@@ -38,7 +42,9 @@ def guess(rows: Floats, equal: AbstractSet[int], affordable: Affordable) -> set[
     """
     columns = _balanced(rows)
     chosen = {*equal, *_facing(columns)}
-    while affordable(chosen):
+    for _ in range(ROUNDS):
+        if not affordable(chosen):
+            break
         places = sorted(chosen)
         corners = sketch_generators(columns[:, places].T, {k for k, place in enumerate(places) if place in equal})
         if corners is None or not len(points := corners[corners[:, 0] > NEAR]):

@@ -84,6 +84,7 @@ class Sieve:
             for head, clear, unclear in zip(some, *self._told(some), strict=True):
                 yield clear, [(k, sum(map(mul, self.rows[k], head))) for k in unclear]
 
+    @np.errstate(all="ignore")
     def _told(self, heads: Rows) -> tuple[Floats, list[list[int]]]:
         rows, points = self.floats.T, nearest(heads)
         slacks = points @ rows

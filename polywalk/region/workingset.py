@@ -5,7 +5,8 @@ all. Floats only propose the first working set; emptiness, and that nothing is b
 
 References
 ----------
-Dantzig, Fulkerson & Johnson, Solution of a large-scale traveling-salesman problem, Operations Research 2, 1954.
+Dantzig, Fulkerson & Johnson, Solution of a large-scale traveling-salesman problem, Journal of the Operations
+Research Society of America 2, 1954.
 Clarkson, More output-sensitive geometric algorithms, FOCS 1994.
 """
 
@@ -55,7 +56,7 @@ def _by_rounds(sieve: Sieve, equal: frozenset[int], small: Small | None) -> List
     def affordable(chosen: AbstractSet[int]) -> bool:
         return work(n, len(chosen)) <= left and (small is None or small(*_part(rows, equal, chosen)))
 
-    chosen = guess(sieve.floats, equal, affordable)
+    chosen = equal | guess(sieve.floats, equal, affordable)
     for _ in range(ROUNDS):
         if not affordable(chosen):
             return None
