@@ -11,7 +11,8 @@ from polywalk.drawing.theme import Theme
 MARKS = {"optimum", "vertex", "moved", "stayed", "breakpoint", "now", "lost", "gained"}
 """Roles shown as they are."""
 
-SMALLER = {"basis": 0.34, "optimal basis": 0.34, "first basis": 0.24, "start": 0.75, "degenerate": 0.6, "old optimum": 0.75}
+SMALLER = {"basis": 0.34, "optimal basis": 0.34, "first basis": 0.24, "start": 0.75}
+SMALLER |= {"degenerate": 0.6, "old optimum": 0.75}
 """Roles shown smaller, by how much."""
 
 ARROWS = {"objective", "open edge", "pivot", "faint pivot", "exit", "faint exit", "other exit"}
