@@ -36,7 +36,10 @@ LISTED = {
 }
 """Marks by role, as the legend calls them."""
 
-LARGE = {"degenerate", "optimum", "selected", "start", "evidence"}
+NAMED = {"vertex", "lost", "gained"}
+"""Marks whose names stand beside them in space."""
+
+LARGE = {"degenerate", "optimum", "old optimum", "selected", "start", "evidence"}
 """Marks that would cover the name of their vertex in space, where it is near: it stands off to the right."""
 
 OF_WALK = ("moved", "stayed")
@@ -126,7 +129,8 @@ def _marks(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:
 def _marktrace(drawn: Scene, role: str, found: list[Mark], theme: Theme) -> dict[str, Any]:
     style = theme.style(role, found[0].index)
     size = style.size * (IN_SPACE if drawn.solid else 1.0)
-    marker = {"symbol": SYMBOLS[style.symbol], "size": size, "color": style.fill or style.colour}
+    symbol = "cross" if drawn.solid and style.symbol == "cross" else SYMBOLS[style.symbol]  # in space x is a blank box
+    marker = {"symbol": symbol, "size": size, "color": style.fill or style.colour}
     marker["line"] = {"color": style.colour, "width": style.width}
     look: dict[str, Any] = {"mode": "markers", "marker": marker, "name": LISTED[role], "showlegend": role != "vertex"}
     if role in OF_WALK:
@@ -149,13 +153,18 @@ def _marktrace(drawn: Scene, role: str, found: list[Mark], theme: Theme) -> dict
         look |= {"hoverinfo": "skip"}
     if role == "vertex":
         look["customdata"] = [mark.key for mark in found]
-        if drawn.solid:
-            font = {"size": 12, "color": theme.text, "family": FONT}
-            covered = {mark.point for mark in drawn.marks if mark.role in LARGE}
-            names = [f"\u2003\u2003{mark.text}" if mark.point in covered else mark.text for mark in found]
-            spots = ["middle right" if mark.point in covered else "top center" for mark in found]
-            look |= {"mode": "markers+text", "text": names, "textfont": font, "textposition": spots}
+    if drawn.solid and role in NAMED:
+        look |= _names(drawn, found, theme)
     return trace(drawn, [mark.point for mark in found], **look)
+
+
+def _names(drawn: Scene, found: list[Mark], theme: Theme) -> dict[str, Any]:
+    """In space, the names of vertices beside their marks."""
+    covered = {mark.point for mark in drawn.marks if mark.role in LARGE}
+    names = [f"\u2003\u2003{mark.text}" if mark.point in covered else mark.text for mark in found]
+    spots = ["middle right" if mark.point in covered else "top center" for mark in found]
+    font = {"size": 12, "color": theme.text, "family": FONT}
+    return {"mode": "markers+text", "text": names, "textfont": font, "textposition": spots}
 
 
 def _labels(drawn: Scene, theme: Theme) -> list[dict[str, Any]]:

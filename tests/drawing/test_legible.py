@@ -220,3 +220,14 @@ def test_the_key_of_a_conflict_tells_what_is_drawn() -> None:
     shadow = scene(harbour_row("infeasible"), View(axes=("pump", "chips")))
     assert not shadow.polygons
     assert said(shadow) == "nothing is drawn: no point satisfies every constraint"
+
+
+def test_lost_and_gained_vertices_have_marks_and_names_in_space() -> None:
+    model = harbour_row()
+    change = pw.difference(model, model.with_rhs("harbour main", 10))
+    data = {trace.get("name"): trace for trace in figure(change, View())["data"]}
+    lost, gained = data["vertex lost"], data["vertex gained"]
+    assert lost["marker"]["symbol"] == "cross"  # plotly draws x in space by a letter that its font lacks
+    assert len(lost["text"]) == len(change.vertices("lost"))
+    assert all(text.strip().startswith("old V") for text in lost["text"])
+    assert [text.strip() for text in gained["text"]] == [f"V{corner.after}" for corner in change.vertices("gained")]
