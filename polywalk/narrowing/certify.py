@@ -19,6 +19,7 @@ from polywalk.narrowing.program import Program, Side
 from polywalk.narrowing.rational import Factor
 
 BASIC, UPPER = 1, 2
+NOTHING = Fraction(0)
 Statuses = tuple[list[int], list[int]]
 Target = dict[int, Fraction]
 
@@ -103,36 +104,50 @@ class Basis:
 
     def limit(self, target: Target) -> Limit | None:
         """What the basis's multipliers prove about the target's greatest value; None where no fractions were found."""
-        wanted = [target.get(j, Fraction(0)) for j in self.basic]
-        scale = lcm(*[value.denominator for value in wanted])
-        solved = self._factor.solve_transposed([int(value * scale) for value in wanted])
+        scale = lcm(*[value.denominator for value in target.values()])
+        whole = {j: int(value * scale) for j, value in target.items()}
+        solved = self._factor.solve_transposed([whole.get(j, 0) for j in self.basic])
         if solved is None:
             return None
         values, common = solved
-        pairs = zip(self.tight, values, strict=True)
-        weights = {i: Fraction(value * self.program.scales[i], common * scale) for i, value in pairs if value}
-        return limit_of(self.program, target, weights)
+        shares = {i: value for i, value in zip(self.tight, values, strict=True) if value}
+        return limit_of(self.program, target, shares, common * scale)
 
 
-def limit_of(program: Program, target: Target, weights: dict[int, Fraction]) -> Limit:
-    """What these multipliers of rows prove about the target; the bounds of the variables take what is left over."""
-    rest = {j: value for j, value in target.items() if value}
-    for i, weight in weights.items():
-        share = weight / program.scales[i]
+def limit_of(program: Program, target: Target, shares: dict[int, int], common: int) -> Limit:
+    """What multipliers of rows prove about the target; the bounds of the variables take what is left over.
+
+    A row's multiplier is ``share * scale / common``, its scaled line times ``share / common``: all in integers, where
+    ``common`` holds the denominators of the target too.
+    """
+    rest = {j: int(value * common) for j, value in target.items() if value}
+    for i, share in shares.items():
         for j, value in program.lines[i]:
-            rest[j] = rest.get(j, Fraction(0)) - share * value
-    total: Side = Fraction(0)
+            rest[j] = rest.get(j, 0) - share * value
+    weights = {i: share * program.scales[i] for i, share in shares.items()}
+    bounds = {j: value for j, value in sorted(rest.items()) if value}
     named: dict[str, Fraction] = {}
+    found: list[tuple[int, Fraction]] = []
+    is_proved = True
     sources = (
         (weights, program.row_sides, program.row_name),
-        ({j: value for j, value in sorted(rest.items()) if value}, program.bounds, program.column_name),
+        (bounds, program.bounds, program.column_name),
     )
     for parts, (low, high), name in sources:
         for place, weight in parts.items():
             side = high[place] if weight > 0 else low[place]
-            total = None if total is None or side is None else total + weight * side
-            named[name(place, float(weight > 0) - 0.5)] = weight
-    return Limit(total, tuple(named.items()))
+            if side is None:
+                is_proved = False
+            elif side:
+                found.append((weight, side))
+            named[name(place, float(weight > 0) - 0.5)] = Fraction(weight, common)
+    return Limit(_total(found) / common if is_proved else None, tuple(named.items()))
+
+
+def _total(parts: list[tuple[int, Fraction]]) -> Fraction:
+    """The sum of the products, over one denominator."""
+    shared = lcm(*[side.denominator for _, side in parts])
+    return Fraction(sum([weight * side.numerator * (shared // side.denominator) for weight, side in parts]), shared)
 
 
 def holds(program: Program, plan: Whole) -> bool:
@@ -157,5 +172,7 @@ def _within(value: int, common: int, low: Side, high: Side) -> bool:
 
 def _side(status: int, low: Side, high: Side) -> Fraction:
     """Where a nonbasic variable or row stands."""
-    order = (high, low) if status == UPPER else (low, high)
-    return next((side for side in order if side is not None), Fraction(0))
+    first, second = (high, low) if status == UPPER else (low, high)
+    if first is not None:
+        return first
+    return NOTHING if second is None else second

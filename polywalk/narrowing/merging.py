@@ -8,7 +8,7 @@ other point lies on all its facets and more.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
 import numpy as np
@@ -18,7 +18,26 @@ from polywalk.narrowing.hull import Integers, plane_through, smallest
 from polywalk.narrowing.outline import Edge, Outline
 
 
-def merged(found: Outline) -> list[Edge]:
+@dataclass(frozen=True)
+class Merged:
+    """The facets that remain, and at how many corners rounding keeps them from meeting in one point.
+
+    Parameters
+    ----------
+    edges : tuple of Edge
+    corners : int
+        How many corners there are.
+    split : int
+        At so many of them more facets meet than would do, and with rounded numbers not exactly in one point: a region
+        made of these facets has several corners there.
+    """
+
+    edges: tuple[Edge, ...]
+    corners: int
+    split: int
+
+
+def merged(found: Outline) -> Merged:
     """The facets that remain, each through its vertices where these lie exactly on one plane."""
     on = [frozenset(np.flatnonzero(column).tolist()) for column in found.near.incidence().T]
     largest = [
@@ -30,7 +49,18 @@ def merged(found: Outline) -> list[Edge]:
     refitted = (
         _refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest
     )
-    return [_cleaned(edge, found) for edge in refitted]
+    edges = tuple(_cleaned(edge, found) for edge in refitted)
+    points = [p for p in corners if found.generators[p][0]]
+    meeting = ([edge for edge, k in zip(edges, largest, strict=True) if p in on[k]] for p in points)
+    return Merged(edges, len(points), sum(_is_split(through, found.chosen) for through in meeting))
+
+
+def _is_split(edges: Sequence[Edge], chosen: Sequence[int]) -> bool:
+    """Whether the facets through a corner do not meet in one point exactly."""
+    if len(edges) < len(chosen):
+        return False
+    rows = ((edge.limit, *map(Fraction, edge.direction)) for edge in edges)
+    return plane_through([integer_row([row[k] for k in chosen])[0] for row in rows], len(chosen)) is None
 
 
 def _cleaned(edge: Edge, found: Outline) -> Edge:

@@ -8,6 +8,7 @@ from fractions import Fraction
 from math import atan2
 
 from polywalk.bigmodel import BigModel
+from polywalk.bigmodel.telling import counted
 from polywalk.errors import SolverError
 from polywalk.exact import exact as number
 from polywalk.linear import farkas
@@ -16,7 +17,7 @@ from polywalk.narrowing import building
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
 from polywalk.narrowing.conflict import conflict
-from polywalk.narrowing.merging import merged
+from polywalk.narrowing.merging import Merged, merged
 from polywalk.narrowing.outline import Edge, Outline
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.proof import Exact, Proof
@@ -98,12 +99,26 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
             raise
         found.wrap()
     wording = building.Wording(wide.near, _value_axis(wide.big, wide.keep))
-    rows = _complete(found, wording) if found.is_complete else _partial(found, wording)
-    return _shadow(wide, list(rows), asks.runs, touch, found.is_complete)
+    if not found.is_complete:
+        return _shadow(wide, _partial(found, wording), asks.runs, touch, False)
+    edges: Sequence[Edge] = found.edges
+    if touch:
+        whole = merged(found)
+        edges, wide = whole.edges, replace(wide, notes=(*wide.notes, *_told(whole)))
+    return _shadow(wide, _complete(found, edges, wording), asks.runs, touch, True)
 
 
-def _complete(found: Outline, wording: building.Wording) -> Iterable[building.Row]:
-    edges = sorted(merged(found) if found.touch else found.edges, key=_turn)
+def _told(whole: Merged) -> Iterable[str]:
+    """How many corners are one in truth, where the model has several."""
+    if whole.split:
+        yield (
+            f"{counted(whole.corners, 'corner')}; at {whole.split:,} of them more facets meet than would do, and "
+            "rounding makes several vertices of such a one in the model; exact=True does not, and takes longer"
+        )
+
+
+def _complete(found: Outline, edges: Sequence[Edge], wording: building.Wording) -> list[building.Row]:
+    edges = sorted(edges, key=_turn)
     return [building.row_of(edge, not found.touch, wording) for edge in (*edges, *found.equalities)]
 
 
@@ -114,7 +129,7 @@ def _turn(edge: Edge) -> tuple[float, ...]:
     return (atan2(row[1], row[0]),) if len(row) == 2 else row
 
 
-def _partial(found: Outline, wording: building.Wording) -> Iterable[building.Row]:
+def _partial(found: Outline, wording: building.Wording) -> list[building.Row]:
     """The facets of the hull so far, proved or not."""
     proved = {(edge.direction, edge.limit): edge for edge in found.edges}
     return [

@@ -213,3 +213,16 @@ def test_a_stated_size_is_exact() -> None:
     assert later.tolerance is not None
     assert "not claimed" in str(later)
     assert [vertex.point for vertex in found.region.vertices] == [vertex.point for vertex in later.region.vertices]
+
+
+def test_corners_that_rounding_splits_are_counted() -> None:
+    """In floats a corner of four facets becomes two vertices of the model; the true number is told."""
+    onto = ("level[5]", "level[15]", "objective")
+    rough, exact = (shadow(harbour_day(), onto, within="0.5%", exact=way) for way in (False, True))
+    corners = exact.region.vertices
+    crowded = sum(len(corner.active) > 3 for corner in corners)
+    assert crowded >= 20
+    assert len(rough.region.vertices) > len(corners)
+    assert f"{len(corners)} corners; at {crowded} of them more facets meet than would do" in str(rough)
+    assert "more facets meet" not in str(exact)
+    assert "more facets meet" not in str(shadow(harbour_day(), onto[:2], exact=False))
