@@ -136,4 +136,4 @@ def _end(row: Constraint, rhs: Fraction | None) -> str:
     """The right-hand side that ends the conflict, and the way there: "≤ 4" means at most so much."""
     if rhs is None:
         return ""
-    return f"{'≥' if rhs > row.rhs else '≤'} {short(rhs)}"
+    return f"{'≥' if rhs > row.rhs else '≤'} {short(rhs).replace('≈', 'about ')}"

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import replace
 from fractions import Fraction
 
 import numpy as np
@@ -11,16 +10,17 @@ import numpy as np
 from polywalk.bigmodel import BigModel, locate
 from polywalk.errors import ModelError, SolverError, UnknownName
 from polywalk.exact import exact
-from polywalk.linear import optimum
+from polywalk.linear import farkas, optimum
 from polywalk.model import Model
 from polywalk.narrowing.adding import sparse, with_row
 from polywalk.narrowing.answer import SHOWN, Completion, Named, Range, Verdict
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.conflict import conflict, irreducible
-from polywalk.narrowing.cutting import cut
+from polywalk.narrowing.cutting import only
 from polywalk.narrowing.given import values_of
 from polywalk.narrowing.nearby import ends, nearby
 from polywalk.narrowing.program import Program
+from polywalk.narrowing.results import Shadow
 from polywalk.narrowing.settling import settled_by
 from polywalk.narrowing.shadow import shadow
 from polywalk.narrowing.solver import Solver
@@ -100,7 +100,7 @@ def _held(big: BigModel, asked: Named) -> Program:
     """The big model with a row for every asked value, which is kept exactly beside its float."""
     held = big
     for name, value in asked:
-        held = with_row(held, f"{name} as planned", ([big.index(name)], [1.0]), float(value), float(value))
+        held = with_row(held, _planned(name), ([big.index(name)], [1.0]), float(value), float(value))
     return Program(held, (), {row: value for row, (_, value) in zip(held.rows[big.m :], asked, strict=True)})
 
 
@@ -154,6 +154,11 @@ def _impossible(big: BigModel, asked: Named, found: Model) -> Completion:
     if all(_is_own(big, row.name) for row in found.constraints):
         return Completion(asked, "impossible", conflict=found, relaxed=ends(found), notes=(NO_PLAN,))
     near, is_exact = nearby(big, asked)
+    limits: tuple[Range, ...] = ()
+    if len(asked) == 1 and near:
+        wanted = shadow(big, (asked[0][0],))
+        limits = tuple((name, *ends) for name, ends in wanted.region.ranges.items())
+        found = _at_the_limit(big, asked[0], wanted) or found
     return Completion(
         asked,
         "impossible",
@@ -161,8 +166,26 @@ def _impossible(big: BigModel, asked: Named, found: Model) -> Completion:
         relaxed=ends(found),
         nearest=near,
         is_nearest_proved=is_exact,
-        limits=_limits(big, asked),
+        limits=limits,
+        notes=() if near else (NO_PLAN,),
     )
+
+
+def _at_the_limit(big: BigModel, asked: tuple[str, Fraction], wanted: Shadow) -> Model | None:
+    """The conflict that ends where the variable's range does, of what stops it there; None where that is not proved."""
+    name, value = asked
+    for row, facet in zip(wanted.model.constraints, wanted.facets, strict=True):
+        if row.holds((value,)) or not facet.is_proved or len(facet.multipliers) > SHOWN:
+            continue
+        used = [other for other, _ in (*facet.multipliers, *facet.backward)]
+        proof = farkas(only(big, list(dict.fromkeys(used))).with_constraint(_planned(name), {name: 1}, "==", value))
+        return None if proof is None else irreducible(big, proof)
+    return None
+
+
+def _planned(name: str) -> str:
+    """What the row is called that holds a variable at its asked value."""
+    return f"{name} as planned"
 
 
 def _is_own(big: BigModel, name: str) -> bool:
@@ -172,15 +195,6 @@ def _is_own(big: BigModel, name: str) -> bool:
     except UnknownName:
         return False
     return True
-
-
-def _limits(big: BigModel, asked: Named) -> tuple[Range, ...]:
-    """The range of a single variable; () where several were asked, or there is no plan at all."""
-    if len(asked) != 1:
-        return ()
-    name = asked[0][0]
-    found = shadow(big, (name,)).region.ranges.get(name)
-    return () if found is None else ((name, *found),)
 
 
 def _whole(big: BigModel, asked: Named) -> Completion:
@@ -193,29 +207,14 @@ def _whole(big: BigModel, asked: Named) -> Completion:
         return Completion(asked, "possible", asked, len(asked), is_whole=True)
     close = all(one.verdict == "violated within solver tolerance" for one in broken)
     near, is_exact = nearby(big, asked)
+    title = big.name or "the big model"
     return Completion(
         asked,
         "possible within solver tolerance" if close else "impossible",
-        conflict=_broken(big, [one.constraint for one in broken[:SHOWN]]),
+        conflict=only(big, [one.constraint for one in broken[:SHOWN]], f"what a plan breaks in {title}"),
         violated=tuple((one.constraint, -one.slack) for one in broken),
         nearest=near,
         is_nearest_proved=is_exact,
         is_whole=True,
         notes=() if near else (NO_PLAN,),
     )
-
-
-def _broken(big: BigModel, names: Sequence[str]) -> Model:
-    """These constraints alone, in the variables they touch."""
-    parts = []
-    for name in names:
-        what, place, _ = locate(big, name)
-        parts.append((name, cut(big, [place], []) if what else cut(big, [], [place])))
-    used = tuple(dict.fromkeys(variable for _, part in parts for variable in part.variables))
-    rows = []
-    for name, part in parts:
-        row = part.constraint(name)
-        given = dict(zip(part.variables, row.coefficients, strict=True))
-        rows.append(replace(row, coefficients=tuple(given.get(variable, Fraction(0)) for variable in used)))
-    units = tuple(pair for pair in big.units if pair[0] in {*used, *names})
-    return Model(used, tuple(rows), units=units, name=f"what a plan breaks in {big.name or 'the big model'}")

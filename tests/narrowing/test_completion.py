@@ -95,8 +95,15 @@ def test_it_reads_as_an_answer() -> None:
 def test_values_beyond_the_bounds_are_an_answer() -> None:
     said = pw.probe(DAY, {"pump[7]": -1})
     assert said.conflict is not None
-    assert [row.name for row in said.conflict.constraints] == ["pump[7] as planned", "pump[7] lower"]
+    assert [row.name for row in said.conflict.constraints] == ["pump[7] lower", "pump[7] as planned"]
     assert said.limits == (("pump[7]", 0, Fraction(1000, 237)),)
+
+
+def test_the_conflict_of_one_value_ends_where_its_range_does() -> None:
+    """Many constraints contradict a pump of 100 MW; those that stop it at 5 MW are told."""
+    said = pw.probe(BigModel.from_model(HARBOUR), {"pump": 100})
+    assert said.relaxed == (("grid connection", 40), ("pump as planned", 5))
+    assert said.limits == (("pump", 0, 5),)
 
 
 def test_whole_plans() -> None:
