@@ -2,8 +2,8 @@
 
 Each facet of the hull so far is asked: how far does the model reach in the direction of your normal? Either no further,
 which proves the facet, or to a new point (or along a ray), which joins the hull. Flat shadows are found first: what
-reaches equally far both ways is an equality. The newest facets are asked first: their normals are near the last one, so
-that the next linear program starts near its end.
+reaches equally far both ways is an equality. The newest facets are asked first, for the last point lies on them; an
+older one is asked from the basis of a point of its own, so that each linear program starts near its end.
 
 References
 ----------
@@ -13,6 +13,7 @@ Symbolic and Numerical Computation for Artificial Intelligence, 1992.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, field
 from fractions import Fraction
 from typing import Protocol
@@ -26,8 +27,8 @@ from polywalk.narrowing.support import Reach
 class Asks(Protocol):
     """Whoever answers how far the model reaches."""
 
-    def ask(self, direction: Integers) -> Reach:
-        """The answer in this direction."""
+    def ask(self, direction: Integers, facet: Sequence[Integers] = ()) -> Reach:
+        """The answer in this direction, near these points of a facet."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -147,8 +148,8 @@ class Outline:
         forth, back = self._limits[direction], self._limits[tuple(-value for value in direction)]
         self.equalities.append(Edge(direction, forth.limit, forth.proof, back.proof, True))
 
-    def _ask(self, direction: Integers) -> Reach:
-        found = self.asks.ask(direction)
+    def _ask(self, direction: Integers, facet: Sequence[Integers] = ()) -> Reach:
+        found = self.asks.ask(direction, facet)
         if found.limit is not None:
             self._limits[direction] = Edge(direction, found.limit, found.proof)
         return found
@@ -161,9 +162,10 @@ class Outline:
             return []  # the far side of an unbounded shadow
         if direction in self._limits:  # its furthest point is in the hull already
             return self._prove(self._limits[direction])
-        if self.touch and self.near.on_one_facet(members(hull.facets[facet])):
+        corners = members(hull.facets[facet])
+        if self.touch and self.near.on_one_facet(corners):
             return []
-        generator = self._ask(direction).generator
+        generator = self._ask(direction, [self.generators[k] for k in corners]).generator
         edge = self._limits.get(direction)
         if edge is not None and (product(row, generator) >= 0 or self._gap(row, edge) <= self.touch):
             return self._prove(edge)

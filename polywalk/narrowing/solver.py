@@ -179,6 +179,14 @@ class Solver:
         self._cold_iterations = None
         self._lasts = self._expected()
 
+    def standing(self) -> Any:
+        """The last basis, for `stand_at`."""
+        return self._solver.getBasis()
+
+    def stand_at(self, basis: Any) -> None:
+        """Start the next run from a basis this solver had."""
+        self._solver.setBasis(basis)
+
     def restore(self, statuses: tuple[list[int], list[int]]) -> None:
         """Start the next run from this basis, a plan."""
         kinds = [self._module.HighsBasisStatus(k) for k in range(5)]

@@ -9,6 +9,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
+from typing import Any
 
 import numpy as np
 
@@ -60,6 +61,8 @@ class _Asked:
     def __init__(self, program: Program) -> None:
         self.program = program
         self.solver = Solver(program.big)
+        self._bases: dict[Integers, Any] = {}
+        self._at: Integers = ()
 
     @cached_property
     def cone(self) -> Program:
@@ -75,6 +78,16 @@ class _Asked:
     def runs(self) -> int:
         """How many linear programs were solved."""
         return self.solver.runs + (self.cone_solver.runs if "cone_solver" in self.__dict__ else 0)
+
+    def _approach(self, facet: Sequence[Integers]) -> None:
+        """Stand at a point of the facet, the newest: from there the way beyond it is short."""
+        known = [generator for generator in facet if generator in self._bases]
+        if known and self._at not in known:
+            self.solver.stand_at(self._bases[known[-1]])
+
+    def _arrive(self, generator: Integers) -> None:
+        self._at = generator
+        self._bases[generator] = self.solver.standing()
 
     def _target(self, direction: Sequence[int]) -> Target:
         return {j: Fraction(value) for j, value in zip(self.program.keep, direction, strict=True)}
@@ -93,13 +106,14 @@ def value_of(direction: Sequence[int], generator: Integers) -> Fraction:
 class ExactReach(_Asked):
     """Every answer in fractions: the point keeps every row, the multipliers reach the same value."""
 
-    def ask(self, direction: Integers) -> Reach:
-        """The answer in this direction.
+    def ask(self, direction: Integers, facet: Sequence[Integers] = ()) -> Reach:
+        """The answer in this direction; ``facet`` has points to start from.
 
         Raises
         ------
         EmptyModelError, InexactError
         """
+        self._approach(facet)
         self._aim(self.solver, direction)
         status = self.solver.run()
         found = None
@@ -118,6 +132,7 @@ class ExactReach(_Asked):
         generator = self._point(plan)
         if limit.value != value_of(direction, generator):
             return None
+        self._arrive(generator)
         return Reach(generator, limit.value, Exact(limit.multipliers))
 
     def _point(self, plan: Whole) -> Integers:
@@ -190,13 +205,14 @@ def _read(program: Program, solver: Solver, target: Target) -> tuple[Whole | Non
 class FloatReach(_Asked):
     """Every answer as HiGHS gives it; numbers near a simple fraction are taken for it."""
 
-    def ask(self, direction: Integers) -> Reach:
-        """The answer in this direction.
+    def ask(self, direction: Integers, facet: Sequence[Integers] = ()) -> Reach:
+        """The answer in this direction; ``facet`` has points to start from.
 
         Raises
         ------
         EmptyModelError, SolverError
         """
+        self._approach(facet)
         self._aim(self.solver, direction)
         status = self._run(self.solver)
         if status == "infeasible":
@@ -213,6 +229,7 @@ class FloatReach(_Asked):
                 )
             return Reach((0, *ray))
         generator = whole([Fraction(1), *map(snapped, self.solver.values(self.program.keep))])
+        self._arrive(generator)
         size = max(map(abs, direction)) or 1
         return Reach(generator, snapped(self.solver.value) * size, self._proof(size))
 
