@@ -19,9 +19,6 @@ NAMED = 2
 MANY = 9
 """Constraints from which on a second one says no more than the first."""
 
-PLAIN = 10**6
-"""Integers up to this size are coefficients someone could have typed; larger ones are scaled."""
-
 
 @dataclass(frozen=True)
 class Wording:
@@ -103,11 +100,11 @@ def _plain(edge: Edge, exact: bool, value: int | None) -> tuple[tuple[Fraction, 
     largest, scale = max(map(abs, edge.direction)), edge.limit.denominator
     if value is not None and edge.direction[value]:
         largest = abs(edge.direction[value])
-    elif largest * scale <= PLAIN:
+    elif edge.is_plain:
         return tuple(Fraction(scale * value) for value in edge.direction), scale * edge.limit, Fraction(scale)
     row = [Fraction(value, largest) for value in edge.direction]
     limit = edge.limit / largest
-    if not exact:
+    if not exact and not edge.is_plain and not edge.is_met:
         row, limit = [_decimal(value) for value in row], _decimal(limit)
     return tuple(row), limit, Fraction(1, largest)
 

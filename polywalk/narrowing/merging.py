@@ -2,7 +2,7 @@
 
 What the hull holds after rounding has facets in several pieces and vertices that are none. A facet keeps the points
 that lie on it within the tolerance; one whose points all lie on another is dropped; a point stays a vertex where no
-other point lies on all its facets and more.
+other point lies on all its facets and more. Facets that meet in one point are moved so that they do so exactly.
 """
 
 from __future__ import annotations
@@ -15,7 +15,9 @@ import numpy as np
 
 from polywalk.exact import Row, integer_row
 from polywalk.narrowing.hull import Integers, plane_through, smallest
+from polywalk.narrowing.meeting import SOLID, Incidence, met
 from polywalk.narrowing.outline import Edge, Outline
+from polywalk.narrowing.tolerances import TOLERANCES
 
 
 @dataclass(frozen=True)
@@ -28,13 +30,19 @@ class Merged:
     corners : int
         How many corners there are.
     split : int
-        At so many of them more facets meet than would do, and with rounded numbers not exactly in one point: a region
-        made of these facets has several corners there.
+        At so many of them more facets meet than would do, and not exactly in one point: a region made of these facets
+        has several corners there.
+    met : int
+        At so many of them more facets meet than would do, and were moved to meet exactly.
+    moved : float
+        How far facets were moved for that, as a share of the shadow's size.
     """
 
     edges: tuple[Edge, ...]
     corners: int
     split: int
+    met: int = 0
+    moved: float = 0.0
 
 
 def merged(found: Outline) -> Merged:
@@ -50,17 +58,50 @@ def merged(found: Outline) -> Merged:
         _refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest
     )
     edges = tuple(_cleaned(edge, found) for edge in refitted)
-    points = [p for p in corners if found.generators[p][0]]
-    meeting = ([edge for edge, k in zip(edges, largest, strict=True) if p in on[k]] for p in points)
-    return Merged(edges, len(points), sum(_is_split(through, found.chosen) for through in meeting))
+    points = [p for p in sorted(corners) if found.generators[p][0]]
+    through = [frozenset(j for j, k in enumerate(largest) if p in on[k]) for p in points]
+    split = sum(_is_split([edges[j] for j in part], found.chosen) for part in through)
+    whole = Merged(edges, len(points), split)
+    return (_met(whole, found, points, through) if split else None) or whole
+
+
+def _met(whole: Merged, found: Outline, points: Sequence[int], through: Sequence[frozenset[int]]) -> Merged | None:
+    """The facets moved so that none of the corners is split; None where that moves them too far, or cannot be done."""
+    if len(found.chosen) != SOLID + 1:
+        return None
+    solid = Incidence(
+        points=[tuple(Fraction(found.generators[p][k], found.generators[p][0]) for k in found.chosen) for p in points],
+        planes=[_chosen(edge, found.chosen) for edge in whole.edges],
+        on=[frozenset(i for i, part in enumerate(through) if j in part) for j in range(len(whole.edges))],
+        fixed=frozenset(j for j, edge in enumerate(whole.edges) if edge.is_plain),
+    )
+    moved = met(solid)
+    if moved is None or moved[1] > TOLERANCES.meet:
+        return None
+    edges = []
+    for edge, row in zip(whole.edges, moved[0], strict=True):
+        full = [Fraction(0)] * (found.size + 1)
+        for k, value in zip(found.chosen, row, strict=True):
+            full[k] = value
+        scale = _matching(full[1:], edge.direction)
+        if scale is None:
+            return None
+        turned = _turned(edge, tuple(value * scale for value in full[1:]), -full[0] * scale)
+        edges.append(edge if edge.is_plain else replace(turned, is_met=True))
+    crowded = sum(len(part) > SOLID for part in through)
+    return replace(whole, edges=tuple(edges), split=0, met=crowded, moved=moved[1])
+
+
+def _chosen(edge: Edge, chosen: Sequence[int]) -> Row:
+    row = (-edge.limit, *map(Fraction, edge.direction))
+    return tuple(row[k] for k in chosen)
 
 
 def _is_split(edges: Sequence[Edge], chosen: Sequence[int]) -> bool:
     """Whether the facets through a corner do not meet in one point exactly."""
     if len(edges) < len(chosen):
         return False
-    rows = ((edge.limit, *map(Fraction, edge.direction)) for edge in edges)
-    return plane_through([integer_row([row[k] for k in chosen])[0] for row in rows], len(chosen)) is None
+    return plane_through([integer_row(_chosen(edge, chosen))[0] for edge in edges], len(chosen)) is None
 
 
 def _cleaned(edge: Edge, found: Outline) -> Edge:

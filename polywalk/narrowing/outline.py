@@ -23,6 +23,9 @@ from polywalk.narrowing.nearness import Nearness
 from polywalk.narrowing.proof import Proof
 from polywalk.narrowing.support import Reach
 
+PLAIN = 10**6
+"""Integers up to this size are coefficients someone could have typed; larger ones are scaled."""
+
 
 class Asks(Protocol):
     """Whoever answers how far the model reaches."""
@@ -44,6 +47,8 @@ class Edge:
     backward : Proof or None
         For an equality: those that add up to -direction . x <= -limit.
     is_equality : bool
+    is_met : bool
+        Whether it was moved to meet others exactly: then its numbers must not be rounded.
     """
 
     direction: Integers
@@ -51,6 +56,12 @@ class Edge:
     proof: Proof | None = None
     backward: Proof | None = None
     is_equality: bool = False
+    is_met: bool = False
+
+    @property
+    def is_plain(self) -> bool:
+        """Whether its numbers, as the smallest integers, are so short that someone could have typed them."""
+        return max(map(abs, self.direction)) * self.limit.denominator <= PLAIN
 
 
 @dataclass

@@ -143,7 +143,7 @@ class Shadow(Shown):
 
     def table(self) -> Table:
         """One row a facet, with the constraints of the big model that stop it, the largest multipliers first."""
-        kind = "exact" if self.tolerance is None else f"floats, within {self.tolerance:g} of its size"
+        kind = "exact" if self.tolerance is None else f"floats, within {self.tolerance:.2g} of its size"
         part = "partial outline, " if self.is_partial else ""
         title = (
             f"{self.whole.name or 'shadow'} onto {', '.join(self.model.variables)}: {part}"

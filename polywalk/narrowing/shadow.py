@@ -105,11 +105,17 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
     if touch:
         whole = merged(found)
         edges, wide = whole.edges, replace(wide, notes=(*wide.notes, *_told(whole)))
+        touch += whole.moved
     return _shadow(wide, _complete(found, edges, wording), asks.runs, touch, True)
 
 
 def _told(whole: Merged) -> Iterable[str]:
-    """How many corners are one in truth, where the model has several."""
+    """At how many corners more facets meet than would do: moved to meet exactly, or several vertices in the model."""
+    if whole.met:
+        yield (
+            f"{counted(whole.corners, 'corner')}; at {whole.met:,} of them more facets meet than would do, within the "
+            "tolerance: they were moved to meet exactly"
+        )
     if whole.split:
         yield (
             f"{counted(whole.corners, 'corner')}; at {whole.split:,} of them more facets meet than would do, and "

@@ -22,6 +22,9 @@ class Tolerances:
     touch : float
         A facet of a float shadow counts as proved where the model reaches no further beyond it than this share of the
         shadow's size: a little more than ``solver``, since a point is off by a few of these.
+    meet : float
+        How far, as a share of the shadow's size, facets of a float shadow may be moved to meet in one corner: a few
+        ``touch``, since a corner of four facets is off by what all four are.
     solver : float
         HiGHS's ``primal_feasibility_tolerance`` and ``dual_feasibility_tolerance``. Its default of 1e-7 hides corners
         that stand out by less (Goldfarb's cube of 7 variables has such); it accepts nothing below 1e-10.
@@ -45,6 +48,7 @@ class Tolerances:
     nonzeros: int = 8_000
     cells: int = 40_000
     touch: float = 2e-9
+    meet: float = 1e-8
     solver: float = 1e-9
     snap: float = 1e-9
     simple: int = 100_000
