@@ -54,6 +54,10 @@ class ModelError(PolywalkError, ValueError):
     """Parts that do not make a model (wrong lengths, no variable, a bound above its partner)."""
 
 
+class LargeModelError(ModelError, AttributeError):
+    """A large sparse model where the exact small one is needed; ``culprit`` is what was asked of it."""
+
+
 class AlgebraError(PolywalkError, ValueError):
     """Text that is not linear algebra; ``culprit`` is the text, ``place`` the column it went wrong (from 0)."""
 

@@ -12,6 +12,7 @@ KINDS = {
     "UnknownName": KeyError,
     "DuplicateName": ValueError,
     "ModelError": ValueError,
+    "LargeModelError": AttributeError,
     "AlgebraError": ValueError,
     "WalkError": ValueError,
     "DrawingError": ValueError,

@@ -10,7 +10,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field, fields, replace
 from functools import cached_property
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -19,7 +19,7 @@ from polywalk.bigmodel.checking import check, frozen
 from polywalk.bigmodel.exchange import from_model, to_model
 from polywalk.bigmodel.keeping import only
 from polywalk.bigmodel.naming import dropped, moved
-from polywalk.bigmodel.telling import overview
+from polywalk.bigmodel.telling import missing, overview
 from polywalk.errors import unknown
 from polywalk.exact import exact
 from polywalk.model import Goal, Model
@@ -117,6 +117,11 @@ class BigModel(Shown):
     def __hash__(self) -> int:
         return hash((self.variables, self.rows, self.name))
 
+    if not TYPE_CHECKING:  # a type checker names what is missing by itself
+
+        def __getattr__(self, name: str) -> Any:
+            raise missing(self, name)
+
     def __reduce__(self) -> tuple[Any, ...]:  # arrays come back writable otherwise
         return type(self), tuple(getattr(self, part.name) for part in fields(self))
 
@@ -184,8 +189,6 @@ class BigModel(Shown):
         """The matrix as a scipy.sparse.csc_array."""
         return self.csr().tocsc()
 
-    # edits: each returns a changed copy
-
     def with_rhs(self, name: str, rhs: object) -> BigModel:
         """A copy with another right-hand side: of a row or a bound, by its name in the exact Model."""
         value = float(exact(rhs))
@@ -219,8 +222,6 @@ class BigModel(Shown):
     def only(self, *variables: str) -> BigModel:
         """A copy with these variables and the rows that have no others; its last note names the rows left out."""
         return only(self, variables)
-
-    # to the exact model and back
 
     def to_model(self) -> Model:
         """The exact Model with the same rows and bounds; a row without a side is left out.

@@ -6,7 +6,8 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from polywalk.model import GOAL
+from polywalk.errors import LargeModelError
+from polywalk.model import GOAL, Model
 from polywalk.table import Table
 
 if TYPE_CHECKING:
@@ -37,3 +38,15 @@ def _kinds(lower: Floats, upper: Floats) -> tuple[int, int, int]:
     """How many have no end, two different ones, and two equal ones."""
     low, high, same = np.isfinite(lower), np.isfinite(upper), lower == upper
     return int((~low & ~high).sum()), int((low & high & ~same).sum()), int(same.sum())
+
+
+def missing(big: BigModel, name: str) -> AttributeError:
+    """The error for an attribute that is not there: of the exact Model, then the way to one, or of neither."""
+    if name.startswith("_") or not (hasattr(Model, name) or name in Model.__dataclass_fields__):
+        return AttributeError(f"{type(big).__name__!r} object has no attribute {name!r}", name=name, obj=big)
+    return LargeModelError(
+        f"expected an exact Model, got {big.name or 'a model'!r}, a BigModel of {big.n:,} variables, which has no "
+        f"{name!r}. Cut it down first: section(big, keep).model, shadow(big, onto).model, big.only(...).to_model(), or "
+        "conflict(big) where it has no plan; big.to_model() where it is small.",
+        name,
+    )

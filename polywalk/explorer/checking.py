@@ -20,7 +20,11 @@ KINDS = ("right-hand side", "cost")
 def model(given: Any) -> Model:
     """A model."""
     if not isinstance(given, Model):
-        raise ModelError(f"expected a Model, got {type(given).__name__}; build one with from_algebra.", given)
+        raise ModelError(
+            f"expected a Model, got {type(given).__name__}; build one with from_algebra, or cut a "
+            "large one down with section or shadow.",
+            given,
+        )
     return given
 
 

@@ -238,6 +238,19 @@ def test_a_model_too_large_for_zeros_says_what_to_do():
         big.to_model()
 
 
+@pytest.mark.parametrize("ask", ["region", "review", "optimum", "walk", "sensitivity", "suspects", "draw", "bases"])
+def test_where_an_exact_model_is_needed_the_way_to_one_is_told(ask):
+    with pytest.raises(ModelError, match=r"got 'Harbour Row, 24 hours', a BigModel of 96 variables.*section.*shadow"):
+        getattr(pw, ask)(pw.scenarios.harbour_day(), *([0] if ask == "bases" else []))
+
+
+def test_other_attributes_are_missing_as_usual():
+    assert not hasattr(plant(), "constraints")
+    assert not hasattr(plant(), "nonsense")
+    with pytest.raises(AttributeError, match="'BigModel' object has no attribute 'nonsense'"):
+        plant().nonsense  # noqa: B018
+
+
 def test_it_prints_counts_and_escapes_its_name():
     shown = plant(name="<b>plant</b>", notes=("one note",))
     assert "3 rows, 5 nonzeros" in str(shown)
