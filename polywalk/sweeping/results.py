@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterable
 from dataclasses import dataclass
 from functools import cached_property
@@ -21,14 +22,15 @@ class Item:
     result : object or None
         None where it failed.
     error : Exception or None
-    marks : tuple of (str, str), optional
-        What it has in common with others: pairs of a kind ("shape", "error", ...) and a text.
+    marks : tuple of (str, str, str), optional
+        What it has in common with others: a kind ("shape", "error", ...), a text with # for every number, and its own
+        text.
     """
 
     name: str
     result: Any = None
     error: BaseException | None = None
-    marks: tuple[tuple[str, str], ...] = ()
+    marks: tuple[tuple[str, str, str], ...] = ()
 
 
 @dataclass(frozen=True)
@@ -40,7 +42,7 @@ class Group:
     kind : str
         "shape", the severity of a finding, "failed", or "result".
     what : str
-        In words; numbers that differ are shown as #.
+        In words; where several models share it, numbers are shown as #.
     names : tuple of str
         Of the models, in order; the first one is the example.
     """
@@ -49,6 +51,9 @@ class Group:
     what: str
     names: tuple[str, ...]
 
+
+TOLD = 5
+"""Odd ones out that are named."""
 
 ORDER = ("failed", "error", "warning", "note", "shape", "result")
 
@@ -108,19 +113,37 @@ class Sweep(Shown):
     @cached_property
     def groups(self) -> tuple[Group, ...]:
         """The distinct failures, findings and shapes: the worst kind first, within a kind the commonest first."""
-        found: dict[tuple[str, str], dict[str, None]] = {}
+        found: dict[tuple[str, str], dict[str, str]] = {}
         for item in self.items:
-            for mark in item.marks:
-                found.setdefault(mark, {})[item.name] = None
-        groups = [Group(kind, what, tuple(names)) for (kind, what), names in found.items()]
+            for kind, what, own in item.marks:
+                texts = found.setdefault((kind, what), {})
+                texts[item.name] = what if item.name in texts and texts[item.name] != own else own
+        groups = [
+            Group(kind, what if len(texts) > 1 else next(iter(texts.values())), tuple(texts))
+            for (kind, what), texts in found.items()
+        ]
         return tuple(sorted(groups, key=lambda group: (_rank(group.kind), -len(group.names))))
+
+    @property
+    def alone(self) -> dict[str, int]:
+        """The models that something is true of and of no other, with how many such things, the most first."""
+        counts = Counter(group.names[0] for group in self.groups if len(group.names) == 1)
+        return dict(counts.most_common())
 
     def table(self) -> Table:
         """The groups, with how many models are in each and an example."""
         failed = len(self.failed)
         title = f"{self.what} of {len(self.items)} models: {len(self.items) - failed} done, {failed} failed"
         rows = tuple((group.kind, group.what, len(group.names), group.names[0]) for group in self.groups)
-        return Table(title, ("kind", "what", "models", "example"), rows, self.notes)
+        return Table(title, ("kind", "what", "models", "example"), rows, (*self.notes, *self._told()))
+
+    def _told(self) -> tuple[str, ...]:
+        """The odd ones out, where there are few beside many."""
+        if not 0 < len(self.alone) <= len(self.items) // 10:
+            return ()
+        named = [f"{name} ({count})" for name, count in list(self.alone.items())[:TOLD]]
+        more = f" and {len(self.alone) - TOLD} more" if len(self.alone) > TOLD else ""
+        return (f"like no other, in so many lines: {', '.join(named)}{more}",)
 
 
 def _rank(kind: str) -> int:

@@ -14,7 +14,7 @@ from polywalk.model import Model
 from polywalk.region import Region, region
 from polywalk.sweeping.results import Item
 
-Marks = tuple[tuple[str, str], ...]
+Mark = tuple[str, str, str]
 QUESTIONS = {
     "region": ("polywalk.region", "region"),
     "review": ("polywalk.reviewing", "review"),
@@ -31,6 +31,9 @@ def _parts(number: Fraction) -> tuple[type[Fraction], tuple[int, int]]:
 
 ForkingPickler.register(Fraction, _parts)
 """Between processes a Fraction travels as two integers, not as text: a region takes a quarter less time on its way."""
+
+TOLD_ALREADY = "conflict"
+"""A finding that repeats for one model what another one ("no-plan") has said."""
 
 NUMBER = re.compile(r"≈?(?<![\w.])-?\d+(?:[./]\d+)*(?:e[+-]?\d+)?(?![\w.]*\w)(?!-\w)")
 VERTEX = re.compile(r"\bV\d+\b")
@@ -61,18 +64,28 @@ def _answer(ask: Callable[[Model], Any], name: str, model: Model) -> Item:
 def failure(name: str, error: BaseException) -> Item:
     """The item of a model without a result."""
     kind = "" if isinstance(error, PolywalkError) else f"{type(error).__name__}: "
-    return Item(name, error=error, marks=(("failed", f"{kind}{general(str(error))}"),))
+    return Item(name, error=error, marks=(_mark("failed", f"{kind}{error}"),))
 
 
-def _marks(model: Model, result: Any) -> Iterator[tuple[str, str]]:
+def _marks(model: Model, result: Any) -> Iterator[Mark]:
     if hasattr(result, "findings"):
         for finding in result.findings:
-            yield finding.severity, f"{finding.code}: {general(finding.title)}"
-        yield "shape", shape(region(model))
+            if finding.code != TOLD_ALREADY:
+                yield _mark(finding.severity, f"{finding.code}: {finding.title}")
+        yield _shape_mark(region(model))
     elif isinstance(result, Region):
-        yield "shape", shape(result)
+        yield _shape_mark(result)
     else:
-        yield "result", general(str(result).split("\n", 1)[0])
+        yield _mark("result", str(result).split("\n", 1)[0])
+
+
+def _mark(kind: str, text: str) -> Mark:
+    return kind, general(text), text
+
+
+def _shape_mark(found: Region) -> Mark:
+    text = shape(found)
+    return "shape", text, text
 
 
 def shape(found: Region) -> str:

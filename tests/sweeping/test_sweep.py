@@ -67,13 +67,30 @@ def test_a_review_of_many_tells_its_findings_once(pool):
     assert "hour 5" in str(found)
 
 
+def test_the_odd_one_out_is_named_with_its_numbers():
+    row = pw.scenarios.harbour_row()
+    models = {f"main {k}": row.with_rhs("harbour main", 12 + k % 3) for k in range(40)}
+    models["slip"] = row.with_rhs("harbour main", -12)
+    found = pw.sweep(models)
+    worst = found.groups[0]
+    assert (worst.kind, worst.names) == ("error", ("slip",))
+    assert "#" not in worst.what
+    assert not any(group.what.startswith("conflict") for group in found.groups)
+    assert next(iter(found.alone)) == "slip"
+    assert found.alone["slip"] == sum(group.names == ("slip",) for group in found.groups) > 2
+    assert f"like no other, in so many lines: slip ({found.alone['slip']})" in str(found)
+    shared = [group for group in found.groups if len(group.names) > 1]
+    assert any("#" in group.what for group in shared)
+    assert "like no other" not in str(pw.sweep(dict(list(models.items())[:3])))
+
+
 def test_a_failure_stays_with_its_model(pool):
     for executor in (None, pool):
         found = pw.sweep(plants(8), what=asked.refuses_three, executor=executor)
         assert [item.name for item in found.failed] == ["model 3"]
         assert found.item("model 3").error.culprit == "model 3"
         assert found.results[3] == pw.region(plants(8)[3])
-        assert (found.groups[0].kind, found.groups[0].what) == ("failed", "# is not to be had")
+        assert (found.groups[0].kind, found.groups[0].what) == ("failed", "3 is not to be had")
         assert "7 done, 1 failed" in str(found)
 
 
