@@ -9,6 +9,7 @@ from typing import Literal
 
 from polywalk.exact import short
 from polywalk.model import Constraint, Model
+from polywalk.narrowing.tolerances import TOLERANCES
 from polywalk.table import Shown, Table
 
 SHOWN = 20
@@ -50,6 +51,10 @@ class Completion(Shown):
         Where one variable was asked and is impossible: the range it can have; () otherwise.
     is_whole : bool
         Whether every variable was asked.
+    objective : Fraction or None
+        The objective's value at ``values``, which no plan with what was asked betters (so says HiGHS).
+    optimum : Fraction or None
+        The best value of any plan; None where there is none.
     notes : tuple of str
 
     Examples
@@ -57,11 +62,12 @@ class Completion(Shown):
     >>> import polywalk as pw
     >>> big = pw.BigModel.from_model(pw.scenarios.harbour_row())
     >>> print(pw.completion(big, {"pump": 4, "chips": 4}))
-    pump = 4, chips = 4: possible, for example so
+    pump = 4, chips = 4: possible, at best so
     variable  value
     pump      4
     chips     4
-    tank      0
+    tank      4
+    objective 292 at best: as good as any plan
     """
 
     plan: Named
@@ -75,6 +81,8 @@ class Completion(Shown):
     is_nearest_proved: bool = True
     limits: tuple[Range, ...] = ()
     is_whole: bool = False
+    objective: Fraction | None = None
+    optimum: Fraction | None = None
     notes: tuple[str, ...] = ()
 
     @property
@@ -103,8 +111,23 @@ class Completion(Shown):
         shown = min(self.beside, SHOWN)
         rest = len(self.values) - shown
         more = (f"and {rest:,} more {'variable' if rest == 1 else 'variables'}, see .values",) if rest else ()
-        title = f"{self._told()}: {self.verdict}{', for example so' if self.partial else ''}"
-        return Table(title, ("variable", "value"), self.values[:shown], (*more, *self.notes))
+        how = ", for example so" if self.objective is None else ", at best so"
+        title = f"{self._told()}: {self.verdict}{how if self.partial else ''}"
+        return Table(title, ("variable", "value"), self.values[:shown], (*more, *self._worth(), *self.notes))
+
+    def _worth(self) -> Iterator[str]:
+        if self.objective is None:
+            return
+        told = f"objective {short(self.objective)}{' at best' if self.partial else ''}"
+        if self.optimum is None:
+            yield told
+            return
+        gap = abs(self.objective - self.optimum)
+        if gap <= TOLERANCES.snap * abs(self.optimum):
+            yield f"{told}: as good as any plan"
+            return
+        share = f" ({float(100 * gap / abs(self.optimum)):.2g} %)" if self.optimum else ""
+        yield f"{told}: {short(gap)}{share} from the optimum {short(self.optimum)}"
 
     def _told(self) -> str:
         told = ", ".join(_set(name, value) for name, value in self.plan[:SHOWN])

@@ -14,6 +14,7 @@ from polywalk.linear import farkas, optimum
 from polywalk.model import Model
 from polywalk.narrowing.adding import sparse, with_row
 from polywalk.narrowing.answer import SHOWN, Completion, Named, Range, Verdict
+from polywalk.narrowing.best import best, costs
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.conflict import conflict, irreducible
 from polywalk.narrowing.cutting import only
@@ -23,7 +24,7 @@ from polywalk.narrowing.program import Program
 from polywalk.narrowing.results import Shadow
 from polywalk.narrowing.settling import settled_by
 from polywalk.narrowing.shadow import shadow
-from polywalk.narrowing.solver import Solver
+from polywalk.narrowing.solver import Solver, Status
 from polywalk.narrowing.tolerances import TOLERANCES, simple
 
 NO_PLAN = "the model allows no plan at all, whatever the values; conflict(big) shows why"
@@ -42,8 +43,9 @@ def completion(big: BigModel | Model, plan: Mapping[str, object] | Iterable[obje
     Returns
     -------
     Completion
-        A whole plan with these values; or the constraints that contradict them, with what would have to change. A
-        value beyond the bounds of its variable is such an answer too.
+        A whole plan with these values, the best there is, and how far it is from the optimum; or the constraints that
+        contradict them, with what would have to change. A value beyond the bounds of its variable is such an answer
+        too.
 
     Raises
     ------
@@ -76,16 +78,15 @@ def completion(big: BigModel | Model, plan: Mapping[str, object] | Iterable[obje
         return _whole(big, asked)
     program = _held(big, asked)
     solver = Solver(program.big)
-    solver.aim([0], [0.0])
-    status = solver.run()
+    status, is_best = _solved(solver)
     proved = _plan(program, solver) if status == "optimal" else None
     if proved is not None:
-        return _possible(big, asked, proved)
+        return _possible(big, asked, proved, is_best)
     if program.big.n * (program.big.n + program.big.m) <= TOLERANCES.cells:
         return _decided(big, asked, program)
     if status == "optimal":
         near = [exact(value) if (near := simple(value)) is None else near for value in solver.point().tolist()]
-        return _possible(big, asked, near, "possible within solver tolerance")
+        return _possible(big, asked, near, is_best, "possible within solver tolerance")
     found = conflict(program.big) if status == "infeasible" else None
     if found is None:
         raise SolverError(
@@ -94,6 +95,19 @@ def completion(big: BigModel | Model, plan: Mapping[str, object] | Iterable[obje
             solver.status_text,
         )
     return _impossible(big, asked, found)
+
+
+def _solved(solver: Solver) -> tuple[Status, bool]:
+    """Whether there is a plan, and whether it is the best: any where none is."""
+    big = solver.big
+    if big.goal is not None:
+        sign = 1 if big.goal == "max" else -1
+        solver.aim(range(big.n), [sign * value for value in costs(big)])
+        status = solver.run()
+        if status != "unbounded":
+            return status, True
+    solver.aim(range(big.n), [0.0] * big.n)
+    return solver.run(), False
 
 
 def _held(big: BigModel, asked: Named) -> Program:
@@ -127,17 +141,22 @@ def _plan(program: Program, solver: Solver) -> list[Fraction] | None:
 
 def _decided(big: BigModel, asked: Named, program: Program) -> Completion:
     """The answer of the exact simplex method, where HiGHS's does not hold exactly and the model is small."""
-    model = program.big.to_model().without_objective()
+    model = program.big.to_model()
     for name, value in program.held.items():
         model = model.with_rhs(name, value)
     found = optimum(model)
+    is_best = found.outcome == "optimal"
+    if found.outcome == "unbounded":
+        found = optimum(model.without_objective())
     if found.point is not None:
-        return _possible(big, asked, found.point)
+        return _possible(big, asked, found.point, is_best)
     assert found.infeasibility is not None
     return _impossible(big, asked, irreducible(program.big, found.infeasibility))
 
 
-def _possible(big: BigModel, asked: Named, values: Sequence[Fraction], verdict: Verdict = "possible") -> Completion:
+def _possible(
+    big: BigModel, asked: Named, values: Sequence[Fraction], is_best: bool, verdict: Verdict = "possible"
+) -> Completion:
     """A whole plan: first what was asked, then what shares a row with it."""
     mine = [big.index(name) for name, _ in asked]
     matrix = big.csr()
@@ -146,7 +165,17 @@ def _possible(big: BigModel, asked: Named, values: Sequence[Fraction], verdict: 
     order = list(dict.fromkeys([*mine, *sorted(near)]))
     beside = len(order)
     order = list(dict.fromkeys([*order, *range(big.n)]))
-    return Completion(asked, verdict, tuple((big.variables[j], values[j]) for j in order), beside)
+    named = tuple((big.variables[j], values[j]) for j in order)
+    value, best_value = _worth(big, values) if is_best else (None, None)
+    return Completion(asked, verdict, named, beside, objective=value, optimum=best_value)
+
+
+def _worth(big: BigModel, values: Sequence[Fraction]) -> tuple[Fraction | None, Fraction | None]:
+    """The objective's value at a plan, and the best of any plan; None where there is none."""
+    if big.goal is None:
+        return None, None
+    terms = (exact(cost) * value for cost, value in zip(costs(big), values, strict=True) if cost)
+    return sum(terms, exact(big.constant)), best(big).value
 
 
 def _impossible(big: BigModel, asked: Named, found: Model) -> Completion:
@@ -204,7 +233,8 @@ def _whole(big: BigModel, asked: Named) -> Completion:
         (one for one in settled_by(Program(big, ()), values) if one.verdict != "satisfied"), key=lambda one: one.slack
     )
     if not broken:
-        return Completion(asked, "possible", asked, len(asked), is_whole=True)
+        value, best_value = _worth(big, [value for _, value in asked])
+        return Completion(asked, "possible", asked, len(asked), is_whole=True, objective=value, optimum=best_value)
     close = all(one.verdict == "violated within solver tolerance" for one in broken)
     near, is_exact = nearby(big, asked)
     title = big.name or "the big model"

@@ -46,6 +46,29 @@ def test_random_plans_as_the_exact_model_answers_them() -> None:
     assert min(met.values()) >= 20
 
 
+@pytest.mark.parametrize("variant", ["base", "degenerate", "tied", "flat", "unbounded"])
+def test_a_completion_is_the_best_there_is_and_says_what_it_costs(variant: str) -> None:
+    model = pw.scenarios.harbour_row(variant)
+    big, best, met = BigModel.from_model(model), pw.optimum(model), set()
+    draw = np.random.default_rng(3)
+    for _ in range(25):
+        count = int(draw.integers(1, 4))
+        plan = {model.variables[j]: Fraction(int(draw.integers(0, 9)), 2) for j in draw.permutation(3)[:count]}
+        said, held = pw.probe(big, plan), model
+        for name, value in plan.items():
+            held = held.with_constraint(f"{name} held", {name: 1}, "==", value)
+        known = pw.optimum(held)
+        met.add(known.outcome)
+        assert said.allowed == (known.outcome != "infeasible")
+        assert said.objective == (known.value if known.outcome == "optimal" else None)
+        if known.outcome == "optimal":
+            assert said.optimum == best.value
+            told = "as good as any plan" if known.value == best.value else "from the optimum"
+            assert (told in str(said)) == (best.value is not None)
+    assert "optimal" in met
+    assert ("unbounded" in met) == (variant == "unbounded")
+
+
 def assert_ends(conflict: Model | None, ends: dict[str, Fraction]) -> None:
     """The conflict is one, by a checked proof; at its end it is none any more, and just before it still is."""
     assert conflict is not None
