@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
@@ -35,6 +35,20 @@ class Wording:
     near: str = ""
     value: int | None = None
 
+    def name(self, proof: Proof | None, coefficients: Sequence[Fraction]) -> str:
+        """What a facet is called: after its slopes where it is a price that many constraints make, else after those."""
+        price = 0 if self.value is None else coefficients[self.value]
+        if (
+            price
+            and proof is not None
+            and proof.count >= MANY
+            and any(v for k, v in enumerate(coefficients) if k != self.value)
+        ):
+            others = [value for k, value in enumerate(coefficients) if k != self.value]
+            slopes = ", ".join(f"{float(-value / price) + 0.0:.4g}" for value in others)
+            return f"slope{'s' if len(others) > 1 else ''} {slopes}"
+        return named(proof, self.near)
+
 
 @dataclass(frozen=True)
 class Row:
@@ -59,16 +73,15 @@ def built(rows: Iterable[Row], variables: tuple[str, ...], exact: bool) -> tuple
 def row_of(edge: Edge, exact: bool, wording: Wording = Wording()) -> Row:
     """The row of an inequality: its first coefficient positive, so that x >= 0 reads as such."""
     direction, limit, scale = _plain(edge, exact, wording.value)
-    held = wording.near
     turned = next(value for value in direction if value) < 0
     sign = -1 if turned else 1
     coefficients, factor = tuple(sign * value for value in direction), sign * scale
     forth, back = edge.proof and edge.proof.times(factor), edge.backward and edge.backward.times(-factor)
     if not edge.is_equality:
         sense: Sense = ">=" if turned else "<="
-        return Row(Constraint(named(forth, held), coefficients, sense, sign * limit), forth)
+        return Row(Constraint(wording.name(forth, coefficients), coefficients, sense, sign * limit), forth)
     first, second = (back, forth) if turned else (forth, back)
-    return Row(Constraint(named(first, held), coefficients, "==", sign * limit), first, second)
+    return Row(Constraint(wording.name(first, coefficients), coefficients, "==", sign * limit), first, second)
 
 
 def named(proof: Proof | None, held: str = "") -> str:
