@@ -6,6 +6,7 @@ import argparse
 import os
 import sys
 from collections.abc import Sequence
+from dataclasses import replace
 from pathlib import Path
 
 from polywalk.bigmodel import BigModel
@@ -14,11 +15,12 @@ from polywalk.drawing.writing import write
 from polywalk.errors import DrawingError, ModelError, PolywalkError
 from polywalk.model import Model
 from polywalk.narrowing import conflict, escape, section, shadow, suggest_axes
+from polywalk.narrowing.culprits import ADDED_UP, folded
 from polywalk.narrowing.widening import VALUE_AXES
 from polywalk.reading.mps import from_mps
 from polywalk.reading.toml import from_toml
 from polywalk.region import region
-from polywalk.reviewing import review
+from polywalk.reviewing import Review, review
 from polywalk.scenarios import harbour_row
 from polywalk.walks import ENTERING, Walk, walk
 from polywalk.walks.rules import entering_rule
@@ -72,9 +74,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     if target is not None and (target.is_dir() or not target.parent.is_dir()):
         return _failed(target, "it is a folder" if target.is_dir() else f"there is no folder {str(target.parent)!r}")
     try:
-        if wanted.file is None:
-            return _demo(wanted)
-        return _file(wanted)
+        return _demo(wanted) if wanted.file is None else _file(wanted)
     except PolywalkError as error:
         print(error, file=sys.stderr)
         return BAD_INPUT
@@ -138,7 +138,8 @@ def _demo(wanted: argparse.Namespace) -> int:
     model = harbour_row()
     walks = [walk(model, rule=rule) for rule in wanted.rules]
     print("\n\n".join(str(part) for part in (model, region(model), *walks)))
-    print(f"\n{_comparison(walks)}")
+    counts = ", ".join(f"{len(trace.pivots)} pivots by {trace.rule}" for trace in walks)
+    print(f"\nFrom the same start to the same optimum: {counts}.")
     return _drawn(wanted.html or DEMO_PICTURE, model, walks)
 
 
@@ -150,14 +151,19 @@ def _file(wanted: argparse.Namespace) -> int:
     source = read(wanted.file)
     print(source)
     model = _narrowed(source, wanted)
-    if model.n > DRAWN:  # only a conflict or a way out is ever so large
-        print(f"\nNeither reviewed nor drawn: its {model.n} variables are more than {DRAWN}.")
+    if model.n > DRAWN or model.name.endswith(ADDED_UP):  # only a conflict or a way out is ever so large
+        why = (
+            f"its {model.n} variables are more than {DRAWN}"
+            if model.n > DRAWN
+            else "it is a sum of the big model's rows"
+        )
+        print(f"\nNeither reviewed nor drawn: {why}.")
         return FOUND_ERRORS
-    found = review(model)
+    found = _reviewed(model, has_goal := _has_goal(source))
     print(f"\n{region(model)}\n\n{found}")
-    walks = _walks(model, wanted.rules, _has_goal(source))
-    drawn = CLEAN if wanted.html is None else _drawn(wanted.html, model, walks)
-    return drawn or (FOUND_ERRORS if any(one.severity == "error" for one in found.findings) else CLEAN)
+    walks = _walks(model, wanted.rules, has_goal)
+    code = FOUND_ERRORS if any(one.severity == "error" for one in found.findings) else CLEAN
+    return code if wanted.html is None else _drawn(wanted.html, model, walks) or code
 
 
 def read(path: str) -> Model | BigModel:
@@ -169,20 +175,16 @@ def read(path: str) -> Model | BigModel:
 
 def _narrowed(source: Model | BigModel, wanted: argparse.Namespace) -> Model:
     """The small model: the source itself, its conflict or way out, a section or a shadow."""
-    small = source if isinstance(source, Model) else None
     if not wanted.onto and source.n <= DRAWN and not wanted.within:
-        return small or source.to_model()  # type: ignore[union-attr]
+        return source if isinstance(source, Model) else source.to_model()
     big = source if isinstance(source, BigModel) else BigModel.from_model(source)
-    for name in wanted.onto:
-        if name not in VALUE_AXES:
-            big.index(name)
-    has_goal = big.goal is not None
-    wrong = conflict(source)
+    for name in [one for one in wanted.onto if one not in VALUE_AXES]:
+        big.index(name)  # a slip is told before the long work
+    wrong, has_goal = conflict(source), big.goal is not None
     way_out = escape(source) if wrong is None and has_goal else None
-    if wrong is None and not wanted.onto:
-        wrong = way_out
+    wrong = wrong or (None if wanted.onto else way_out)
     if wrong is not None:
-        print(f"\n{wrong}")
+        print(f"\n{folded(wrong) if wrong.n > DRAWN else wrong}")
         return wrong
     if way_out is not None:
         print(f"\nThere is no optimum, for the objective improves without end; see the\n{way_out}")
@@ -192,6 +194,15 @@ def _narrowed(source: Model | BigModel, wanted: argparse.Namespace) -> Model:
     return part.model
 
 
+def _reviewed(model: Model, has_goal: bool) -> Review:
+    """The review; a shadow misses no objective that its big model has."""
+    found = review(model)
+    if model.objective is None and has_goal:
+        kept = tuple(one for one in found.findings if one.code != "no-objective")
+        found = replace(found, findings=kept, checked=tuple(one for one in found.checked if "no-objective" not in one))
+    return found
+
+
 def _has_goal(source: Model | BigModel) -> bool:
     return (source.objective if isinstance(source, Model) else source.goal) is not None
 
@@ -199,8 +210,7 @@ def _has_goal(source: Model | BigModel) -> bool:
 def _suggested(source: Model | BigModel, has_goal: bool) -> tuple[str, ...]:
     if not has_goal:
         raise ModelError(f"{source.n} variables and no objective: name one to three of them with --onto.", source.name)
-    found = suggest_axes(source)
-    print(f"\n{found}")
+    print(f"\n{(found := suggest_axes(source))}")
     return found.names
 
 
@@ -211,18 +221,12 @@ def _walks(model: Model, rules: Sequence[str], has_goal: bool) -> list[Walk]:
             why = "the objective depends on other variables too; take it as an axis, with --onto ... objective"
         print(f"\nNo walks: {why}.")
         return []
-    found = region(model)
-    if found.status == "empty" or found.lines:
+    if (found := region(model)).status == "empty" or found.lines:
         print(f"\nNo walks: the region {'is empty' if found.status == 'empty' else 'has a line and no vertex'}.")
         return []
     walks = [walk(model, rule=rule) for rule in rules]
     print("".join(f"\n{trace}\n" for trace in walks), end="")
     return walks
-
-
-def _comparison(walks: Sequence[Walk]) -> str:
-    counts = ", ".join(f"{len(trace.pivots)} pivots by {trace.rule}" for trace in walks)
-    return f"From the same start to the same optimum: {counts}."
 
 
 def _drawn(target: Path, model: Model, walks: Sequence[Walk]) -> int:
@@ -235,8 +239,8 @@ def _drawn(target: Path, model: Model, walks: Sequence[Walk]) -> int:
 
 
 def _failed(target: Path, reason: str) -> int:
-    reason = reason.rstrip(".")
-    print(f"The picture could not be written to {target}: {reason}; name another file with --html.", file=sys.stderr)
+    told = f"The picture could not be written to {target}: {reason.rstrip('.')}; name another file with --html."
+    print(told, file=sys.stderr)
     return BAD_INPUT
 
 

@@ -101,6 +101,29 @@ def test_a_large_file_by_its_shadow(plant, capsys, name):
     said = capsys.readouterr().out
     assert "Harbour Row, 24 hours onto pump[7], tank[7]" in said
     assert "the objective depends on other variables too" in said
+    assert "nothing is optimized" not in said
+    assert "no-objective" not in said  # the file has an objective
+
+
+def test_a_file_without_an_objective_is_told_so(plant, capsys):
+    assert main([plant(pw.scenarios.harbour_row().without_objective()), "--onto", "pump", "tank"]) == 0
+    assert "nothing is optimized" in capsys.readouterr().out
+
+
+def test_a_conflict_that_was_added_up_is_not_reviewed(plant, capsys, monkeypatch):
+    monkeypatch.setattr("polywalk.narrowing.culprits.TRYING", 0.5)
+    assert main([plant(pw.scenarios.harbour_year(500).with_rhs("timber", 111))]) == 3
+    said = capsys.readouterr().out
+    assert "relaxed to" in said
+    assert "Neither reviewed nor drawn: it is a sum" in said
+
+
+def test_a_long_conflict_is_folded(plant, capsys):
+    assert main([plant(pw.scenarios.harbour_day().with_rhs("timber", 11.96))]) == 3
+    said = capsys.readouterr().out
+    assert "\ntimber  " in said
+    assert " alike" in said
+    assert said.count("\n") < 40
 
 
 def test_near_the_optimum_with_the_objective_as_an_axis(plant, capsys):
@@ -138,6 +161,7 @@ def test_a_large_conflict_is_told_and_not_drawn(plant, tmp_path, capsys):
     said = capsys.readouterr().out
     assert code == 3
     assert "conflict in" in said
+    assert "look first at 'timber': relaxed to" in said
     assert "Neither reviewed nor drawn" in said
     assert not (tmp_path / "out.html").exists()
 

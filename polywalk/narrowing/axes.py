@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
-from math import isnan
+from math import isclose, isfinite, isnan
 from time import monotonic
 
 import numpy as np
@@ -25,6 +25,10 @@ FIRST = 4
 
 LEAST = 3
 """Variables measured however little time there is: as many as a picture has axes."""
+
+
+TIE = 1e-6
+"""Widths closer than this, relative to their size, are a tie: HiGHS knows them no better."""
 
 
 @dataclass(frozen=True)
@@ -61,7 +65,7 @@ class Axes(Shown):
     within : str
         How near to the optimum.
     names : tuple of str
-        The first three: the axes suggested.
+        The axes suggested: the first three, but for ties.
     measured : int
         How many variables were measured.
     notes : tuple of str
@@ -76,7 +80,7 @@ class Axes(Shown):
     def table(self) -> Table:
         """The widest ranges."""
         rows = tuple(
-            (one.variable, f"{one.low:.6g}", f"{one.high:.6g}", f"{one.width:.6g}") for one in self.ranked[:10]
+            (one.variable, *(_text(value, one) for value in (one.low, one.high, one.width))) for one in self.ranked[:10]
         )
         notes = [f"suggested axes: {', '.join(self.names)}"]
         if self.measured < len(self.ranked):
@@ -92,7 +96,9 @@ def suggest_axes(
     """Variables of a big model worth a picture: those that plans near the optimum disagree on most.
 
     The measure is the width of a variable's range among all plans whose objective is within the given distance of the
-    optimum, in the variable's own unit; two linear programs a variable.
+    optimum, in the variable's own unit; two linear programs a variable. Where widths tie (to six digits), a note says
+    so, and of those that tie a variable goes first whose stem, the text before "[", is not among the suggested yet;
+    then the one furthest, in the order of the model, from those suggested.
 
     Parameters
     ----------
@@ -145,9 +151,46 @@ def suggest_axes(
     for place in progress(measuring.next_ones(end), len(places), "variables"):
         measuring.measure(place)
     ranked = sorted(measuring.ranges(), key=lambda one: -one.width)
-    first = tuple(one.variable for one in ranked[:LEAST])
-    notes = ("integer marks are relaxed",) if big.integers else ()
-    return Axes(tuple(ranked), str(within).strip(), first, len(measuring.done), notes)
+    notes = (*_ties(ranked), *(("integer marks are relaxed",) if big.integers else ()))
+    return Axes(tuple(ranked), str(within).strip(), _suggested(ranked, big.places), len(measuring.done), notes)
+
+
+def _suggested(ranked: Sequence[AxisRange], places: Mapping[str, int]) -> tuple[str, ...]:
+    """The first three; among those as wide as the next one, first another stem, then the furthest from those taken."""
+    left, names = list(ranked), list[str]()
+
+    def apart(one: AxisRange) -> tuple[bool, int]:
+        stems = {_stem(name) for name in names}
+        far = min([abs(places[one.variable] - places[name]) for name in names], default=0)
+        return _stem(one.variable) not in stems, far
+
+    while left and len(names) < LEAST:
+        chosen = max([one for one in left if _as_wide(one, left[0])], key=apart)
+        left.remove(chosen)
+        names.append(chosen.variable)
+    return tuple(names)
+
+
+def _ties(ranked: Sequence[AxisRange]) -> tuple[str, ...]:
+    """What to tell where the width alone does not choose the three."""
+    if len(ranked) <= LEAST or not _as_wide(ranked[LEAST], ranked[LEAST - 1]):
+        return ()
+    tied = sum(_as_wide(one, ranked[LEAST]) for one in ranked)
+    return (f"{tied} variables tie at a range of {ranked[LEAST].width:.6g}; which of them are suggested says little",)
+
+
+def _as_wide(one: AxisRange, other: AxisRange) -> bool:
+    return one.width == other.width or isclose(one.width, other.width, rel_tol=TIE, abs_tol=TIE)
+
+
+def _stem(name: str) -> str:
+    return name.partition("[")[0]
+
+
+def _text(value: float, one: AxisRange) -> str:
+    """The number in print; beside the ends of its range, what is rounding is 0."""
+    size = max([abs(end) for end in (one.low, one.high) if isfinite(end)], default=0.0)
+    return "0" if abs(value) <= TIE * max(1.0, size) else f"{value:.6g}"
 
 
 class _Measuring:

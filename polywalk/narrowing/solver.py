@@ -167,9 +167,7 @@ class Solver:
             self._solver.cancelSolve()
             done.wait(PATIENCE)
             raise
-        self._solver.HandleUserInterrupt = (
-            False  # a run in this thread must not be called back: Ctrl-C would strike there
-        )
+        self._solver.HandleUserInterrupt = False  # a run in this thread must not be called back: Ctrl-C strikes there
 
     def forget(self) -> None:
         """Drop the basis: the next run starts cold."""
@@ -215,6 +213,18 @@ class Solver:
         """The last multipliers of rows and reduced costs of columns, (m,) and (n,) floats."""
         found = self._solver.getSolution()
         return _floats(found.row_dual) * self._factors, _floats(found.col_dual)
+
+    def contradiction(self) -> Any | None:
+        """Multipliers of rows that, with the bounds, contradict each other, (m,) floats; None where HiGHS has none.
+
+        A run anew: presolve would end it before there are any.
+        """
+        self._solver.setOptionValue("presolve", "off")
+        self.forget()
+        self.run()
+        self._solver.setOptionValue("presolve", "choose")
+        _, there, values = self._solver.getDualRay()
+        return np.array(values) * self._factors if there else None
 
     def ray(self) -> Any | None:
         """The ray along which the last run found no end, (n,) floats; None where HiGHS keeps none."""

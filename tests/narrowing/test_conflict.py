@@ -5,6 +5,7 @@ from __future__ import annotations
 import json
 from dataclasses import replace
 from fractions import Fraction
+from itertools import pairwise
 from pathlib import Path
 
 import numpy as np
@@ -17,7 +18,7 @@ from polywalk.bigmodel import BigModel
 from polywalk.errors import ModelError, UnknownName
 from polywalk.linear import farkas, improving_ray, optimum
 from polywalk.model import Model
-from polywalk.narrowing import completion, conflict, escape, suggest_axes
+from polywalk.narrowing import Axes, AxisRange, completion, conflict, escape, suggest_axes
 from polywalk.region import region
 from polywalk.scenarios import harbour_day, harbour_row, harbour_year
 
@@ -195,3 +196,36 @@ def test_axes_of_a_part_within_the_time_given() -> None:
         suggest_axes(harbour_day(), among=["pmp[7]"])
     with pytest.raises(ModelError, match="infeasible"):
         suggest_axes(BigModel.from_model(harbour_row("infeasible")))
+
+
+def test_ties_of_axes_are_told_and_broken_by_stem() -> None:
+    found = suggest_axes(harbour_day(), seconds=60)
+    assert "variables tie at a range of 12" in str(found)
+    assert "e-1" not in str(found)
+    hours = sorted(int(name.partition("[")[2][:-1]) for name in found.names)
+    assert min(later - hour for hour, later in pairwise(hours)) > 5  # all that tie are levels: not those of one evening
+    flat = BigModel(
+        ("a[1]", "a[2]", "a[3]", "b[1]", "c", "d"),
+        ("sum",),
+        [0, 6],
+        list(range(6)),
+        [1] * 6,
+        [-np.inf],
+        [100],
+        [0] * 6,
+        [12, 12, 12, 12, 12, 3],
+        cost=[0] * 6,
+        goal="max",
+    )
+    told = suggest_axes(flat, within=1)
+    assert told.names == ("a[1]", "c", "b[1]")
+    assert "5 variables tie at a range of 12" in str(told)
+    clear = suggest_axes(replace(flat, upper=np.array([12.0, 11, 10, 9, 8, 3])), within=1)
+    assert clear.names == ("a[1]", "a[2]", "a[3]")
+    assert "tie" not in str(clear)
+
+
+def test_rounding_is_printed_as_0() -> None:
+    ranges = (AxisRange("x", -1.7e-13, 12.0, True), AxisRange("y", 0.0, 2e-9, True), AxisRange("z", -np.inf, 1, True))
+    shown = Axes(ranges, "1%", ("x", "y", "z"), 3).table().rows
+    assert shown == (("x", "0", "12", "12"), ("y", "0", "0", "0"), ("z", "-inf", "1", "inf"))
