@@ -105,6 +105,7 @@ def section(big: BigModel | Model, keep: Sequence[str], at: Values = "optimum") 
     Returns
     -------
     Section
+        With ``model`` (an ordinary Model), ``settled`` (the constraints that became constant), ``snaps`` and ``notes``.
 
     Raises
     ------

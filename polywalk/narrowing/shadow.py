@@ -49,7 +49,9 @@ def shadow(big: BigModel | Model, onto: Sequence[str], within: object = None, ex
     Returns
     -------
     Shadow
-        Empty, flat and unbounded shadows are ordinary results.
+        With ``model`` (an ordinary Model to draw, review, explore), ``region``, ``facets`` and ``facet(name)`` (what
+        stops the plan there), ``tolerance`` (None where all is exact) and ``notes``. Empty, flat and unbounded shadows
+        are ordinary results.
 
     Raises
     ------

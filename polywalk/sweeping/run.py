@@ -43,6 +43,7 @@ def sweep(
     Returns
     -------
     Sweep
+        With ``items``, ``item(name)``, ``results``, ``groups``, ``alone`` (models like no other) and ``failed``.
         Results in the order of the models. A model that fails, or whose worker dies, has its error in its item, and
         nothing of the others is lost; Ctrl-C keeps what is done and marks the rest.
 
