@@ -8,11 +8,11 @@ from functools import cached_property
 
 from polywalk.drawing import basis_places as paper
 from polywalk.drawing.basis_key import hover, key, lettered, letters_of, spelled
+from polywalk.drawing.numbers import brief
 from polywalk.drawing.paths import APART
 from polywalk.drawing.scene import PAPER, Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
-from polywalk.exact import short
 from polywalk.region import vertex_name
 from polywalk.walks import Bases, Exchange, Exit, Route
 
@@ -141,7 +141,7 @@ def _status(chart: Chart) -> str:
     elif chart.bases.model.objective is None:
         text = "without an objective every basis is optimal"
     elif best:
-        text = f"the vertex is optimal, objective {short(chart.bases.members[0].dictionary.objective)}; "
+        text = f"the vertex is optimal, objective {brief(chart.bases.members[0].dictionary.objective)}; "
         text += "every basis shows it" if len(best) == count else f"{len(best)} of {count} bases show it"
     else:
         text = "the farther right, the fewer degenerate pivots until a walk can leave"

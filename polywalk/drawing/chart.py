@@ -6,11 +6,11 @@ from collections.abc import Sequence
 from itertools import pairwise
 
 from polywalk.drawing.course import Course, courses_of, key, reading
+from polywalk.drawing.numbers import brief
 from polywalk.drawing.placing import GLYPH, SIZE, Sheet
 from polywalk.drawing.scene import PAPER, Axis, Label, Line, Mark, Point, Scene
 from polywalk.drawing.subject import coordinates
 from polywalk.drawing.window import Window
-from polywalk.exact import short
 from polywalk.walks import Comparison, Pivot, Walk
 
 APART = 1.6
@@ -136,9 +136,9 @@ def _marks(course: Course, spots: tuple[Point, ...]) -> list[Mark]:
 
 
 def _mark(course: Course, pivot: Pivot, spot: Point) -> Mark:
-    step = f", step {short(pivot.step)}" if pivot.step is not None else ""
+    step = f", step {brief(pivot.step)}" if pivot.step is not None else ""
     what = f"{course.name}, pivot {pivot.number}: {pivot.entering} enters, {pivot.leaving} leaves{step}"
-    there = f"objective {short(pivot.objective_after)} at {coordinates(pivot.point_after)}"
+    there = f"objective {brief(pivot.objective_after)} at {coordinates(pivot.point_after)}"
     role = "stayed" if pivot.kind == "degenerate" else "moved"
     return Mark(spot, role, course.index, hover=f"{what}\n{there}")
 
@@ -182,7 +182,7 @@ def _level(courses: list[Course], window: Window) -> list[Line]:
         return []
     height = float(values[0])
     part = ((window.low[0], height), (window.high[0], height))
-    return [Line((part,), "level line", name=f"optimum {short(values[0])}")]
+    return [Line((part,), "level line", name=f"optimum {brief(values[0])}")]
 
 
 def _level_name(line: Line, sheet: Sheet) -> Label:

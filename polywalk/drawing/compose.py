@@ -81,10 +81,10 @@ def _framed(looked: Subject) -> tuple[Window, Shape]:
     frame = around(
         points, [floats(ray.direction) for ray in seen.rays], [floats(line) for line in seen.lines], looked.view.paper
     )
-    drawn = shape(seen, frame if len(frame.low) != 2 else square(frame))
+    drawn = shape(seen, frame if len(frame.low) != 2 else square(frame, looked.units))
     if len(frame.low) == 1:
         return lifted(frame), drawn.lifted
-    return (square(frame) if len(frame.low) == 2 else frame), drawn
+    return (square(frame, looked.units) if len(frame.low) == 2 else frame), drawn
 
 
 def _flat(looked: Subject, frame: Window, drawn: Shape) -> Scene:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 
+from polywalk.drawing.numbers import brief
 from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import Label, Layer, Line, Point, Polygon
 from polywalk.drawing.settling import ring
@@ -13,7 +14,7 @@ from polywalk.drawing.space import inner, slice_of, uphill
 from polywalk.drawing.subject import floats, planar
 from polywalk.drawing.tags import letters
 from polywalk.drawing.window import Window, around, crossings
-from polywalk.exact import Row, short
+from polywalk.exact import Row
 from polywalk.linear import farkas
 from polywalk.model import Constraint, Model
 from polywalk.region import Region, region
@@ -39,12 +40,30 @@ class Conflict:
         """The point of the rest that misses the lifted constraint by least; None where there is no rest."""
         if self.rest is None or self.lifted is None or self.lifted.is_constant:
             return None
-        return max(self.rest.base, key=self.lifted.slack)
+        lifted = self.lifted  # the rest lies on its forbidden side, or, of an equality, on one side
+        return min(self.rest.base, key=lambda point: abs(lifted.slack(point)))
 
     @property
     def short(self) -> Fraction | None:
-        """By how much it misses, in the constraint's own unit."""
-        return None if self.nearest is None or self.lifted is None else -self.lifted.slack(self.nearest)
+        """By how much it misses, in the constraint's own unit; not negative."""
+        return None if self.nearest is None or self.lifted is None else abs(self.lifted.slack(self.nearest))
+
+    def miss(self, model: Model) -> str:
+        """That in words, with the constraint's unit, or that of all variables it only adds up."""
+        if self.short is None or self.lifted is None:
+            return ""
+        terms = [
+            (model.unit(name), value) for name, value in zip(model.variables, self.lifted.coefficients, strict=True)
+        ]
+        units = {unit for unit, value in terms if value}
+        plain = all(abs(value) <= 1 and value.denominator == 1 for _, value in terms)
+        unit = model.unit(self.lifted.name) or (units.pop() if plain and len(units) == 1 else "")
+        return f"misses by {brief(self.short)}{f' {unit}' if unit else ''}"
+
+    @property
+    def excerpt(self) -> bool:
+        """Whether what is left goes on beyond every picture."""
+        return self.rest is not None and bool(self.rest.rays or self.rest.lines)
 
 
 def conflict(model: Model) -> Conflict:
@@ -99,12 +118,12 @@ def gap(found: Conflict) -> tuple[Point, ...]:
     return foot, tuple(x - miss * float(a) / inner(row, row) for x, a in zip(foot, inward, strict=True))
 
 
-def shortfall(found: Conflict, sheet: Sheet | None) -> Layer:
+def shortfall(model: Model, found: Conflict, sheet: Sheet | None) -> Layer:
     """The dotted line over the gap, with its size."""
     ends = tuple(planar(point) for point in gap(found))
     if not ends or found.short is None or found.lifted is None:
         return Layer()
-    text = f"missed by {short(found.short)}"
+    text = found.miss(model)
     middle = tuple(sum(values) / 2 for values in zip(*ends, strict=True))
     if sheet is None:
         label = Label(text, middle, "name")

@@ -22,7 +22,7 @@ def empty_scene(looked: Subject) -> Scene:
         nothing = Window((0.0,) * count, (1.0,) * count, looked.view.paper)
         return assembled(looked, nothing, (), rows=key(looked, {}, (), found), said=conflicts.sentence(found))
     frame = conflicts.window(model, found, looked.view.paper)
-    frame = square(frame) if model.n == 2 else frame
+    frame = square(frame, looked.units) if model.n == 2 else frame
     rest = shape(found.rest, frame) if found.rest is not None else None
     if model.n == 3:
         return _in_space(looked, found, frame, rest)
@@ -39,7 +39,7 @@ def _in_space(looked: Subject, found: Conflict, frame: Window, rest: Shape | Non
         plane.region(rest, "rest") if rest else Layer(),
         conflicts.faces(model, found, rest),
         conflicts.borders(model, found, frame),
-        conflicts.shortfall(found, None),
+        conflicts.shortfall(model, found, None),
         evidence.layer(looked, frame, None, rest),
         tagged,
     )
@@ -51,7 +51,7 @@ def _in_plane(looked: Subject, found: Conflict, frame: Window, rest: Shape | Non
     sheet = Sheet(frame)
     body = plane.region(rest, "rest") if rest else Layer()
     conflicts.keep_names_clear(body, sheet)
-    gap = conflicts.shortfall(found, sheet)
+    gap = conflicts.shortfall(looked.seen.model, found, sheet)
     lines, absent = plane.constraints(looked, sheet, found.names)
     layers = (body, lines, gap, evidence.layer(looked, frame, sheet))
     return settled(looked, sheet, layers, absent=absent, found=found, said=conflicts.sentence(found))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from polywalk.drawing.scene import PAPER
@@ -51,6 +51,14 @@ class Format:
     def key_width(self) -> float:
         """How wide the key is."""
         return self.width - self.key_left - (6 if self.key == "beside" else MARGIN)
+
+    def fitted(self, left: float) -> Format:
+        """The format with so much room beside the drawing, if it has less: a page grows, a slide's key gets narrower,
+        and a column is shrunk to its width again."""
+        more = max(left - self.left, 0.0)
+        width = self.width if self.key == "beside" and self.height is not None else self.width + more
+        zoom = self.zoom * self.width / width if self.key == "below" else self.zoom
+        return replace(self, left=self.left + more, width=width, zoom=zoom)
 
 
 FORMATS: dict[Size, Format] = {

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from polywalk.drawing.placing import Sheet, upright
 from polywalk.drawing.plane import BEYOND, chord
 from polywalk.drawing.scene import Label, Layer, Line, Polygon
@@ -9,7 +11,6 @@ from polywalk.drawing.settling import beside_line, ring
 from polywalk.drawing.space import slice_of, uphill
 from polywalk.drawing.subject import Subject, floats, planar
 from polywalk.drawing.window import Window
-from polywalk.exact import short
 from polywalk.model import Constraint, Objective
 
 ARROW = {2: 46.0, 3: 0.2}
@@ -49,7 +50,10 @@ def _direction(subject: Subject, goal: Objective, window: Window, sheet: Sheet |
         return Layer(lines=(line,), labels=(Label(TREND[goal.goal], head, "note", shift=(0, 10)),))
     end = sheet.pixel(head)
     sheet.lines.append((sheet.pixel(foot), end))
-    spots = tuple(ring(end, TREND[goal.goal], "note", 4.0, sheet.pixel(foot)))
+    middle = tuple((a + b) / 2 for a, b in zip(end, sheet.pixel(foot), strict=True))
+    spots = tuple(
+        replace(spot, foot=spot.foot and middle) for spot in ring(end, TREND[goal.goal], "note", 4.0, sheet.pixel(foot))
+    )
     return Layer(lines=(line,), labels=(Label(TREND[goal.goal], head, "note", spots=spots),))
 
 
@@ -69,7 +73,7 @@ def _level(subject: Subject, goal: Objective, window: Window, sheet: Sheet | Non
     value = subject.region.value
     if value is None:
         return Layer()
-    text = f"objective = {short(value)}"
+    text = f"objective = {subject.worth(value)}"
     row = Constraint("level", goal.coefficients, "==", value - goal.constant)
     if sheet is None:
         corners = slice_of(floats(row.coefficients), float(row.rhs), _near(subject, window))

@@ -5,10 +5,10 @@ from __future__ import annotations
 from fractions import Fraction
 
 from polywalk.drawing.conflict import Conflict
+from polywalk.drawing.numbers import apart, row_text
 from polywalk.drawing.paths import walk_text
 from polywalk.drawing.scene import KeyPart, KeyRow
 from polywalk.drawing.subject import Subject, coordinates, floats
-from polywalk.exact import short
 from polywalk.model import GOAL, Constraint
 from polywalk.region import vertex_name
 from polywalk.walks import Walk
@@ -49,7 +49,7 @@ def _marks(subject: Subject, found: Conflict | None) -> tuple[KeyRow, ...]:
         verb = "falls" if goal.goal == "min" else "rises"
         rows.append(KeyRow("objective", f"direction in which the objective {verb} (goal: {GOAL[goal.goal]})"))
         if subject.region.value is not None:
-            rows.append(KeyRow("level line", f"where the objective is {short(subject.region.value)}"))
+            rows.append(KeyRow("level line", f"where the objective is {subject.worth(subject.region.value)}"))
     names = coordinates(subject.axes)
     for ray in seen.rays:
         better = goal is not None and ray.change is not None and goal.better(ray.change, Fraction(0))
@@ -82,9 +82,20 @@ def _conflict(subject: Subject, found: Conflict) -> tuple[KeyRow, ...]:
         name = found.lifted.name
         rows.append(KeyRow("rest", f"not allowed either: only what would be left without {name}"))
         if found.nearest is not None and found.short is not None:
-            miss = f"the nearest point of that, {coordinates(found.nearest)}, misses {name} by {short(found.short)}"
+            miss = f"the point of that nearest to {name}, {coordinates(found.nearest)}, {found.miss(subject.model)}"
             rows.append(KeyRow("short", miss))
+        rows += _excerpt(subject, found)
     return tuple(rows)
+
+
+def _excerpt(subject: Subject, found: Conflict) -> list[KeyRow]:
+    """That a picture shows only a part of what is left, and where no constraint of the model keeps that above 0."""
+    if not found.excerpt or found.rest is None:
+        return []
+    said = "arrows: there it goes on without limit; the picture is an excerpt around where the constraints come nearest"
+    free = [name for name, (low, _) in found.rest.ranges.items() if low is None]
+    below = f"; nothing here keeps {', '.join(free)} from being negative" if free else ""
+    return [KeyRow("open edge", said + below)]
 
 
 def _is_half(row: Constraint | None) -> bool:
@@ -115,8 +126,8 @@ def _degenerate(subject: Subject) -> list[KeyRow]:
 
 def _optimum(subject: Subject) -> str:
     names = {vertex.point: f"{vertex_name(k)} " for k, vertex in enumerate(subject.seen.vertices)}
-    places = [f"{names.get(point, 'the shadow ')}{coordinates(point)}" for point in subject.optimal]
-    value = f"objective {short(subject.region.value)}" if subject.region.value is not None else ""
+    places = [f"{names.get(point, 'the shadow ')}{subject.place(point)}" for point in subject.optimal]
+    value = f"objective {subject.worth(subject.region.value)}" if subject.region.value is not None else ""
     face = subject.region.optimal
     if face is not None and (face.rays or face.lines):
         return f"optimum: {value} at {', '.join(places)} and on without end"
@@ -139,7 +150,7 @@ def _walks(subject: Subject) -> tuple[KeyRow, ...]:
 def _walk(subject: Subject, index: int, walk: Walk) -> KeyRow:
     """What a walk did, and the vertices it passed."""
     names = {floats(vertex.point): vertex_name(k) for k, vertex in enumerate(subject.seen.vertices)}
-    stops = [names.get(subject.along(point)) or f"outside {coordinates(point)}" for point in walk.points]
+    stops = [names.get(subject.along(point)) or f"outside {subject.place(point)}" for point in walk.points]
     path = [stop for stop, before in zip(stops, ["", *stops[:-1]], strict=True) if stop != before]
     shown = path if len(path) <= MOST_STOPS else [*path[: MOST_STOPS - 2], "...", path[-1]]
     onward = " → on without end" if walk.end == "unbounded" else ""
@@ -155,9 +166,9 @@ def _vertices(subject: Subject, letters: dict[str, str]) -> tuple[KeyRow, ...]:
     rows = []
     for k in listed:
         vertex = seen.vertices[k]
-        value = f"  objective {short(vertex.objective)}" if vertex.objective is not None else ""
+        value = f"  objective {subject.worth(vertex.objective)}" if vertex.objective is not None else ""
         names = ", ".join(letters.get(name, name) for name in vertex.active)
-        rows.append(KeyRow("point", f"{coordinates(vertex.point)}{value}: {names}", tag=vertex_name(k)))
+        rows.append(KeyRow("point", f"{subject.place(vertex.point)}{value}: {names}", tag=vertex_name(k)))
     left = len(seen.vertices) - len(listed)
     if left:
         rows.append(KeyRow("point", f"and {left} more vertices", tag=""))
@@ -168,6 +179,7 @@ def _constraints(
     subject: Subject, tags: dict[str, str], absent: tuple[str, ...], found: Conflict | None, faces: dict[str, str]
 ) -> tuple[KeyRow, ...]:
     rows, model = [], subject.seen.model
+    rhs = apart(row.rhs for row in model.constraints)
     flat = set(subject.seen.equalities)
     for index, row in enumerate(model.constraints):
         note = ""
@@ -179,7 +191,7 @@ def _constraints(
             note = "   (outside this picture)"
         elif row.name not in faces and len(model.variables) == 3:
             note = "   (makes no face)"
-        text = f"{row.name}: {row.text(model.variables)}{note}"
+        text = f"{row.name}: {row_text(row, model.variables, rhs)}{note}"
         role = "conflict line" if found is not None and row.name in found.names else "constraint"
         rows.append(KeyRow(role, text, index, tags.get(row.name, "")))
     return tuple(rows)

@@ -7,7 +7,8 @@ from typing import Any
 
 from polywalk.drawing.camera import Camera
 from polywalk.drawing.notes import plane_notes, space_notes
-from polywalk.drawing.scene import Scene
+from polywalk.drawing.scales import GROUPED
+from polywalk.drawing.scene import Axis, Scene
 from polywalk.drawing.theme import FONT, Theme
 from polywalk.drawing.tracing import html
 
@@ -42,10 +43,16 @@ def _plane(drawn: Scene, theme: Theme) -> dict[str, Any]:
         look = {"range": [axis.low, axis.high], "gridcolor": theme.grid, "zeroline": False, "tickcolor": theme.quiet}
         found[name] = look | {"title": {"text": html(axis.title)}, "visible": bool(axis.title), "showgrid": False}
         found[name] |= {"linecolor": theme.grid, "mirror": True, "showline": True, "exponentformat": "none"}
+        found[name] |= {"separatethousands": _large(axis), "automargin": True}
         found[name] |= {"tick0": 0, "dtick": axis.spacing} if axis.spacing else {}
     if abs(drawn.scale[0] - drawn.scale[1]) <= 1e-9 * drawn.scale[0]:  # equal units but for rounding
         found["yaxis"] |= {"scaleanchor": "x", "scaleratio": 1}
     return found
+
+
+def _large(axis: Axis) -> bool:
+    """Whether the digits of an axis's numbers stand in groups of three, as in the static picture."""
+    return max(abs(axis.low), abs(axis.high)) >= GROUPED
 
 
 def _size(drawn: Scene) -> float:
@@ -74,6 +81,6 @@ def _space(drawn: Scene, theme: Theme) -> dict[str, Any]:
     for name, axis in zip("xyz", drawn.axes, strict=True):
         look = {"range": [axis.low, axis.high], "showbackground": False, "gridcolor": theme.grid, "color": theme.text}
         look |= {"zeroline": False, "showspikes": False, "linecolor": theme.quiet, "nticks": 6}
-        look |= {"exponentformat": "none"}
+        look |= {"exponentformat": "none", "separatethousands": _large(axis)}
         space[f"{name}axis"] = look | {"title": {"text": html(axis.title)}}
     return {"scene": space}

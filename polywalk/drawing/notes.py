@@ -13,6 +13,9 @@ from polywalk.drawing.tracing import html
 IN_SPACE = {"stay", "note", "name", "culprit", "evidence name", "part"}
 """Roles of words that would be lost in a body: they stand in front of it."""
 
+ROUND = 6
+"""Plotly's number of a round arrow head."""
+
 AWAY = (30.0, 40.0)
 """Pixels from a point to the words joined to it in space: across, up."""
 
@@ -36,6 +39,8 @@ def _in_plane(label: Label, theme: Theme) -> dict[str, Any]:
     if label.target:
         note |= {"x": label.target[0], "y": label.target[1], "showarrow": True, "arrowhead": 0, "arrowwidth": 1}
         note |= {"ax": label.point[0], "ay": label.point[1], "axref": "x", "ayref": "y"}
+        if label.names_border:
+            note |= {"arrowhead": ROUND, "arrowcolor": theme.style("constraint", label.index).colour}
     return note
 
 

@@ -37,7 +37,9 @@ class Pair:
         points = [floats(point) for one in both for point in one.base] or [(0.0,) * len(self.axes)]
         rays = [floats(ray.direction) for one in both for ray in one.rays]
         found = around(points, rays, [floats(line) for one in both for line in one.lines], self.view.paper)
-        return square(found) if len(self.axes) == 2 else found
+        return (
+            square(found, [self.found.before.model.unit(name) for name in self.axes]) if len(self.axes) == 2 else found
+        )
 
     def shape(self, region: Region) -> Shape:
         """The drawn pieces of one region."""

@@ -3,13 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass
-from math import floor, hypot, log10
+from dataclasses import dataclass, replace
+from math import hypot
 
 from polywalk.drawing.camera import Camera
-from polywalk.drawing.letters import clipped
 from polywalk.drawing.placing import upright
-from polywalk.drawing.scales import power_of, stated, written
+from polywalk.drawing.scales import scale, ticks
 from polywalk.drawing.scene import Label, Line, Point, Scene, Spot
 from polywalk.drawing.tiles import USUAL, halves
 
@@ -62,15 +61,6 @@ def box(scene: Scene) -> Iterator[Point]:
                 yield (a, b, c)
 
 
-def ticks(low: float, high: float, most: int = 6) -> list[float]:
-    """Round numbers within an interval: steps of 1, 2 or 5 times a power of ten."""
-    rough = (high - low) / most
-    power = 10.0 ** floor(log10(rough))
-    step = next(size * power for size in (1, 2, 5, 10) if size * power >= rough)
-    first = -floor(-low / step)
-    return [k * step for k in range(first, floor(high / step) + 1)]
-
-
 def frame(scene: Scene, on: Paper) -> tuple[list[Line], list[Label]]:
     """The box's floor and the three edges that carry the axes, with their numbers and titles."""
     lines: list[Line] = []
@@ -85,17 +75,19 @@ def frame(scene: Scene, on: Paper) -> tuple[list[Line], list[Label]]:
         if length < SHORTEST:
             continue
         lines.append(Line(((on.at(start), on.at(end)),), "axis"))
-        out, power = _outward(on.at(start), on.at(end), middle), power_of(axis.low, axis.high)
+        out, how = _outward(on.at(start), on.at(end), middle), scale(axis.low, axis.high)
         for value in ticks(axis.low, axis.high, max(1, min(6, int(length / APART)))):
             point = tuple(value if j == k else x for j, x in enumerate(start))
             foot = on.at(point)
-            text = written(value, power)
+            text = how.written(value)
             labels.append(Label(text, foot, "tick", spots=(_tick(foot, out, text),)))
             lines.append(Line(((foot, (foot[0] + 4 * out[0], foot[1] + 4 * out[1])),), "axis"))
             if k < 2:
                 other = tuple(low[j] + high[j] - x if j == 1 - k else x for j, x in enumerate(point))
                 lines.append(Line(((foot, on.at(other)),), "grid"))
-        labels.append(_title(stated(axis.title, power), on.at(start), on.at(end), out, scene.paper))
+        shown = how.titled(axis.title, 0.42 * scene.paper[0], USUAL)
+        named = Label(shown, start, "axis name", hover=how.titled(axis.title))
+        labels.append(_title(named, on.at(start), on.at(end), out, scene.paper))
     return lines, labels
 
 
@@ -105,10 +97,9 @@ def _tick(foot: Point, out: Point, text: str) -> Spot:
     return Spot((foot[0] + (5 + wide) * out[0], foot[1] + (5 + high) * out[1]))
 
 
-def _title(text: str, start: Point, end: Point, out: Point, page: Point) -> Label:
-    """The name of an axis beside its middle, or as near as there is room; too long a name is cut on the drawing."""
-    shown = clipped(text, USUAL, 0.42 * page[0])
-    wide, high = halves(shown, "name")
+def _title(name: Label, start: Point, end: Point, out: Point, page: Point) -> Label:
+    """The name of an axis beside its middle, or as near as there is room; a name too long is cut."""
+    wide, high = halves(name.text, "name")
     spots = []
     turn = upright(start, end)
     if abs(turn) > UPRIGHT:
@@ -121,7 +112,7 @@ def _title(text: str, start: Point, end: Point, out: Point, page: Point) -> Labe
             centre = (x + out[0] * (distance + wide), y + out[1] * (distance + high))
             edge = min(max(centre[0], wide + 3), page[0] - wide - 3), min(max(centre[1], high + 3), page[1] - high - 3)
             spots.append(Spot(edge))
-    return Label(shown, start, "axis name", hover=text, spots=tuple(spots))
+    return replace(name, spots=tuple(spots))
 
 
 def _edge(scene: Scene, on: Paper, k: int) -> Point:

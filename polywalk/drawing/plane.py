@@ -6,7 +6,8 @@ from collections.abc import Iterator, Sequence
 from math import hypot
 
 from polywalk.drawing.placing import Sheet, upright
-from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon
+from polywalk.drawing.scene import Label, Layer, Line, Mark, Point, Polygon, Spot
+from polywalk.drawing.segments import Segment, cross, distance, nearest
 from polywalk.drawing.settling import beside_line, ring
 from polywalk.drawing.shape import Shape
 from polywalk.drawing.subject import Subject, floats, planar
@@ -20,6 +21,9 @@ RADII |= {"lost": 7.0, "gained": 7.0, "old optimum": 11.0}
 
 HATCH_GAP, HATCH = 15.0, 7.0
 """Pixels between the short strokes on a constraint's forbidden side, and their length."""
+
+ALONE, NEARER = 12.0, 4.0
+"""So many pixels from all others a stretch of a line is alone; what is nearer is ranked in such steps."""
 
 BEYOND = 0.6
 """How far lines go on past the window, as a share of it: an interactive figure may be wider, and can be moved."""
@@ -84,16 +88,30 @@ def constraints(subject: Subject, sheet: Sheet, conflict: tuple[str, ...] = ()) 
     said = {
         row.name: ("culprit" if row.name in conflict else "name", subject.letters[row.name]) for _, row, *_ in wanted
     }
-    labels = tuple(_name(sheet, index, row, ends, said[row.name]) for index, row, *ends in wanted)
+    borders = [(start, end) for *_, start, end in wanted]
+    labels = tuple(_name(sheet, index, row, (ends, borders), said[row.name]) for index, row, *ends in wanted)
     return Layer(lines=tuple(lines), labels=labels), tuple(absent)
 
 
-def _name(sheet: Sheet, index: int, row: Constraint, ends: Sequence[Point], said: tuple[str, str]) -> Label:
-    """The name of a border at its role and with its letter, for where there is no room for the name."""
-    out, (start, end), (role, letter) = forbidden(row, sheet), ends, said
+def _name(
+    sheet: Sheet, index: int, row: Constraint, lines: tuple[Sequence[Point], list[Segment]], said: tuple[str, str]
+) -> Label:
+    """The name of a border, in its role, with its letter for where there is no room for the name.
+
+    ``lines`` are the border and all borders: the name stands, or its leader ends, where it is alone if it can.
+    """
+    out, (start, end), (role, letter) = forbidden(row, sheet), lines[0], said
+    others = [line for line in lines[1] if line != (start, end)]
     text = f"{row.name} ({SIGN['==']})" if row.sense == "==" else row.name
     spots = beside_line(start, end, out, (text, role), upright(start, end))
-    chosen = tuple(sorted(spots, key=lambda spot: sheet.covered(spot.centre)))
+
+    def rank(spot: Spot) -> tuple[bool, float]:
+        foot = spot.foot or nearest(spot.centre, (start, end))
+        near = min((distance(foot, line) for line in others), default=ALONE)
+        crossed = sum(cross((spot.centre, foot), line) for line in others)
+        return sheet.covered(spot.centre), crossed - min(near, ALONE) // NEARER
+
+    chosen = tuple(sorted(spots, key=rank))
     return Label(text, sheet.unpixel(start), role, index, spots=chosen, shorter=letter, longer=row.name)
 
 

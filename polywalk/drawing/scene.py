@@ -81,6 +81,11 @@ class Label:
     spots: tuple[Spot, ...] = ()
     shorter: str = ""
 
+    @property
+    def names_border(self) -> bool:
+        """Whether it names a constraint; the line to its point ends in a dot of the constraint's colour."""
+        return bool(self.longer) and self.role in {"name", "tag", "culprit"}
+
 
 @dataclass(frozen=True)
 class KeyRow:

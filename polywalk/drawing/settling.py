@@ -11,6 +11,7 @@ from dataclasses import dataclass, field, replace
 from math import cos, pi, sin
 
 from polywalk.drawing.scene import KeyPart, KeyRow, Label, Point, Spot
+from polywalk.drawing.segments import Segment, cross, distance
 from polywalk.drawing.tiles import Tile, around, halves
 
 ORDER = (
@@ -39,15 +40,19 @@ COVERS |= dict.fromkeys(("tag", "back tag", "part"), (NOTHING, LINES, PATHS))
 NEAR, FAR = (2.0, 6.0, 11.0), (20.0, 32.0, 48.0, 68.0, 92.0, 120.0)
 """Pixels between a mark and its text, beside it and joined to it by a line."""
 
+CLOSE = 8.0
+"""Pixels that the foot of a line to a text keeps off other such lines where it can."""
+
 
 @dataclass
 class Desk:
-    """The paper while texts are settled: its size, what is taken, the lines, and among them the paths of walks."""
+    """The paper while texts are settled: its size, what is taken, the lines, the paths of walks, the lines to feet."""
 
     paper: tuple[float, ...]
     tiles: list[Tile] = field(default_factory=list)
     lines: list[tuple[Point, Point]] = field(default_factory=list)
     paths: list[tuple[Point, Point]] = field(default_factory=list)
+    leaders: list[Segment] = field(default_factory=list)
 
     def keep_clear(self, point: Sequence[float], radius: float) -> None:
         """Keep texts away from a mark."""
@@ -64,6 +69,14 @@ class Desk:
         """Whether the line from a text to its foot passes by every other text and mark."""
         start = tile.border(foot)
         return not any(other.crossed(start, foot) for other in self.tiles if not other.holds(foot))
+
+    def clear(self, tile: Tile, foot: Point | None) -> bool:
+        """Whether the line from a text to its foot keeps off the other ones, so that each leads to one thing."""
+        if foot is None:
+            return True
+        own = (tile.border(foot), foot)
+        others = [line for line in self.leaders if line[1] != foot]
+        return not any(cross(own, line) or min(distance(foot, line), distance(line[1], own)) < CLOSE for line in others)
 
 
 def settled(desk: Desk, labels: Iterable[Label]) -> tuple[tuple[Label, ...], tuple[Label, ...]]:
@@ -87,11 +100,17 @@ def _placed(desk: Desk, label: Label) -> Label | None:
     short = replace(label, text=label.shorter, role="tag") if label.shorter else None
     for form in (label, short) if short else (label,):
         half = halves(form.text, form.role)
-        for covers in COVERS.get(form.role, (NOTHING,)):
+        ways = (NOTHING,) if short and form.role == "back tag" else COVERS.get(form.role, (NOTHING,))
+        for covers in ways:
+            second: tuple[Tile, Spot] | None = None
             for spot in label.spots:
                 tile = Tile(spot.centre, half, spot.angle if form is label else 0.0)
                 if desk.free(tile, covers) and _joins(desk, tile, spot.foot):
-                    return _at(desk, form, tile, spot)
+                    if desk.clear(tile, spot.foot):
+                        return _at(desk, form, tile, spot)
+                    second = second or (tile, spot)
+            if second:
+                return _at(desk, form, *second)
     return None
 
 
@@ -103,6 +122,7 @@ def _at(desk: Desk, label: Label, tile: Tile, spot: Spot) -> Label:
     desk.tiles.append(tile)
     if spot.foot is not None:
         desk.lines.append((tile.border(spot.foot), spot.foot))
+        desk.leaders.append(desk.lines[-1])
     return replace(label, point=tile.centre, angle=tile.angle, target=spot.foot, spots=())
 
 
@@ -114,9 +134,9 @@ def ring(centre: Point, text: str, role: str, radius: float, away: Point | None 
         if away is not None:
             out = (centre[0] - away[0], centre[1] - away[1])
             ways.sort(key=lambda way: -(way[0] * out[0] + way[1] * out[1]))
-        for distance in distances:
+        for off in distances:
             for x, y in ways:
-                gap = radius + distance
+                gap = radius + off
                 spot = (centre[0] + x * gap + _sign(x) * wide, centre[1] + y * gap + _sign(y) * high)
                 yield Spot(spot, foot=centre if led else None)
 
@@ -145,10 +165,10 @@ def beside_line(start: Point, end: Point, normal: Point, label: tuple[str, str],
     for side in (1.0, -1.0):
         for share in shares:
             yield Spot(at(share, side * (high + 7.0)), angle)
-    for distance in (26.0, 42.0, 62.0, 90.0):
+    for off in (26.0, 42.0, 62.0, 90.0):
         for side in (1.0, -1.0):
-            for share in shares[:9]:
-                yield Spot(at(share, side * distance), 0.0, at(share, 0.0))
+            for share in shares:
+                yield Spot(at(share, side * off), 0.0, at(share, 0.0))
 
 
 def unplaced(labels: Sequence[Label]) -> tuple[KeyPart, ...]:

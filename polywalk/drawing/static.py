@@ -6,15 +6,15 @@ import os
 import re
 import warnings
 from dataclasses import dataclass
-from functools import partial
 from pathlib import Path
 from typing import Any
 
 from polywalk.drawing.compose import Source, scene
-from polywalk.drawing.formats import FORMATS, MARGIN, Size
+from polywalk.drawing.formats import FORMATS, MARGIN, Format, Size
+from polywalk.drawing.letters import width
 from polywalk.drawing.projection import laid_flat
-from polywalk.drawing.scales import power_of, stated, written
-from polywalk.drawing.scene import Scene
+from polywalk.drawing.scales import TICK, placed, scale
+from polywalk.drawing.scene import Axis, Scene
 from polywalk.drawing.static_key import paint_key, planned
 from polywalk.drawing.strokes import label, line, mark, points, polygon
 from polywalk.drawing.theme import THEMES, Theme
@@ -23,6 +23,9 @@ from polywalk.drawing.writing import target_of, write
 
 PIXEL = 1 / 96
 """Inches a pixel."""
+
+TITLE, AROUND = 12.0, 36.0
+"""Size of an axis's title, and the pixels beside the drawing that the title and the gaps around it take."""
 
 
 @dataclass(frozen=True, repr=False)
@@ -119,8 +122,6 @@ def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool 
     from io import BytesIO
 
     import matplotlib as mpl
-    from matplotlib.backends.backend_agg import FigureCanvasAgg
-    from matplotlib.figure import Figure
 
     fixed: Any = {
         "svg.hashsalt": "polywalk",
@@ -128,25 +129,35 @@ def rendered(drawn: Scene, theme: Theme, ending: str = "svg", *, outlines: bool 
         "pdf.fonttype": 42,
         "font.family": "DejaVu Sans",
     }
-    flat, form = laid_flat(drawn) if drawn.solid else drawn, FORMATS[size]
-    plan = planned(flat, form)
     with mpl.rc_context(fixed), warnings.catch_warnings():
         warnings.filterwarnings("ignore", "Glyph .* missing")  # an emoji in a name becomes a box, nothing worse
-        figure = Figure(figsize=(form.width * PIXEL, plan.height * PIXEL), facecolor=theme.paper)
-        FigureCanvasAgg(figure)
-        left, bottom = form.left / form.width, plan.bottom / plan.height
-        axes = figure.add_axes((left, bottom, plan.paper[0] / form.width, plan.paper[1] / plan.height))
-        _paint(axes, flat, theme)
-        for text in plan.head:
-            look: Any = {"fontsize": points(text.size), "fontweight": "bold" if text.bold else "normal"}
-            look |= {"ha": "left", "va": "top", "parse_math": False, "color": theme.text}
-            figure.text(MARGIN / form.width, 1 - text.top / plan.height, text.words, **look)
-        if plan.key:
-            paint_key(figure, plan, theme, form)
+        figure, form = painted_figure(drawn, theme, size)
         out = BytesIO()
         stamp: dict[str, Any] = {"svg": {"Date": None}, "pdf": {"CreationDate": None}, "png": {"Software": None}}
         figure.savefig(out, format=ending, dpi=192 * form.zoom, facecolor=theme.paper, metadata=stamp[ending])
     return _resized(out.getvalue(), form.zoom) if ending == "svg" and form.zoom != 1 else out.getvalue()
+
+
+def painted_figure(drawn: Scene, theme: Theme, size: Size) -> tuple[Any, Format]:
+    """A scene with its head and its key as a matplotlib figure, and the format that has room for its numbers."""
+    from matplotlib.backends.backend_agg import FigureCanvasAgg
+    from matplotlib.figure import Figure
+
+    flat = laid_flat(drawn) if drawn.solid else drawn
+    form = FORMATS[size].fitted(_beside(flat))
+    plan = planned(flat, form)
+    figure = Figure(figsize=(form.width * PIXEL, plan.height * PIXEL), facecolor=theme.paper)
+    FigureCanvasAgg(figure)
+    left, bottom = form.left / form.width, plan.bottom / plan.height
+    axes = figure.add_axes((left, bottom, plan.paper[0] / form.width, plan.paper[1] / plan.height))
+    _paint(axes, flat, theme)
+    for text in plan.head:
+        look: Any = {"fontsize": points(text.size), "fontweight": "bold" if text.bold else "normal"}
+        look |= {"ha": "left", "va": "top", "parse_math": False, "color": theme.text}
+        figure.text(MARGIN / form.width, 1 - text.top / plan.height, text.words, **look)
+    if plan.key:
+        paint_key(figure, plan, theme, form)
+    return figure, form
 
 
 def _resized(data: bytes, zoom: float) -> bytes:
@@ -174,23 +185,29 @@ def _paint(axes: Any, drawn: Scene, theme: Theme) -> None:
         label(axes, text, theme)
 
 
-def _number(power: int, value: float, _: int | None) -> str:
-    return written(value, power)
-
-
 def _ticks(axes: Any, drawn: Scene, theme: Theme) -> None:
-    from matplotlib.ticker import MultipleLocator
-
     for side in axes.spines.values():
         side.set_color(theme.grid)
-    axes.tick_params(colors=theme.quiet, labelsize=points(10), length=3)
-    for axis, data in ((axes.xaxis, drawn.axes[0]), (axes.yaxis, drawn.axes[1])):
+    axes.tick_params(colors=theme.quiet, labelsize=points(TICK), length=3)
+    for axis, data, length in zip((axes.xaxis, axes.yaxis), drawn.axes, drawn.paper, strict=False):
         if not data.title:
             axis.set_visible(False)
-        power = power_of(data.low, data.high)
-        axis.set_label_text(stated(data.title, power), fontsize=points(12), color=theme.text, parse_math=False)
-        axis.set_major_formatter(partial(_number, power))
-        if data.spacing:
-            axis.set_major_locator(MultipleLocator(data.spacing))
+            continue
+        said = scale(data.low, data.high).titled(data.title, length, TITLE)
+        axis.set_label_text(said, fontsize=points(TITLE), color=theme.text, parse_math=False)
+        found = _numbers(data, length, across=axis is axes.xaxis)
+        axis.set_ticks([value for value, _ in found], labels=[text for _, text in found])
     if drawn.solid or not (drawn.axes[0].title or drawn.axes[1].title):
         axes.axis("off")
+
+
+def _numbers(axis: Axis, length: float, *, across: bool) -> list[tuple[float, str]]:
+    return list(placed(axis.low, axis.high, length, across=across, spacing=axis.spacing))
+
+
+def _beside(drawn: Scene) -> float:
+    """Pixels that the numbers and the title of the upright axis take up beside the drawing."""
+    axis = drawn.axes[1]
+    if not axis.title:
+        return 0.0
+    return AROUND + max((width(text, TICK) for _, text in _numbers(axis, drawn.paper[1], across=False)), default=0.0)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from polywalk.drawing.subject import Subject, coordinates
-from polywalk.exact import short
+from polywalk.exact import Row
 
 
 def status(looked: Subject) -> str:
@@ -18,8 +18,13 @@ def status(looked: Subject) -> str:
     if whole.value is None:
         return text
     if whole.lines:
-        return f"{text}; optimum {short(whole.value)} along a whole line"
-    places = [coordinates(whole.vertices[k].point) for k in (whole.optimal.vertices if whole.optimal else ())]
+        return f"{text}; optimum {looked.worth(whole.value)} along a whole line"
+    places = [_place(looked, whole.vertices[k].point) for k in (whole.optimal.vertices if whole.optimal else ())]
     where = f" at {places[0]}" if len(places) == 1 else f", tied between {len(places)} vertices" if places else ""
     onward = " and on without end" if whole.optimal and whole.optimal.rays else ""
-    return f"{text}; optimum {short(whole.value)}{where}{onward}"
+    return f"{text}; optimum {looked.worth(whole.value)}{where}{onward}"
+
+
+def _place(looked: Subject, point: Row) -> str:
+    """A point of the model; along the axes it is written as in the key."""
+    return coordinates(point) if looked.projected else looked.place(point)

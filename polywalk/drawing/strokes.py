@@ -32,6 +32,10 @@ STANDOFF, HEAD = 5.0, 0.45
 as a share of the head's scale."""
 
 
+DOT = 5.0
+"""Pixels of the dot, in the colour of a line, at which the leader of its name ends."""
+
+
 def points(pixels: float) -> float:
     """Pixels as the printer's points that matplotlib counts in."""
     return pixels * 0.75
@@ -108,6 +112,9 @@ def label(axes: Any, item: Label, theme: Theme) -> None:
     if item.target:
         x, y = zip(item.point, item.target, strict=True)
         axes.plot(x, y, color=style.colour, linewidth=points(0.9), zorder=DEPTH["note"])
+        if item.names_border:
+            colour = theme.style("constraint", item.index).colour
+            axes.plot(*item.target, "o", color=colour, markersize=points(DOT), zorder=DEPTH["note"])
     size = {"step": 10.0}.get(item.role, style.size)
     frame = None
     if item.role in {"step", "tag", "back tag", "stay", "end", "ends", "target", "part"}:

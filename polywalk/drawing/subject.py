@@ -7,10 +7,11 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 
+from polywalk.drawing.numbers import Written, apart, brief
 from polywalk.drawing.tags import letters
 from polywalk.drawing.view import View
 from polywalk.errors import DrawingError
-from polywalk.exact import Row, full, rounded, short
+from polywalk.exact import Row, full, rounded
 from polywalk.model import Model
 from polywalk.region import Region, Vertex, project, region, vertex_name
 
@@ -37,6 +38,11 @@ class Subject:
     def axes(self) -> tuple[str, ...]:
         """The variables along the axes."""
         return self.seen.model.variables
+
+    @property
+    def units(self) -> tuple[str, ...]:
+        """The units along the axes."""
+        return tuple(self.model.unit(name) for name in self.axes)
 
     @property
     def projected(self) -> bool:
@@ -69,6 +75,22 @@ class Subject:
     def best(self) -> tuple[int, ...]:
         """Indices of the seen vertices that are optimal."""
         return tuple(k for k, vertex in enumerate(self.seen.vertices) if vertex.point in self.optimal)
+
+    @cached_property
+    def written(self) -> tuple[Written, ...]:
+        """How the numbers along each axis are written, so that those of different vertices differ."""
+        points = [*(vertex.point for vertex in self.seen.vertices), *self.optimal]
+        return tuple(map(apart, zip(*points, strict=True))) if points else (brief,) * len(self.axes)
+
+    @cached_property
+    def worth(self) -> Written:
+        """How values of the objective are written, so that those of different vertices differ."""
+        values = [vertex.objective for vertex in self.seen.vertices] + [self.region.value]
+        return apart(value for value in values if value is not None)
+
+    def place(self, point: Row) -> str:
+        """A point in the coordinates of the axes, as the key writes it."""
+        return f"({', '.join(how(value) for how, value in zip(self.written, point, strict=True))})"
 
     def hover(self, index: int) -> str:
         """Everything about one seen vertex, as lines of plain text."""
@@ -126,7 +148,7 @@ def meeting(vertex: Vertex, n: int) -> str:
 
 def coordinates(point: Iterable[Fraction | str]) -> str:
     """A point, or the names of its coordinates, as people write it."""
-    return f"({', '.join(value if isinstance(value, str) else short(value) for value in point)})"
+    return f"({', '.join(value if isinstance(value, str) else brief(value) for value in point)})"
 
 
 def _amount(model: Model, name: str, value: Fraction) -> str:

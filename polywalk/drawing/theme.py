@@ -14,9 +14,9 @@ from functools import cached_property
 from polywalk.drawing.view import Mode
 
 CONSTRAINTS = {
-    "light": ("#0072B2", "#C65300", "#00795A", "#9C4F7C", "#9A6A00", "#2A7FB0", "#7A7000", "#444444"),
-    "dark": ("#56B4E9", "#F08A3C", "#2CC79B", "#E39BC3", "#E69F00", "#8FD0F5", "#F0E442", "#BBBBBB"),
-    "grey": ("#222222", "#555555", "#777777", "#333333", "#666666", "#444444", "#888888", "#111111"),
+    "light": ("#0072B2", "#C65300", "#00795A", "#9C4F7C", "#B07A00", "#444444", "#5F6600", "#3D94C8"),
+    "dark": ("#56B4E9", "#F08A3C", "#2CC79B", "#E39BC3", "#E69F00", "#A8A8A8", "#F0E442", "#A9DCF8"),
+    "grey": ("#101010", "#747474", "#444444", "#949494", "#1F1F1F", "#8A8A8A", "#464646", "#6A6A6A"),
 }
 WALKS = {
     "light": ("#16181D", "#A63A00", "#004E7C", "#6B2C63"),
@@ -56,9 +56,9 @@ class Theme:
     added: str
 
     def constraint(self, index: int) -> Style:
-        """Constraint number ``index``; past eight the dash changes too."""
-        colours = CONSTRAINTS[self.mode]
-        return Style(colours[index % 8], width=1.8, dash=DASHES[(index // 8) % 4])
+        """Constraint number ``index``; every four the dash changes too, and the two together repeat after 32."""
+        dash = DASHES[(index // 4 + index // 16) % 4]
+        return Style(CONSTRAINTS[self.mode][index % 8], width=1.8, dash=dash)
 
     def walk(self, index: int) -> Style:
         """Walk number ``index``: told apart by dash as well as colour; the two together repeat after twelve."""

@@ -6,10 +6,10 @@ from collections.abc import Iterator
 from fractions import Fraction
 from itertools import pairwise
 
+from polywalk.drawing.numbers import brief
 from polywalk.drawing.placing import Sheet
 from polywalk.drawing.scene import PAPER, Axis, KeyPart, KeyRow, Label, Line, Mark, Point, Polygon, Scene
 from polywalk.drawing.window import Window
-from polywalk.exact import short
 from polywalk.reviewing import ValueFunction
 from polywalk.reviewing.extended import told
 from polywalk.reviewing.pieces import Piece
@@ -123,16 +123,16 @@ def _curve(found: ValueFunction, window: Window) -> Iterator[Line]:
         yield Line((arrow,), "onward", arrow="end")
     now, value = float(found.current), found.at(found.current)
     top = window.high[1] if value is None else float(value)
-    yield Line((((now, window.low[1]), (now, top)),), "level line", name=f"now {short(found.current)}")
+    yield Line((((now, window.low[1]), (now, top)),), "level line", name=f"now {brief(found.current)}")
 
 
 def _marks(found: ValueFunction) -> Iterator[Mark]:
     now = found.at(found.current)
     for t, value in found.corners:
-        yield Mark((float(t), float(value)), "breakpoint", hover=f"at {short(t)} the optimal value is {short(value)}")
+        yield Mark((float(t), float(value)), "breakpoint", hover=f"at {brief(t)} the optimal value is {brief(value)}")
     if now is not None:
         place = (float(found.current), float(now))
-        yield Mark(place, "now", hover=f"now {short(found.current)}: optimal value {short(now)}")
+        yield Mark(place, "now", hover=f"now {brief(found.current)}: optimal value {brief(now)}")
 
 
 def _labels(found: ValueFunction, marks: tuple[Mark, ...], sheet: Sheet) -> Iterator[Label]:
@@ -143,7 +143,7 @@ def _labels(found: ValueFunction, marks: tuple[Mark, ...], sheet: Sheet) -> Iter
         else [spot for spot in _spots(found) if spot[0] == found.current]
     )
     for t, value in spots:
-        text = f"({short(t)}, {short(value)})"
+        text = f"({brief(t)}, {brief(value)})"
         x, y = sheet.pixel((float(t), float(value)))
         half = 3.6 * len(text)
         ring = [(x, y + 18), (x, y - 18), (x - half - 14, y), (x + half + 14, y)]
@@ -156,7 +156,7 @@ def _slopes(found: ValueFunction, sheet: Sheet) -> Iterator[Label]:
     for piece in found.pieces:
         left, right = _span(piece, sheet.window)
         (x, y), (u, v) = sheet.pixel((left, _height(piece, left))), sheet.pixel((right, _height(piece, right)))
-        text = f"slope {short(piece.slope)}"
+        text = f"slope {brief(piece.slope)}"
         if ((u - x) ** 2 + (v - y) ** 2) ** 0.5 < 6.5 * len(text) or len(found.pieces) > MOST_LABELS:
             continue
         middle = [(x + share * (u - x), y + share * (v - y)) for share in (0.5, 0.35, 0.65)]
@@ -198,10 +198,10 @@ def _subtitle(found: ValueFunction) -> str:
         return f"{aim}\n{found.table().title}"
     now, slopes = found.at(found.current), found.slopes(found.current)
     if now is None or slopes is None:
-        return f"{aim}\nnow {short(found.current)}: {found.beyond}"
+        return f"{aim}\nnow {brief(found.current)}: {found.beyond}"
     left, right = (told(slope) for slope in slopes)
     slope = f"slope {left}" if left == right else f"slope {left} to the left, {right} to the right"
-    return f"{aim}\nnow {short(found.current)}: optimal value {short(now)}, {slope}"
+    return f"{aim}\nnow {brief(found.current)}: optimal value {brief(now)}, {slope}"
 
 
 def _key(found: ValueFunction) -> tuple[KeyPart, ...]:
@@ -210,17 +210,17 @@ def _key(found: ValueFunction) -> tuple[KeyPart, ...]:
     )
     rows = [KeyRow("curve", f"optimal value; its slope is {meaning}")] if found.pieces else []
     if found.at(found.current) is not None:
-        rows.append(KeyRow("now", f"the model as it is: {found.kind} {short(found.current)}"))
+        rows.append(KeyRow("now", f"the model as it is: {found.kind} {brief(found.current)}"))
     if found.corners:
         rows.append(KeyRow("breakpoint", "where the slope changes, or the curve ends"))
     if any(isinstance(end, Fraction) for end in (found.low, found.high)) or found.outcome != "optimal":
         rows.append(KeyRow("beyond", f"no optimum: the model is {_word(found)}"))
     table = found.table()
     pieces = [
-        KeyRow("none", f"from {told(piece.low)} to {told(piece.high)}: slope {short(piece.slope)}")
+        KeyRow("none", f"from {told(piece.low)} to {told(piece.high)}: slope {brief(piece.slope)}")
         for piece in found.pieces
     ]
-    corners = [KeyRow("none", f"({short(t)}, {short(value)})") for t, value in found.corners]
+    corners = [KeyRow("none", f"({brief(t)}, {brief(value)})") for t, value in found.corners]
     parts = (
         KeyPart("What the marks say", tuple(rows)),
         KeyPart("Pieces", tuple(pieces)),

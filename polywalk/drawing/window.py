@@ -90,10 +90,10 @@ def around(
     return Window(tuple(low), tuple(high), paper)
 
 
-def square(window: Window) -> Window:
-    """A plane window widened until both axes have equal units on paper, where their extents are alike."""
+def square(window: Window, units: Sequence[str]) -> Window:
+    """A plane window widened until both axes have equal lengths on paper, where their units and extents are alike."""
     width, height = window.extent
-    if max(width, height) > LIKE * min(width, height):
+    if len(set(units)) > 1 or max(width, height) > LIKE * min(width, height):
         return window
     unit = max(width / window.paper[0], height / window.paper[1])
     grow = [(pixels * unit - length) / 2 for pixels, length in zip(window.paper, (width, height), strict=True)]

@@ -8,7 +8,7 @@ import polywalk as pw
 from polywalk.drawing import Scene, View, figure, scene
 from polywalk.drawing.camera import Camera
 from polywalk.drawing.projection import laid_flat
-from polywalk.drawing.scales import written
+from polywalk.drawing.scales import Scale
 from polywalk.drawing.tags import letters
 from polywalk.drawing.tiles import Tile, halves
 from polywalk.scenarios import VARIANTS, circling, harbour_row
@@ -144,7 +144,7 @@ def test_large_and_small_numbers_stand_in_powers_that_the_title_states() -> None
         svg = pw.picture(model, size="bare").data.decode()
         assert f">{title}</text>" in svg
         assert "1e" not in "".join(part.split("<")[0] for part in svg.split(">"))
-    names = [written(value, 6) for value in (1_000_000.5, 1_000_001, -2_500_000, -0.0)]
+    names = [Scale(6).written(value) for value in (1_000_000.5, 1_000_001, -2_500_000, -0.0)]
     assert names == ["1.0000005", "1.000001", "−2.5", "0"]
 
 

@@ -193,7 +193,7 @@ def test_the_key_tells_optimum_degeneracy_open_sides_and_paths() -> None:
         "no limit along (pump, chips, tank) = (0, 1, 0), and the objective improves without end; it slides along "
     )
     assert open_side + "grid connection, quay pipe, pump lower, tank lower, tank upper" in text
-    assert "the nearest point of that, (0, 8, 4), misses town contract by 2" in [
+    assert "the point of that nearest to town contract, (0, 8, 4), misses by 2 MW" in [
         row.text for part in scene(harbour_row("infeasible")).key for row in part.rows
     ]
 
