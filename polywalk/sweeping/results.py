@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
+import pickle
 from collections import Counter
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from functools import cached_property
-from typing import Any
+from multiprocessing.reduction import ForkingPickler
+from typing import TYPE_CHECKING, Any
 
 from polywalk.errors import unknown
 from polywalk.table import Shown, Table
@@ -25,12 +27,37 @@ class Item:
     marks : tuple of (str, str, str), optional
         What it has in common with others: a kind ("shape", "error", ...), a text with # for every number, and its own
         text.
+
+    Between processes the result travels packed, and is unpacked when it is first read: whoever gathers thousands then
+    has little to do, and the groups need none of them.
     """
 
     name: str
-    result: Any = None
+    result: Any = field(default_factory=lambda: None)  # no default on the class, or __getattr__ would never be asked
     error: BaseException | None = None
     marks: tuple[tuple[str, str, str], ...] = ()
+
+    def __reduce__(self) -> tuple[Any, ...]:
+        packed = self.__dict__.get("_packed") or bytes(ForkingPickler.dumps(self.result))
+        return _arrived, (self.name, packed, self.error, self.marks)
+
+    if not TYPE_CHECKING:
+
+        def __getattr__(self, name: str) -> Any:
+            if name != "result" or "_packed" not in self.__dict__:
+                raise AttributeError(f"{type(self).__name__!r} object has no attribute {name!r}")
+            found = pickle.loads(self.__dict__["_packed"])
+            self.__dict__.update(result=found)
+            self.__dict__.pop("_packed", None)
+            return found
+
+
+def _arrived(name: str, packed: bytes, error: BaseException | None, marks: tuple[tuple[str, str, str], ...]) -> Item:
+    """An item whose result is unpacked when it is read."""
+    item = Item(name, None, error, marks)
+    del item.__dict__["result"]
+    item.__dict__["_packed"] = packed
+    return item
 
 
 @dataclass(frozen=True)

@@ -1,5 +1,6 @@
 """Many models at once: order, groups, failures kept, workers that die, Ctrl-C, and a cluster's executor."""
 
+import pickle
 import sys
 from concurrent.futures import ProcessPoolExecutor, ThreadPoolExecutor
 from dataclasses import replace
@@ -65,6 +66,19 @@ def test_a_review_of_many_tells_its_findings_once(pool):
     assert found.item("hour 5").result.findings[0].severity == "error"
     assert len(found.groups) < 25
     assert "hour 5" in str(found)
+
+
+def test_a_result_travels_packed_and_is_unpacked_when_read():
+    item = pw.sweep(plants(1), what="region").items[0]
+    once = pickle.loads(pickle.dumps(item))
+    twice = pickle.loads(pickle.dumps(once))
+    assert "result" not in vars(once)
+    assert once.result == item.result
+    assert "result" in vars(once)
+    assert "result" not in vars(twice)
+    assert twice == item
+    with pytest.raises(AttributeError, match="nonsense"):
+        item.nonsense  # noqa: B018
 
 
 def test_the_odd_one_out_is_named_with_its_numbers():
