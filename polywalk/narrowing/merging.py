@@ -17,7 +17,7 @@ from polywalk.exact import Row, integer_row
 from polywalk.narrowing.hull import Integers, plane_through, smallest
 from polywalk.narrowing.meeting import SOLID, Incidence, met
 from polywalk.narrowing.outline import Edge, Outline
-from polywalk.narrowing.tolerances import TOLERANCES
+from polywalk.narrowing.tolerances import TOLERANCES, snapped
 
 
 @dataclass(frozen=True)
@@ -57,12 +57,35 @@ def merged(found: Outline) -> Merged:
     refitted = (
         _refitted(found.edges[k], [found.generators[p] for p in sorted(on[k] & corners)], found) for k in largest
     )
-    edges = tuple(_cleaned(edge, found) for edge in refitted)
+    in_plane = len(found.chosen) == SOLID  # each facet has two corners there: through both, unless it is rounded
+    edges = tuple(replace(_cleaned(edge, found), is_met=in_plane) for edge in refitted)
     points = [p for p in sorted(corners) if found.generators[p][0]]
     through = [frozenset(j for j, k in enumerate(largest) if p in on[k]) for p in points]
     split = sum(_is_split([edges[j] for j in part], found.chosen) for part in through)
     whole = Merged(edges, len(points), split)
     return (_met(whole, found, points, through) if split else None) or whole
+
+
+def from_zero(found: Outline, axis: int) -> None:
+    """Let an axis that measures from an optimum begin at 0: the optimum was known no better than its smallest value."""
+    points = [generator for generator in found.generators if generator[0]]
+    least = min(Fraction(point[axis + 1], point[0]) for point in points)
+    width = float(found.near.widths()[axis])
+    if not 0 < abs(least) <= TOLERANCES.meet * width:
+        return
+    moved = []
+    for generator in found.generators:
+        row = [Fraction(value, generator[0] or 1) for value in generator]
+        row[axis + 1] = snapped(float(row[axis + 1] - least)) if generator[0] else row[axis + 1]
+        moved.append(smallest(integer_row(row)[0]))
+    found.generators = moved
+    found.edges = [replace(edge, limit=_moved(edge, axis, least)) for edge in found.edges]
+
+
+def _moved(edge: Edge, axis: int, least: Fraction) -> Fraction:
+    size = max(map(abs, edge.direction))
+    limit = edge.limit - edge.direction[axis] * least
+    return snapped(float(limit / size)) * size if edge.direction[axis] else edge.limit
 
 
 def _met(whole: Merged, found: Outline, points: Sequence[int], through: Sequence[frozenset[int]]) -> Merged | None:

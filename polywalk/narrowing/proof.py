@@ -77,12 +77,14 @@ class Rounded:
     def _ordered(self) -> tuple[Any, Any]:
         """Places (columns after rows) and values, the largest first, without what is only rounding.
 
-        A multiplier counts by what it adds: times the largest coefficient of its row.
+        A multiplier counts by what it adds: times the largest coefficient of its row. Equal ones, rounding aside, stand
+        in the model's order.
         """
         values = np.concatenate([self.rows, self.columns])
         shares = np.abs(np.concatenate([self.rows * self.program.row_sizes, self.columns]))
         used = np.flatnonzero(shares > max(TOLERANCES.zero, TOLERANCES.zero * shares.max(initial=0.0)))
-        order = used[np.argsort(-np.abs(values[used]), kind="stable")]
+        sizes = np.abs(values[used])
+        order = used[np.argsort(-np.round(sizes / sizes.max(initial=1e-300), 9), kind="stable")]
         return order, values[order]
 
     @property

@@ -17,7 +17,7 @@ from polywalk.narrowing import building
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
 from polywalk.narrowing.conflict import conflict
-from polywalk.narrowing.merging import Merged, merged
+from polywalk.narrowing.merging import Merged, from_zero, merged
 from polywalk.narrowing.outline import Edge, Outline
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.proof import Exact, Proof
@@ -105,6 +105,8 @@ def _searched(wide: Widened, asks: ExactReach | FloatReach, touch: float) -> Sha
         return _shadow(wide, _partial(found, wording), asks.runs, touch, False)
     edges: Sequence[Edge] = found.edges
     if touch:
+        if wording.value is not None and wide.big.variables[wide.keep[wording.value]] == SUBOPTIMALITY:
+            from_zero(found, wording.value)
         whole = merged(found)
         edges, wide = whole.edges, replace(wide, notes=(*wide.notes, *_told(whole)))
         touch += whole.moved
