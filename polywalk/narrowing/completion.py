@@ -16,7 +16,7 @@ from polywalk.narrowing.adding import sparse, with_row
 from polywalk.narrowing.answer import SHOWN, Completion, Named, Range, Verdict
 from polywalk.narrowing.best import best, costs
 from polywalk.narrowing.certify import Basis, holds
-from polywalk.narrowing.conflict import conflict, irreducible
+from polywalk.narrowing.conflict import conflict_of, irreducible
 from polywalk.narrowing.cutting import only
 from polywalk.narrowing.given import values_of
 from polywalk.narrowing.nearby import ends, nearby
@@ -87,7 +87,7 @@ def completion(big: BigModel | Model, plan: Mapping[str, object] | Iterable[obje
     if status == "optimal":
         near = [exact(value) if (near := simple(value)) is None else near for value in solver.point().tolist()]
         return _possible(big, asked, near, is_best, "possible within solver tolerance")
-    found = conflict(program.big) if status == "infeasible" else None
+    found = conflict_of(program.big) if status == "infeasible" else None
     if found is None:
         raise SolverError(
             f"HiGHS could not tell whether the plan is possible ({solver.status_text}); rescale rows and columns of "

@@ -79,13 +79,17 @@ def conflict(big: BigModel | Model, seconds: float = SECONDS) -> Model | None:
     """
     if not isinstance(seconds, int | float) or isnan(seconds):
         raise NumberError(f"seconds: expected a number, got {seconds!r}.", seconds)
-    end, big = monotonic() + seconds, sparse(big)
+    return conflict_of(sparse(big), monotonic() + seconds, True)
+
+
+def conflict_of(big: BigModel, end: float = inf, is_ranked: bool = False) -> Model | None:
+    """A conflict, its constraints tried one by one for the one that suffices alone if they are to be ranked."""
     for place in crossed(big):
         names = [f"{big.variables[place]} {side}" for side in ("lower", "upper")]
         return _named(big, cut(big, [], [place]), names)
     found = contradiction(big)
     if found is not None:
-        return _told(big, found, end)
+        return _told(big, found, end, is_ranked)
     rows = stretched_rows(big)
     if not rows and _has_plan(big):
         return None
@@ -93,14 +97,16 @@ def conflict(big: BigModel | Model, seconds: float = SECONDS) -> Model | None:
     if proof is None:
         return None
     less = irreducible(big, proof, end)
+    if not is_ranked:
+        return less
     order = ordered(big, [row.name for row in less.constraints], end)
     return replace(less, constraints=_rows(less, order))
 
 
-def _told(big: BigModel, found: Limit, end: float) -> Model:
+def _told(big: BigModel, found: Limit, end: float, is_ranked: bool) -> Model:
     """A proved contradiction as a model: whole, or added up to two constraints."""
     names = [name for name, _ in found.multipliers]
-    order = ordered(big, names, end)
+    order = ordered(big, names, end if is_ranked else 0.0)
     places = [locate(big, name)[:2] for name in names]
     rows, bounded = ([place for what, place in places if bool(what) is is_row] for is_row in (True, False))
     touched = np.unique(part_of(big, rows).indices)

@@ -16,7 +16,7 @@ from polywalk.model import Constraint, Goal, Model, Objective
 from polywalk.narrowing import building
 from polywalk.narrowing.adding import sparse
 from polywalk.narrowing.best import costs
-from polywalk.narrowing.conflict import conflict
+from polywalk.narrowing.conflict import conflict_of
 from polywalk.narrowing.merging import Merged, from_zero, merged
 from polywalk.narrowing.outline import Edge, Outline
 from polywalk.narrowing.program import Program
@@ -200,7 +200,7 @@ def _empty(wide: Widened, runs: int, touch: float, proof: Proof | None) -> Shado
 def _contradiction(big: BigModel) -> Proof | None:
     """Multipliers that add up to 0 <= -1, where HiGHS finds no plan; None where it cannot be decided exactly."""
     try:
-        found = conflict(big)
+        found = conflict_of(big)
     except SolverError:
         return None
     if found is None:

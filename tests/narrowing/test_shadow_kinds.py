@@ -233,3 +233,11 @@ def test_corners_that_cannot_be_put_together_are_counted(monkeypatch: pytest.Mon
     assert 20 <= int(told[2]) <= crowded, "some happen to meet in one point all the same"
     assert "more facets meet" not in str(exact)
     assert "more facets meet" not in str(shadow(harbour_day(), onto[:2], exact=False))
+
+
+def test_suboptimality_begins_at_zero_in_floats_too() -> None:
+    for hour in (7, 15):
+        found = shadow(harbour_year(400), (f"tank[{hour}]", "suboptimality"), within=25, exact=False)
+        assert found.tolerance is not None
+        assert found.region.value == 0
+        assert {vertex.point[1] for vertex in found.region.vertices} >= {0, 25}
