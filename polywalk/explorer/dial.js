@@ -45,7 +45,7 @@ function render({ model, el }) {
   const release = () => {
     if (!held) return;
     held = false;
-    model.send({ kind: "released" });
+    model.send({ kind: "released", place: Number(input.value) }); // a busy kernel may get it before the last place
   };
   const moved = () => {
     held = true;

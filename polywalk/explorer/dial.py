@@ -31,9 +31,9 @@ class Dial(anywidget.AnyWidget):
     >>> dial = Dial(on_move=heard.append, on_release=lambda: heard.append("released"))
     >>> dial.turn_to(["0", "1/2", "1"], [1], 0)
     >>> dial.place = 2
-    >>> dial.receive({"kind": "released"})
+    >>> dial.receive({"kind": "released", "place": 1})
     >>> heard
-    [2, 'released']
+    [2, 1, 'released']
     """
 
     _esm = (Path(__file__).parent / "dial.js").read_text(encoding="utf-8")
@@ -51,8 +51,13 @@ class Dial(anywidget.AnyWidget):
         self.on_msg(lambda _, content, __: self.receive(content))
 
     def receive(self, message: dict[str, Any]) -> None:
-        """Act on a message of the page."""
-        if message.get("kind") == "released" and self.on_release:
+        """Act on a message of the page; it may overtake the last place of a drag, so it brings that along."""
+        if message.get("kind") != "released":
+            return
+        last = message.get("place", self.place)
+        if isinstance(last, int) and 0 <= last < len(self.stops):
+            self.place = last
+        if self.on_release:
             self.on_release()
 
     @traitlets.validate("place")
