@@ -22,6 +22,15 @@ explorer
 CLICKS = 20
 RHS = "from polywalk.exact import short; print(short(explorer.state.whole.constraint('harbour main').rhs))"
 
+WATCH_FOR_STALE = """() => {
+  const look = () => {
+    window.wasStale ||= document.querySelector('.polywalk-verdict').innerText.includes('Stale');
+  };
+  window.wasStale = false;
+  new MutationObserver(look).observe(document.body, { subtree: true, childList: true, characterData: true });
+}"""
+"""Remembers that the verdict was stale at some moment."""
+
 
 @pytest.mark.parametrize("where", ["lab/tree", "notebooks"])
 def test_a_working_day(lab: Lab, where: str) -> None:
@@ -75,12 +84,13 @@ def a_slider_is_dragged(lab: Lab) -> None:
     begun = int(slider.input_value())
     at = lambda place: box["x"] + 8 + (box["width"] - 16) * place / int(slider.get_attribute("max"))  # noqa: E731
     height = box["y"] + box["height"] / 2
+    page.evaluate(WATCH_FOR_STALE)  # it may be over before the picture has followed
     page.mouse.move(at(begun), height)
     page.mouse.down()
     for k in range(1, 31):
         page.mouse.move(at(begun * (1 - k / 60)), height)
     lab.redrawn(drawn)
-    page.wait_for_function("() => document.querySelector('.polywalk-verdict').innerText.includes('Stale')")
+    page.wait_for_function("() => window.wasStale")
     page.mouse.up()
     shown = page.locator(".polywalk-dial output").inner_text()
     assert 0 < int(slider.input_value()) < begun
