@@ -20,6 +20,9 @@ Floats = NDArray[np.float64]
 STEPS = 6
 """Gauss-Newton's steps at most; two or three are enough where the floats were nearly right."""
 
+ZERO = 1e-12
+"""A direction that changes the gaps by less than this share of the most is none: what is left of it is rounding."""
+
 DONE = 1e-15
 """A gap that is rounding, where all numbers are about as large as 1."""
 
@@ -45,7 +48,7 @@ def agreed(
         gaps = np.array([rows[k] @ corners[p] for k, p in pairs])
         if not len(gaps) or np.abs(gaps).max() <= DONE:
             break
-        step = np.linalg.lstsq(_slopes(corners, rows, pairs, fixed), -gaps, rcond=1e-12)[0]
+        step = np.linalg.lstsq(_slopes(corners, rows, pairs, fixed), -gaps, rcond=ZERO)[0]
         size = corners.size
         corners += step[:size].reshape(corners.shape)
         rows += step[size:].reshape(rows.shape)

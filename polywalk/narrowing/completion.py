@@ -18,7 +18,7 @@ from polywalk.narrowing.best import best, costs
 from polywalk.narrowing.certify import Basis, holds
 from polywalk.narrowing.conflict import conflict_of, irreducible
 from polywalk.narrowing.cutting import only
-from polywalk.narrowing.given import values_of
+from polywalk.narrowing.given import named_number, values_of
 from polywalk.narrowing.nearby import ends, nearby
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.results import Shadow
@@ -124,7 +124,7 @@ def _entries(big: BigModel, plan: Mapping[str, object] | Iterable[object]) -> Na
     if not given:
         raise ModelError("expected a value for at least one variable, got an empty plan.", plan)
     places = {big.index(name): value for name, value in given.items()}
-    return tuple((big.variables[place], exact(places[place])) for place in sorted(places))
+    return tuple((big.variables[place], named_number(big.variables[place], places[place])) for place in sorted(places))
 
 
 def _plan(program: Program, solver: Solver) -> list[Fraction] | None:

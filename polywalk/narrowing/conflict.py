@@ -25,6 +25,9 @@ from polywalk.narrowing.solver import Solver
 from polywalk.narrowing.tolerances import TOLERANCES
 from polywalk.progress import progress
 
+LARGEST = 1_000_000
+"""Variables times constraints up to which a conflict is a model, which keeps every zero; past them it is added up."""
+
 SECONDS = 60.0
 """How long a conflict may take by default: what people wait for while they can see that it goes on."""
 
@@ -110,7 +113,7 @@ def _told(big: BigModel, found: Limit, end: float, is_ranked: bool) -> Model:
     places = [locate(big, name)[:2] for name in names]
     rows, bounded = ([place for what, place in places if bool(what) is is_row] for is_row in (True, False))
     touched = np.unique(part_of(big, rows).indices)
-    if len(touched) * len(names) > 25 * TOLERANCES.cells:
+    if len(touched) * len(names) > LARGEST:
         return added_up(big, found, order)
     whole = _named(big, cut(big, rows, bounded), names)
     return replace(whole, constraints=_rows(whole, order))

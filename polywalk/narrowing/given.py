@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
+from fractions import Fraction
 from typing import Any
 
 from polywalk.bigmodel import BigModel
-from polywalk.errors import ModelError
+from polywalk.errors import ModelError, NumberError
+from polywalk.exact import exact
 
 Values = Mapping[str, object] | Iterable[object]
 
@@ -56,3 +58,23 @@ def values_of(big: BigModel, given: Values | Any) -> dict[str, object]:
             raise ModelError(f"expected {big.n} values, one a variable of the big model, got {len(listed)}.", listed)
         pairs = list(zip(big.variables, listed, strict=True))
     return {name: value.item() if hasattr(value, "item") else value for name, value in pairs}
+
+
+def named_number(name: str, value: object) -> Fraction:
+    """The value of a variable, exactly; an error names the variable.
+
+    Raises
+    ------
+    NumberError
+        It is no number.
+
+    Examples
+    --------
+    >>> from polywalk.narrowing.given import named_number
+    >>> named_number("pump", "1/3")
+    Fraction(1, 3)
+    """
+    try:
+        return exact(value)
+    except NumberError as error:
+        raise NumberError(f"{name!r}: {error}", error.culprit) from None

@@ -12,6 +12,9 @@ import numpy as np
 from polywalk.narrowing.program import Program
 from polywalk.narrowing.tolerances import TOLERANCES, snapped
 
+ALIKE = 9
+"""Decimal digits, of the largest multiplier, past which two are the same: HiGHS's tolerance here."""
+
 Multipliers = tuple[tuple[str, Fraction], ...]
 
 
@@ -84,7 +87,7 @@ class Rounded:
         shares = np.abs(np.concatenate([self.rows * self.program.row_sizes, self.columns]))
         used = np.flatnonzero(shares > max(TOLERANCES.zero, TOLERANCES.zero * shares.max(initial=0.0)))
         sizes = np.abs(values[used])
-        order = used[np.argsort(-np.round(sizes / sizes.max(initial=1e-300), 9), kind="stable")]
+        order = used[np.argsort(-np.round(sizes / sizes.max(initial=1e-300), ALIKE), kind="stable")]
         return order, values[order]
 
     @property

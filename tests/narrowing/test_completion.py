@@ -181,3 +181,8 @@ def test_highs_stopping_at_a_limit_is_told(monkeypatch: pytest.MonkeyPatch) -> N
     monkeypatch.setattr(Solver, "run", stopped)
     with pytest.raises(SolverError, match=r"possible \(Time limit reached\)"):
         pw.probe(pw.scenarios.harbour_year(400), {"pump[7]": 4})
+
+
+def test_a_value_that_is_no_number_is_refused_with_its_variable() -> None:
+    with pytest.raises(NumberError, match=r"'pump\[7\]': expected a number.*got 'four'"):
+        pw.probe(DAY, {"pump[7]": "four"})
